@@ -1,0 +1,30 @@
+// Which checks exist and in which order they run.
+import type { ParameterSet } from '../set/types.ts'
+import { LIMITS } from './limits.ts'
+import type { Check, Verdict } from './types.ts'
+
+/** What a check looks at. One object a run, so that checks which share a costly figure can key it on it. */
+export interface CheckInput {
+  readonly set: ParameterSet
+  /** Hz: the rate judged at, the set's own unless `rate` says otherwise. */
+  readonly sampleRate: number
+}
+
+export type CheckFunction = (input: CheckInput) => Check
+
+const CHECKS: readonly CheckFunction[] = []
+
+/** All checks of a valid set, in the table's order. sampleRate in Hz, 8000 to 192000; the set's own when absent. */
+export function runChecks(set: ParameterSet, options: { readonly sampleRate?: number } = {}): Check[] {
+  const input: CheckInput = { set, sampleRate: options.sampleRate ?? set.sampleRate }
+  if (!(input.sampleRate >= 8000 && input.sampleRate <= 192000))
+    throw new RangeError(`sampleRate must be 8000 to 192000 Hz, got ${input.sampleRate}`)
+  const order = new Map<string, number>(LIMITS.map((row, i) => [row.id, i]))
+  return CHECKS.map((check) => check(input)).sort((a, b) => (order.get(a.id) ?? 0) - (order.get(b.id) ?? 0))
+}
+
+/** The worst status of all checks; a note weighs nothing. */
+export function verdictOf(checks: readonly Pick<Check, 'status'>[]): Verdict {
+  if (checks.some((c) => c.status === 'fails')) return 'fails'
+  return checks.some((c) => c.status === 'near') ? 'near' : 'holds'
+}
