@@ -1,0 +1,25 @@
+// The one animation-frame loop. Plots, meters and moving values register here instead of asking for frames
+// themselves, so that a frame's work is one number that can be measured. It sleeps while nobody listens.
+
+export type FrameTask = (timeMs: number) => void
+
+const tasks = new Set<FrameTask>()
+let handle = 0
+
+/** Main-thread work of the last 1,024 frames, ms; ring, newest at (count − 1) % length. For the benchmark. */
+export const frameWork = { ms: new Float64Array(1024), count: 0 }
+
+function run(timeMs: number) {
+  handle = tasks.size > 0 ? requestAnimationFrame(run) : 0
+  const start = performance.now()
+  for (const task of tasks) task(timeMs)
+  frameWork.ms[frameWork.count % frameWork.ms.length] = performance.now() - start
+  frameWork.count += 1
+}
+
+/** Runs `task` once a frame until the returned function is called. */
+export function onFrame(task: FrameTask): () => void {
+  tasks.add(task)
+  if (handle === 0) handle = requestAnimationFrame(run)
+  return () => tasks.delete(task)
+}
