@@ -1,5 +1,5 @@
 // The fields every shaper has, wherever in the path it stands.
-import type { Parameter } from './parameters.ts'
+import type { Parameter } from './kinds.ts'
 
 /** Table rows of one shaper. `path` "loop.shaper", `label` "Loop shaper", `cName` prefix "loop_shaper". */
 export function shaperParameters(path: string, label: string, cName: string): readonly Parameter[] {
