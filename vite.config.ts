@@ -1,10 +1,25 @@
 import react from '@vitejs/plugin-react'
+import type { Plugin } from 'vite'
 import { defineConfig } from 'vitest/config'
+import { CONTENT_POLICY, SERVED_HEADERS } from './app/contentPolicy.ts'
+
+/** The policy travels inside the built page too, so that it holds on any server. Not in dev: hot reload needs inline script. */
+const contentPolicy: Plugin = {
+  name: 'content-policy',
+  apply: 'build',
+  transformIndexHtml: () => [
+    { tag: 'meta', attrs: { 'http-equiv': 'Content-Security-Policy', content: CONTENT_POLICY }, injectTo: 'head-prepend' },
+  ],
+}
 
 export default defineConfig({
   root: 'app',
   publicDir: '../public',
-  plugins: [react()],
-  build: { outDir: '../dist', emptyOutDir: true, assetsInlineLimit: 0, target: 'es2023' },
-  test: { root: '.', include: ['tests/**/*.test.ts', 'tests/**/*.test.tsx'], testTimeout: 60000 },
+  base: './',
+  plugins: [react(), contentPolicy],
+  define: { __BUILD_ID__: JSON.stringify(Date.now().toString(36)) },
+  build: { outDir: '../dist', emptyOutDir: true, assetsInlineLimit: 0, target: 'es2023', modulePreload: { polyfill: false } },
+  worker: { format: 'es' },
+  preview: { headers: SERVED_HEADERS },
+  test: { root: '.', include: ['tests/**/*.test.ts', 'tests/**/*.test.tsx'], testTimeout: 60_000, maxWorkers: 2 },
 })
