@@ -11,6 +11,8 @@ export interface Problem {
   readonly range?: string
   /** What to do instead. */
   readonly hint?: string
+  /** Single changes, each of which would mend it by itself: what a page offers in place. */
+  readonly mends?: readonly { readonly path: string; readonly value: number | string }[]
 }
 
 export type Result<T> = { readonly ok: true; readonly value: T } | { readonly ok: false; readonly problems: readonly Problem[] }

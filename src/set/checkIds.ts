@@ -1,0 +1,28 @@
+// The names a set's `limits` may use: the ids of the checks. The set layer only knows their names; what they judge stands in src/checks.
+
+export const CHECK_IDS = [
+  'loop.stability',
+  'loop.margin',
+  'loop.poles',
+  'loop.ring',
+  'response.extremes',
+  'sweep.range',
+  'sweep.detune',
+  'sweep.fusion',
+  'sweep.steps',
+  'tone.droop',
+  'level.peak',
+  'level.line',
+  'level.dc',
+  'level.loudness',
+  'level.mono',
+  'shaper.harmonics',
+  'shaper.alias',
+  'number.noise',
+  'number.limitCycle',
+  'number.saturation',
+  'target.ram',
+  'target.flash',
+  'target.load',
+  'panel.box',
+] as const

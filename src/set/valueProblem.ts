@@ -1,0 +1,97 @@
+// Judging one value by its row of the table, and saying what the row accepts. Every message about a value is made here.
+import type { Parameter } from './parameters/kinds.ts'
+import type { Problem } from './result.ts'
+
+/** What a row accepts, in words: "-2 to 2", "0.1 to 96000 Hz, or null", "sine, triangle, …", "true or false". */
+export function rangeText(p: Parameter): string {
+  const orNull = (text: string) => ('nullable' in p && p.nullable ? `${text}, or null` : text)
+  switch (p.kind) {
+    case 'number':
+      return orNull(withUnit(`${p.min} to ${p.max}`, p.unit))
+    case 'integer':
+      return orNull(withUnit(p.values ? p.values.join(', ') : `a whole number from ${p.min} to ${p.max}`, p.unit))
+    case 'choice':
+      return p.options.map((option) => option.value).join(', ')
+    case 'boolean':
+      return 'true or false'
+    case 'text':
+      return `text of at most ${p.maxLength} characters`
+  }
+}
+
+/**
+ * What is wrong with `value` for this row, or null. `path` is where it stands, when that is not the row's own path.
+ * A null is accepted where the row says so.
+ */
+export function valueProblem(p: Parameter, value: unknown, path = p.path): Problem | null {
+  if (accepts(p, value)) return null
+  const range = rangeText(p)
+  const hint =
+    p.kind === 'choice' && typeof value === 'string'
+      ? nearestHint(
+          value,
+          p.options.map((o) => o.value),
+        )
+      : undefined
+  return {
+    path,
+    message: `${path} must be ${p.kind === 'choice' ? `one of ${range}` : range}, got ${valueText(value)}`,
+    value,
+    range,
+    ...(hint && { hint }),
+  }
+}
+
+export function accepts(p: Parameter, value: unknown): boolean {
+  if (value === null) return 'nullable' in p && p.nullable === true
+  switch (p.kind) {
+    case 'number':
+      return typeof value === 'number' && value >= p.min && value <= p.max
+    case 'integer':
+      return (
+        Number.isInteger(value) && (value as number) >= p.min && (value as number) <= p.max && (p.values?.includes(value as number) ?? true)
+      )
+    case 'choice':
+      return p.options.some((option) => option.value === value)
+    case 'boolean':
+      return typeof value === 'boolean'
+    case 'text':
+      return typeof value === 'string' && value.length <= p.maxLength
+  }
+}
+
+/** A value as it stands in a file, on one line and cut to 60 characters. */
+export function valueText(value: unknown): string {
+  const text = JSON.stringify(value) ?? String(value)
+  return text.length > 60 ? `${text.slice(0, 59)}…` : text
+}
+
+/** "did you mean "depthMs"?" when one of the known words is close enough, else undefined. */
+export function nearestHint(word: string, known: readonly string[]): string | undefined {
+  const lower = word.toLowerCase()
+  let best: string | undefined
+  let bestDistance = Math.max(1, Math.floor(word.length / 3)) + 1
+  for (const candidate of known) {
+    if (Math.abs(candidate.length - word.length) >= bestDistance) continue
+    const distance = editDistance(lower, candidate.toLowerCase())
+    if (distance < bestDistance) {
+      best = candidate
+      bestDistance = distance
+    }
+  }
+  return best === undefined ? undefined : `did you mean "${best}"?`
+}
+
+const withUnit = (text: string, unit: string) => (unit === '' ? text : `${text} ${unit}`)
+
+/** Levenshtein's distance: single letters put in, left out or changed. */
+function editDistance(a: string, b: string): number {
+  let row = Array.from({ length: b.length + 1 }, (_, j) => j)
+  for (let i = 1; i <= a.length; i++) {
+    const next = [i]
+    for (let j = 1; j <= b.length; j++)
+      next.push(Math.min((row[j] as number) + 1, (next[j - 1] as number) + 1, (row[j - 1] as number) + (a[i - 1] === b[j - 1] ? 0 : 1)))
+    row = next
+  }
+  return row[b.length] as number
+}
