@@ -1,0 +1,18 @@
+// What the checks say about the set being shown, in numbers, for the area's tab and the header of the checks.
+import { create } from 'zustand'
+import type { Status, Verdict } from '../../src/checks/types.ts'
+
+export interface VerdictState {
+  /** null until the first answer of the worker. */
+  readonly verdict: Verdict | null
+  readonly fails: number
+  readonly near: number
+  readonly notes: number
+  readonly holds: number
+}
+
+export const useVerdict = create<VerdictState>()(() => ({ verdict: null, fails: 0, near: 0, notes: 0, holds: 0 }))
+
+/** The sign and word of a status: never colour alone. */
+export const STATUS_SIGN: Readonly<Record<Status, string>> = { fails: '■', near: '△', note: '·', holds: '○' }
+export const STATUS_WORD: Readonly<Record<Status, string>> = { fails: 'fails', near: 'near', note: 'note', holds: 'holds' }
