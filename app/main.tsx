@@ -1,0 +1,24 @@
+// Entry: what was kept is read before the first paint, then the frame is drawn. Stores are made once, outside React.
+import { CSPProvider } from '@base-ui/react/csp-provider'
+import { StrictMode } from 'react'
+import { createRoot } from 'react-dom/client'
+import './styles/tokens.css'
+import './styles/base.css'
+import { App } from './shell/App.tsx'
+import { watchLayout } from './shell/layout.ts'
+import { keptTheme, watchTheme } from './shell/theme.ts'
+import { useView } from './state/view.ts'
+
+useView.setState({ theme: keptTheme() })
+watchTheme()
+watchLayout()
+
+const root = document.getElementById('root')
+if (!root) throw new TypeError('index.html has no #root')
+createRoot(root).render(
+  <StrictMode>
+    <CSPProvider disableStyleElements>
+      <App />
+    </CSPProvider>
+  </StrictMode>,
+)

@@ -1,0 +1,16 @@
+// The frame: top bar over the area. One area for now.
+import './App.css'
+import { Shape } from '../areas/shape/Shape.tsx'
+import { useLayout } from './layout.ts'
+import { TopBar } from './TopBar.tsx'
+
+export function App() {
+  const layout = useLayout((s) => s.layout)
+  const fits = useLayout((s) => s.fits)
+  return (
+    <div className="cw-app" data-layout={layout} data-fits={fits || undefined}>
+      <TopBar />
+      <Shape />
+    </div>
+  )
+}
