@@ -6,8 +6,8 @@
 //   y_c = outputGain · (dry · d_c + wet_c · W · Σ_v A_cv · w_line)             d = u or w, dryDelay samples ago
 import { highPassCoefficient, onePoleCoefficient } from '../dsp/filters.ts'
 import { createShaper } from '../dsp/shaper.ts'
-import { frozenShapeValue } from '../dsp/sweep.ts'
-import { smallestDelay } from '../set/delayRange.ts'
+import { delayAtShape, frozenShapeValue, loopDelayAtShape, phaseOffset } from '../dsp/sweep.ts'
+import { CLOSE_TOLERANCE, smallestDelay } from '../set/delayRange.ts'
 import type { Interpolation, ParameterSet, Shaper } from '../set/types.ts'
 import { type FrozenRead, frozenRead } from './frozenRead.ts'
 
@@ -43,10 +43,8 @@ export interface FrozenChannel {
 }
 
 /** A read closer than its interpolator allows: held at `limitSamples`. */
-export interface HeldDelay {
+export interface HeldDelay extends ReadPlace {
   readonly where: 'voice' | 'loop'
-  readonly channel: number
-  readonly voice: number
   readonly delaySamples: number
   readonly limitSamples: number
 }
@@ -74,9 +72,6 @@ export interface Frozen {
   readonly held: readonly HeldDelay[]
 }
 
-/** 1e-9 samples below the limit are rounding, not reading too close. */
-const HELD_TOLERANCE = 1e-9
-
 /**
  * Every delay, coefficient and gain of `set` with the sweep held at `position`: φ of voice v, channel c is
  * position + v · phaseSpread/(360 V) + c · stereoPhase/360; drift moves as a sine. position in [0, 1];
@@ -96,16 +91,17 @@ export function freeze(set: ParameterSet, position: number, sampleRate = set.sam
       line: lines === 2 ? channel : 0,
       wet: (sign(channel) * set.mix.wet) / Math.sqrt(count),
       voices: Array.from({ length: count }, (_, voice) => {
-        const delay = (frozenDelayMs(set, position, channel, voice) * sampleRate) / 1000
-        return hold(set.line.interpolation, 'voice', channel, voice, delay, held)
+        const delay = frozenVoiceDelay(set, position, { channel, voice }, sampleRate)
+        return hold(set.line.interpolation, { where: 'voice', channel, voice }, delay, held)
       }),
     }),
   )
-  const loopSlope = slopeOf(set.loop.shaper)
   const reads = Array.from({ length: lines }, (_, channel) => {
-    const delay = (frozenLoopDelayMs(set, position, channel) * sampleRate) / 1000
-    return hold(set.loop.interpolation, 'loop', channel, 0, delay - (loopSlope.averaged ? 0.5 : 0), held)
+    const delay = frozenLoopDelay(set, position, channel, sampleRate)
+    return hold(set.loop.interpolation, { where: 'loop', channel, voice: 0 }, delay, held)
   })
+  // A loop without feedback reads nothing that is heard.
+  const heard = held.filter((read) => read.where === 'voice' || set.loop.feedback !== 0)
   return {
     sampleRate,
     position,
@@ -114,7 +110,7 @@ export function freeze(set: ParameterSet, position: number, sampleRate = set.sam
     loop: {
       gain: set.loop.feedback,
       crossFeed: lines === 2 ? set.loop.crossFeed : 0,
-      slope: loopSlope,
+      slope: slopeOf(set.loop.shaper),
       tone: toneOf(set.loop.dampingHz, set.loop.lowCutHz, sampleRate),
       reads,
     },
@@ -127,46 +123,29 @@ export function freeze(set: ParameterSet, position: number, sampleRate = set.sam
     outputGain: 10 ** (set.mix.outputGainDb / 20),
     output: slopeOf(set.mix.shaper),
     smallSignal: set.input.shaper !== null || set.loop.shaper !== null || set.mix.shaper !== null,
-    held,
+    held: heard,
   }
 }
 
-/** Delay offset of one voice, ms: evenly from −spreadMs/2 to +spreadMs/2, 0 for one voice. */
-export function voiceOffsetMs(set: ParameterSet, voice: number): number {
-  const { count, spreadMs } = set.voices
-  return count > 1 ? spreadMs * (voice / (count - 1) - 0.5) : 0
+/** Delay in samples that one voice asks for at a held position, before any limit. */
+export function frozenVoiceDelay(set: ParameterSet, position: number, { channel, voice }: ReadPlace, sampleRate: number): number {
+  const s = frozenShapeValue(set.sweep, position + phaseOffset(set, channel, voice))
+  return delayAtShape(set, voice, s, sampleRate)
 }
 
-/** Delay in ms where the sweep's value is s in [−1, 1], around a base of `baseMs` (law time or ratio). */
-export function delayMsAtShape(set: ParameterSet, baseMs: number, s: number): number {
-  return set.sweep.law === 'time' ? baseMs + set.sweep.depthMs * s : baseMs * 2 ** (set.sweep.depthOctaves * s)
+/** Delay in samples that the loop of one line asks for at a held position, before any limit; half a sample less with an averaging shaper. */
+export function frozenLoopDelay(set: ParameterSet, position: number, channel: number, sampleRate: number): number {
+  return loopDelayAtShape(set, frozenShapeValue(set.sweep, position + phaseOffset(set, channel, 0)), sampleRate)
 }
 
-/** Delay of one voice at a held position, ms, before any limit. */
-export function frozenDelayMs(set: ParameterSet, position: number, channel: number, voice: number): number {
-  const { count, phaseSpread } = set.voices
-  const turns = position + (voice * phaseSpread) / (360 * count) + (channel * set.sweep.stereoPhase) / 360
-  const s = frozenShapeValue(set.sweep, turns - Math.floor(turns))
-  return delayMsAtShape(set, set.line.baseMs + voiceOffsetMs(set, voice), s)
+export interface ReadPlace {
+  readonly channel: number
+  readonly voice: number
 }
 
-/** Delay of the loop of one line at a held position, ms, before any limit. */
-export function frozenLoopDelayMs(set: ParameterSet, position: number, channel: number): number {
-  if (set.loop.delay === 'fixed') return set.line.baseMs
-  const turns = position + (channel * set.sweep.stereoPhase) / 360
-  return delayMsAtShape(set, set.line.baseMs, frozenShapeValue(set.sweep, turns - Math.floor(turns)))
-}
-
-function hold(
-  kind: Interpolation,
-  where: 'voice' | 'loop',
-  channel: number,
-  voice: number,
-  delaySamples: number,
-  held: HeldDelay[],
-): FrozenRead {
-  const limitSamples = smallestDelay(kind, where)
-  if (delaySamples < limitSamples - HELD_TOLERANCE) held.push({ where, channel, voice, delaySamples, limitSamples })
+function hold(kind: Interpolation, place: ReadPlace & Pick<HeldDelay, 'where'>, delaySamples: number, held: HeldDelay[]): FrozenRead {
+  const limitSamples = smallestDelay(kind, place.where)
+  if (delaySamples < limitSamples - CLOSE_TOLERANCE) held.push({ ...place, delaySamples, limitSamples })
   return frozenRead(kind, Math.max(delaySamples, limitSamples))
 }
 

@@ -1,6 +1,6 @@
 // One interpolated read with its delay held: a short rational function behind whole samples of delay.
 // Invariant: every kind is  A(z) = z^-first · Σ taps[k] z^-k / (1 + pole z^-1),  pole = 0 but for allpass1.
-import { allpassCoefficient, splitDelay, tapsOf } from '../dsp/interpolators.ts'
+import { allpassCoefficient, firstTap, splitDelay, tapsOf } from '../dsp/interpolators.ts'
 import type { Interpolation } from '../set/types.ts'
 
 export interface FrozenRead {
@@ -19,11 +19,8 @@ export interface FrozenRead {
 export function frozenRead(kind: Interpolation, delaySamples: number): FrozenRead {
   if (!Number.isFinite(delaySamples)) throw new RangeError(`delaySamples must be finite, got ${delaySamples}`)
   const { whole, fraction } = splitDelay(kind, delaySamples)
-  if (kind === 'nearest') return { kind, delaySamples, first: whole, taps: [1], pole: 0 }
-  if (kind === 'allpass1') {
-    const eta = allpassCoefficient(fraction)
-    return { kind, delaySamples, first: whole, taps: [eta, 1], pole: eta }
-  }
-  const first = kind === 'linear' ? whole : whole - 1
-  return { kind, delaySamples, first, taps: Array.from(tapsOf(kind, fraction)), pole: 0 }
+  const first = whole + firstTap(kind)
+  if (kind !== 'allpass1') return { kind, delaySamples, first, taps: tapsOf(kind, fraction), pole: 0 }
+  const eta = allpassCoefficient(fraction)
+  return { kind, delaySamples, first, taps: [eta, 1], pole: eta }
 }
