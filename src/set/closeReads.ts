@@ -33,16 +33,16 @@ function closeProblem(set: ParameterSet, where: 'voice' | 'loop', sampleRate: nu
   const mends = findMends(set, where, sampleRate, limit)
   const base = mends.find((mend) => mend.path === 'line.baseMs')
   const reader = where === 'voice' ? `a voice's ${set.line.interpolation} read` : `the loop's ${set.loop.interpolation} read`
-  const range_ = base ? `at least ${base.value} ms with the other values as they are` : undefined
+  const least = base ? `at least ${base.value} ms here` : undefined
   const samples = (n: number) => `${figure(n)} ${n === 1 ? 'sample' : 'samples'}`
   return {
     path: 'line.baseMs',
     message:
       `line.baseMs ${set.line.baseMs} ms lets ${reader} come to ${samples(reached)} (${figure((reached * 1000) / sampleRate)} ms), ` +
-      `closer than its ${samples(limit)} (${figure((limit * 1000) / sampleRate)} ms at ${sampleRate} Hz)` +
-      (base ? `, so line.baseMs must be ${range_}` : ''),
+      `where it needs at least ${samples(limit)} (${figure((limit * 1000) / sampleRate)} ms at ${sampleRate} Hz)` +
+      (base ? `: line.baseMs must be ${least}` : ''),
     value: set.line.baseMs,
-    ...(range_ && { range: range_ }),
+    ...(least && { range: least }),
     ...(mends.length > 0 && { hint: mends.map((mend) => `set ${mend.path} to ${mend.value}`).join(', or '), mends }),
   }
 }

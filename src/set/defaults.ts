@@ -16,7 +16,8 @@ export function defaultSet(): ParameterSet {
   of('loop').shaper = null
   of('mix').shaper = null
   of('sweep').points = []
-  return { ...set, panel: [], limits: {} } as unknown as ParameterSet
+  const { target, ...before } = set
+  return { ...before, panel: [], limits: {}, target } as unknown as ParameterSet
 }
 
 /** A shaper of this curve with the table's defaults for the rest. */

@@ -4,7 +4,7 @@ import { isParameterPath, PARAMETERS, type Parameter, parameter } from './parame
 import { getAt } from './path.ts'
 import type { Problem } from './result.ts'
 import type { Knob, Move, ParameterSet } from './types.ts'
-import { nearestHint, valueProblem } from './valueProblem.ts'
+import { nearestHint, valueProblem, withoutNull } from './valueProblem.ts'
 
 /** Can a knob move it? Everything audible, except what is fixed when the firmware is built. */
 export function isMovable(p: Parameter): boolean {
@@ -43,13 +43,10 @@ export function moveProblems(move: Move, path: string): Problem[] {
       },
     ]
   }
-  const row = solid(parameter(move.parameter))
+  const row = withoutNull(parameter(move.parameter))
   const ends = [valueProblem(row, move.min, `${path}.min`), valueProblem(row, move.max, `${path}.max`)].filter((p) => p !== null)
   return ends.length > 0 ? ends : taperProblems(move, row, path)
 }
-
-/** A knob's end is a value: it cannot be off. */
-const solid = (p: Parameter): Parameter => ('nullable' in p ? { ...p, nullable: false } : p)
 
 function taperProblems(move: Move, row: Parameter, path: string): Problem[] {
   const at = `${path}.taper`
@@ -62,7 +59,7 @@ function taperProblems(move: Move, row: Parameter, path: string): Problem[] {
   if ((move.min as number) * (move.max as number) > 0) return []
   const range = 'min and max both above or both below zero'
   const message = `${at} "log" needs ${range}, got ${move.min} and ${move.max}`
-  return [{ path: at, message, value: 'log', range, hint: `use taper linear or drawn, or move ${path}.min or ${path}.max off zero` }]
+  return [{ path: at, message, value: 'log', range, hint: 'use taper linear or drawn, or move min or max off zero' }]
 }
 
 function clash(movedBy: Map<string, string>, knob: Knob, move: Move, path: string): Problem[] {

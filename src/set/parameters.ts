@@ -31,5 +31,5 @@ export function parameter(path: string): Parameter {
 
 export const isParameterPath = (path: string): boolean => byPath.has(path)
 
-/** Limits of drawn curves: 2 to 64 points when drawn, none otherwise. */
+/** A drawn curve has 2 to 64 points; one that is not drawn may keep its points or have none. */
 export const MAX_POINTS = 64

@@ -1,5 +1,5 @@
 // Judging one value by its row of the table, and saying what the row accepts. Every message about a value is made here.
-import type { Parameter } from './parameters/kinds.ts'
+import type { NumberParameter, Parameter } from './parameters/kinds.ts'
 import type { Problem } from './result.ts'
 
 /** What a row accepts, in words: "-2 to 2", "0.1 to 96000 Hz, or null", "sine, triangle, …", "true or false". */
@@ -9,9 +9,9 @@ export function rangeText(p: Parameter): string {
     case 'number':
       return orNull(withUnit(`${p.min} to ${p.max}`, p.unit))
     case 'integer':
-      return orNull(withUnit(p.values ? p.values.join(', ') : `a whole number from ${p.min} to ${p.max}`, p.unit))
+      return orNull(withUnit(integerText(p), p.unit))
     case 'choice':
-      return p.options.map((option) => option.value).join(', ')
+      return p.options.map(optionValue).join(', ')
     case 'boolean':
       return 'true or false'
     case 'text':
@@ -26,21 +26,18 @@ export function rangeText(p: Parameter): string {
 export function valueProblem(p: Parameter, value: unknown, path = p.path): Problem | null {
   if (accepts(p, value)) return null
   const range = rangeText(p)
-  const hint =
-    p.kind === 'choice' && typeof value === 'string'
-      ? nearestHint(
-          value,
-          p.options.map((o) => o.value),
-        )
-      : undefined
-  return {
-    path,
-    message: `${path} must be ${p.kind === 'choice' ? `one of ${range}` : range}, got ${valueText(value)}`,
-    value,
-    range,
-    ...(hint && { hint }),
-  }
+  const wanted = p.kind === 'choice' ? `one of ${range}` : range
+  const message = value === undefined ? `${path} is missing, and must be ${wanted}` : `${path} must be ${wanted}, got ${valueText(value)}`
+  const hint = choiceHint(p, value)
+  return { path, message, value, range, ...(hint && { hint }) }
 }
+
+function choiceHint(p: Parameter, value: unknown): string | undefined {
+  if (p.kind !== 'choice' || typeof value !== 'string') return undefined
+  return nearestHint(value, p.options.map(optionValue))
+}
+
+const optionValue = (option: { readonly value: string }): string => option.value
 
 export function accepts(p: Parameter, value: unknown): boolean {
   if (value === null) return 'nullable' in p && p.nullable === true
@@ -49,7 +46,11 @@ export function accepts(p: Parameter, value: unknown): boolean {
       return typeof value === 'number' && value >= p.min && value <= p.max
     case 'integer':
       return (
-        Number.isInteger(value) && (value as number) >= p.min && (value as number) <= p.max && (p.values?.includes(value as number) ?? true)
+        Number.isInteger(value) &&
+        (value as number) >= p.min &&
+        (value as number) <= p.max &&
+        (p.values?.includes(value as number) ?? true) &&
+        !p.except?.includes(value as number)
       )
     case 'choice':
       return p.options.some((option) => option.value === value)
@@ -60,26 +61,32 @@ export function accepts(p: Parameter, value: unknown): boolean {
   }
 }
 
+/** The same row where null is not accepted: a knob's end, the curve of a shaper that is there. */
+export const withoutNull = (p: Parameter): Parameter => ('nullable' in p ? { ...p, nullable: false } : p)
+
 /** A value as it stands in a file, on one line and cut to 60 characters. */
 export function valueText(value: unknown): string {
+  if (value === undefined) return 'nothing'
   const text = JSON.stringify(value) ?? String(value)
   return text.length > 60 ? `${text.slice(0, 59)}…` : text
 }
 
-/** "did you mean "depthMs"?" when one of the known words is close enough, else undefined. */
+/** 'did you mean "depthMs"?' when one of the known words is close enough or goes on from this one, else undefined. */
 export function nearestHint(word: string, known: readonly string[]): string | undefined {
   const lower = word.toLowerCase()
-  let best: string | undefined
-  let bestDistance = Math.max(1, Math.floor(word.length / 3)) + 1
-  for (const candidate of known) {
-    if (Math.abs(candidate.length - word.length) >= bestDistance) continue
-    const distance = editDistance(lower, candidate.toLowerCase())
-    if (distance < bestDistance) {
-      best = candidate
-      bestDistance = distance
-    }
-  }
+  const longest = Math.max(1, Math.floor(word.length / 3))
+  const near = known
+    .filter((candidate) => Math.abs(candidate.length - word.length) <= longest)
+    .map((candidate) => ({ candidate, distance: editDistance(lower, candidate.toLowerCase()) }))
+    .filter(({ distance }) => distance <= longest)
+    .sort((a, b) => a.distance - b.distance)
+  const best = near[0]?.candidate ?? known.find((candidate) => word.length >= 3 && candidate.toLowerCase().startsWith(lower))
   return best === undefined ? undefined : `did you mean "${best}"?`
+}
+
+function integerText({ min, max, values, except }: NumberParameter): string {
+  if (values) return values.join(', ')
+  return `a whole number from ${min} to ${max}${except ? ` but not ${except.join(', ')}` : ''}`
 }
 
 const withUnit = (text: string, unit: string) => (unit === '' ? text : `${text} ${unit}`)

@@ -23,6 +23,8 @@ export interface NumberParameter extends Common {
   readonly taper: 'linear' | 'log'
   /** The only values accepted, when not every integer in range is. */
   readonly values?: readonly number[]
+  /** Values inside the range that are not accepted. */
+  readonly except?: readonly number[]
   /** Where a log track starts when min is 0 or the useful part starts above min. */
   readonly trackMin?: number
   readonly trackMax?: number
