@@ -1,11 +1,16 @@
 // What the audio thread reports many times a second: plain mutable numbers, written by audio, read in the one
 // frame loop. Never React state.
 
-export const SCOPE_FRAMES = 2048
+// The one number page and processor share.
+import { SCOPE_FRAMES } from '../audio/worklet/messages.ts'
+
+export { SCOPE_FRAMES }
 
 export interface Live {
   /** Frames of sound are arriving. */
   running: boolean
+  /** A position has been heard since the page opened: it stands where it was while paused. */
+  heard: boolean
   /** Sweep position being heard now, 0 to 1 (channel 0, voice 0); extrapolated between reports. */
   position(): number
   /** Peak and held peak of the last reports, dBFS per channel. */
@@ -13,6 +18,7 @@ export interface Live {
   readonly outPeakDb: number[]
   readonly inHoldDb: number[]
   readonly outHoldDb: number[]
+  /** The output passed full scale within the last seconds. */
   overload: boolean
   /** Latest aligned window of input and output, channel 0, oldest first. */
   readonly scopeIn: Float32Array
@@ -21,10 +27,13 @@ export interface Live {
   scopeCount: number
   /** Samples at which a delay was held at its limit, since start. */
   heldDelays: number
+  /** Where in the recorded material the sound is, s; null for the tone and live input. */
+  sourceSeconds: number | null
 }
 
 export const live: Live = {
   running: false,
+  heard: false,
   position: () => 0,
   inPeakDb: [-400, -400],
   outPeakDb: [-400, -400],
@@ -35,4 +44,5 @@ export const live: Live = {
   scopeOut: new Float32Array(SCOPE_FRAMES),
   scopeCount: 0,
   heldDelays: 0,
+  sourceSeconds: null,
 }
