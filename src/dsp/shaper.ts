@@ -3,12 +3,7 @@ import type { Shaper } from '../set/types.ts'
 import { type CurveParameters, curveIntegral, curveMean, curveSectorBound, curveSlopeAtZero, curveValue } from './shaperCurves.ts'
 
 /** What a shaper's value depends on: the curve and the four gains. */
-export interface ShaperParameters extends CurveParameters {
-  readonly drive: number
-  readonly ceiling: number
-  readonly positive: number
-  readonly negative: number
-}
+export type ShaperParameters = CurveParameters & Pick<Shaper, 'drive' | 'ceiling' | 'positive' | 'negative'>
 
 /** c(v), any finite v. */
 export function halvesValue(p: ShaperParameters, v: number): number {
@@ -59,8 +54,7 @@ export interface ShaperFunctions {
 }
 
 /** The functions of one shaper of a set, for analysis and tables. The engine uses the functions above on its own copy. */
-export function createShaper(shaper: Shaper): ShaperFunctions {
-  const p: ShaperParameters = { ...shaper, count: shaper.points.length }
+export function createShaper(p: Shaper): ShaperFunctions {
   const gain = p.ceiling * p.drive
   return {
     curve: (x) => shaperValue(p, x),

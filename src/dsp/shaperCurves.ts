@@ -1,14 +1,9 @@
 // The one-sided curves k(t), t ≥ 0, k(0) = 0, their antiderivatives, and their mean over an interval, which is what
 // antiderivative anti-aliasing plays. All exact; the tables of twins and C are made from these.
-import type { Curve, Point } from '../set/types.ts'
+import type { Point, Shaper } from '../set/types.ts'
 
-/** A curve with what shapes it: the dead zone's width, or the drawn points [t, k], the first `count` of them in use. */
-export interface CurveParameters {
-  readonly curve: Curve
-  readonly deadZone: number
-  readonly points: readonly Point[]
-  readonly count: number
-}
+/** A curve with what shapes it: the dead zone's width, or the drawn points [t, k], t ascending from [0, 0]. */
+export type CurveParameters = Pick<Shaper, 'curve' | 'deadZone' | 'points'>
 
 /** Resistor into a Shockley pair: t − v = DIODE_I sinh(v/DIODE_V). */
 const DIODE_I = 0.002
@@ -27,10 +22,11 @@ export function diodeVoltage(t: number): number {
   return v
 }
 
-function drawnCurve(points: readonly Point[], count: number, t: number): number {
+function drawnCurve(points: readonly Point[], t: number): number {
+  const count = points.length
+  if (count === 0) return 0
   let i = 1
   while (i < count && (points[i] as Point)[0] < t) i++
-  if (count === 0) return 0
   const [t1, k1] = points[i - 1] as Point
   if (i === count) return k1
   const [t2, k2] = points[i] as Point
@@ -53,7 +49,7 @@ export function curveValue(p: CurveParameters, t: number): number {
     case 'deadZone':
       return Math.max(0, t - p.deadZone)
     case 'drawn':
-      return drawnCurve(p.points, p.count, t)
+      return drawnCurve(p.points, t)
   }
 }
 
@@ -88,7 +84,7 @@ export function curveIntegral(p: CurveParameters, t: number): number {
 
 /** Corners of the piecewise polynomial curves, in ascending t: the i-th, or Infinity past the last. */
 function corner(p: CurveParameters, i: number): number {
-  if (p.curve === 'drawn') return i < p.count ? (p.points[i] as Point)[0] : Number.POSITIVE_INFINITY
+  if (p.curve === 'drawn') return i < p.points.length ? (p.points[i] as Point)[0] : Number.POSITIVE_INFINITY
   if (i > 0) return Number.POSITIVE_INFINITY
   if (p.curve === 'hardClip') return 1
   return p.curve === 'cubic' ? 1.5 : p.deadZone
@@ -135,7 +131,7 @@ export function curveSlopeAtZero(p: CurveParameters): number {
     case 'deadZone':
       return p.deadZone > 0 ? 0 : 1
     case 'drawn':
-      return p.count > 1 ? (p.points[1] as Point)[1] / (p.points[1] as Point)[0] : 0
+      return p.points.length > 1 ? (p.points[1] as Point)[1] / (p.points[1] as Point)[0] : 0
     default:
       return 1
   }
@@ -146,7 +142,7 @@ export function curveSectorBound(p: CurveParameters): number {
   if (p.curve === 'diode') return curveSlopeAtZero(p)
   if (p.curve !== 'drawn') return 1
   let bound = 0
-  for (let i = 1; i < p.count; i++) {
+  for (let i = 1; i < p.points.length; i++) {
     const [t, k] = p.points[i] as Point
     bound = Math.max(bound, Math.abs(k) / t)
   }
