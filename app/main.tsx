@@ -5,13 +5,19 @@ import { createRoot } from 'react-dom/client'
 import './styles/tokens.css'
 import './styles/base.css'
 import { App } from './shell/App.tsx'
+import { watchKeys } from './shell/keys.ts'
 import { watchLayout } from './shell/layout.ts'
+import { say } from './shell/messages.ts'
 import { keptTheme, watchTheme } from './shell/theme.ts'
+import { restoreState, watchState } from './state/storage.ts'
 import { useView } from './state/view.ts'
 
+for (const notice of restoreState()) say('note', notice)
 useView.setState({ theme: keptTheme() })
 watchTheme()
 watchLayout()
+watchState()
+watchKeys(() => {})
 
 const root = document.getElementById('root')
 if (!root) throw new TypeError('index.html has no #root')

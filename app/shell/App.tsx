@@ -1,7 +1,9 @@
 // The frame: top bar over the area. One area for now.
 import './App.css'
 import { Shape } from '../areas/shape/Shape.tsx'
+import { Announcer } from './Announcer.tsx'
 import { useLayout } from './layout.ts'
+import { Messages } from './Messages.tsx'
 import { TopBar } from './TopBar.tsx'
 
 export function App() {
@@ -11,6 +13,8 @@ export function App() {
     <div className="cw-app" data-layout={layout} data-fits={fits || undefined}>
       <TopBar />
       <Shape />
+      <Messages />
+      <Announcer />
     </div>
   )
 }

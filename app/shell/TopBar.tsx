@@ -1,12 +1,43 @@
 // Left half: the set and its history. Right half: what is heard (app/shell/transport).
 import './TopBar.css'
+import { parameter } from '../../src/set/parameters.ts'
 import { useCurrent } from '../state/current.ts'
+import { useSaved } from '../state/storage.ts'
+import { useView } from '../state/view.ts'
+import { AreaTabs } from './AreaTabs.tsx'
+import { HistoryButtons } from './HistoryButtons.tsx'
+import { SetMenu } from './SetMenu.tsx'
+import { ViewMenu } from './ViewMenu.tsx'
 
 export function TopBar() {
-  const name = useCurrent((s) => s.set.name)
   return (
     <header className="cw-topbar">
-      <h1 className="cw-topbar-name">{name}</h1>
+      <div className="cw-topbar-set">
+        <SetMenu />
+        <SetLine />
+      </div>
+      <AreaTabs />
+      <HistoryButtons />
+      <ViewMenu />
     </header>
   )
+}
+
+/** "flanger · 48 kHz · stereo · saved here": opens the fields of the set as a whole. */
+function SetLine() {
+  const intent = useCurrent((s) => s.set.intent)
+  const layout = useCurrent((s) => s.set.layout)
+  const sampleRate = useCurrent((s) => s.set.sampleRate)
+  const problem = useSaved((s) => s.problem)
+  return (
+    <button type="button" className="cw-set-line" title="Name, notes, rate and layout" onClick={() => useView.setState({ block: 'set' })}>
+      {intent} · {sampleRate / 1000} kHz · {optionLabel('layout', layout)} ·{' '}
+      {problem === null ? 'saved here' : <span className="cw-set-unsaved">not saved: {problem}</span>}
+    </button>
+  )
+}
+
+function optionLabel(path: string, value: string): string {
+  const row = parameter(path)
+  return (row.kind === 'choice' && row.options.find((option) => option.value === value)?.label) || value
 }
