@@ -69,5 +69,7 @@ export function branchAngles(line: LoopLine, x: number, theta: number, count: nu
   const slope = Math.min(scratch.dRe, -0.5 * line.delay)
   const nearest = theta - wrapAngle(scratch.phase - line.delay * theta) / slope
   const spacing = (2 * Math.PI) / -slope
-  return Array.from({ length: count }, (_, i) => nearest + (i - (count - 1) / 2) * spacing).filter((t) => t > -spacing && t < Math.PI + spacing)
+  return Array.from({ length: count }, (_, i) => nearest + (i - (count - 1) / 2) * spacing).filter(
+    (t) => t > -spacing && t < Math.PI + spacing,
+  )
 }

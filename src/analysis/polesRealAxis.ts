@@ -1,0 +1,35 @@
+// Poles at 0 Hz and at fs/2: on either real axis 1 − L is real, so they are found by its sign, however close to a filter's own pole.
+import { type LoopLine, logGain, logGainResult, openLoopPoles, wrapAngle } from './loopLine.ts'
+import { bisect } from './loopSearch.ts'
+import type { Pole } from './polesNewton.ts'
+
+const scratch = logGainResult()
+
+/** Distances, in x = ln radius, at which the axis is looked at on both sides of the unit circle and of every open-loop pole. */
+const DISTANCES = Array.from({ length: 45 }, (_, i) => 10 ** (-10.9 + i / 4))
+
+/** Real poles, positive (θ = 0) and negative (θ = π), radius above about 0.05. */
+export function realPoles(line: LoopLine): Pole[] {
+  return [...polesOnAxis(line, 0), ...polesOnAxis(line, Math.PI)]
+}
+
+function polesOnAxis(line: LoopLine, theta: number): Pole[] {
+  const sign = theta === 0 ? 1 : -1
+  const open = openLoopPoles(line).map((pole) => pole * sign)
+  const centres = [0, ...open.filter((pole) => pole > 0).map(Math.log)]
+  const grid = [...new Set(centres.flatMap((c) => DISTANCES.flatMap((d) => [c - d, c + d])))].filter((x) => x > -3).sort((a, b) => a - b)
+  // (1 − L) times L's denominator: no poles, so every change of sign is a root.
+  const positive = (x: number) => {
+    logGain(line, x, theta, scratch)
+    const towardsOne = Math.abs(wrapAngle(scratch.phase - line.delay * theta)) < Math.PI / 2
+    const radius = Math.exp(x)
+    return (towardsOne && scratch.ln > 0) === open.filter((pole) => pole > radius).length % 2 > 0
+  }
+  const found: Pole[] = []
+  for (let i = 1; i < grid.length; i++) {
+    const from = grid[i - 1] as number
+    const to = grid[i] as number
+    if (positive(from) !== positive(to)) found.push({ x: bisect(positive, from, to), theta })
+  }
+  return found
+}
