@@ -80,9 +80,35 @@ describe('integrated loudness', () => {
   it.each([
     ['1', [[-23, 20]], -23],
     ['2', [[-33, 20]], -33],
-    ['3', [[-36, 10], [-23, 60], [-36, 10]], -23], // biome-ignore format: one case a line
-    ['4', [[-72, 10], [-36, 10], [-23, 60], [-36, 10], [-72, 10]], -23], // biome-ignore format: one case a line
-    ['5', [[-26, 20], [-20, 20.1], [-26, 20]], -23], // biome-ignore format: one case a line
+    [
+      '3',
+      [
+        [-36, 10],
+        [-23, 60],
+        [-36, 10],
+      ],
+      -23,
+    ],
+    [
+      '4',
+      [
+        [-72, 10],
+        [-36, 10],
+        [-23, 60],
+        [-36, 10],
+        [-72, 10],
+      ],
+      -23,
+    ],
+    [
+      '5',
+      [
+        [-26, 20],
+        [-20, 20.1],
+        [-26, 20],
+      ],
+      -23,
+    ],
   ] as const)('EBU Tech 3341 case %s', (_, plan, lufs) => {
     const x = steps(plan)
     expect(Math.abs(integratedLoudness([x, x], 48000) - lufs)).toBeLessThan(0.1)
@@ -126,14 +152,32 @@ describe('integrated loudness', () => {
 describe('windows', () => {
   // Oracle: EBU Tech 3341, cases 9 and 12 (from memory): levels that average to −23 in every window, tolerance ±0.1 LU.
   it('case 9: short-term stays at −23 once 3 s have passed', () => {
-    const x = steps(Array.from({ length: 5 }, () => [[-20, 1.34], [-30, 1.66]] as const).flat()) // biome-ignore format: one period
+    const x = steps(
+      Array.from(
+        { length: 5 },
+        () =>
+          [
+            [-20, 1.34],
+            [-30, 1.66],
+          ] as const,
+      ).flat(),
+    )
     const s = shortTermLoudness([x, x], 48000)
     expect(s.length).toBe(121)
     for (const lufs of s) expect(Math.abs(lufs + 23)).toBeLessThan(0.1)
   })
 
   it('case 12: momentary stays at −23', () => {
-    const x = steps(Array.from({ length: 25 }, () => [[-20, 0.18], [-30, 0.22]] as const).flat()) // biome-ignore format: one period
+    const x = steps(
+      Array.from(
+        { length: 25 },
+        () =>
+          [
+            [-20, 0.18],
+            [-30, 0.22],
+          ] as const,
+      ).flat(),
+    )
     const m = momentaryLoudness([x, x], 48000)
     expect(m.length).toBe(97)
     for (const lufs of m) expect(Math.abs(lufs + 23)).toBeLessThan(0.1)
