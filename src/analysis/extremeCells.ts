@@ -76,7 +76,7 @@ export function hidesPair(a: PowerSample, b: PowerSample): boolean {
   const { linear, square } = slopeParabola(a, b)
   const vertex = -linear / (2 * square)
   if (!(vertex > 0 && vertex < 1)) return false
-  return (a.slope + (linear * vertex) / 2) / a.slope < 0.05
+  return (a.slope + (linear * vertex) / 2) / a.slope < 0.1
 }
 
 /** Slope along the cell, t from 0 to 1: a.slope + linear·t + square·t², its mean the rise from a to b. */

@@ -24,7 +24,7 @@ export interface Extreme {
   readonly db: number
 }
 
-const POINTS_PER_PERIOD = 10
+const POINTS_PER_PERIOD = 14
 /** Steps after which the grid's phasors are computed afresh. */
 const FRESH_EVERY = 256
 /** Where a search for a root ends, Hz. */
