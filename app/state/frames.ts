@@ -30,3 +30,13 @@ export function onFrame(task: FrameTask): () => void {
     tasks.delete(task)
   }
 }
+
+/** Runs `task` soon and then once a second, in a frame. */
+export function everySecond(task: () => void): () => void {
+  let due = Number.NEGATIVE_INFINITY
+  return onFrame((timeMs) => {
+    if (timeMs < due) return
+    due = timeMs + 1000
+    task()
+  })
+}

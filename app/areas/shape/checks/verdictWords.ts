@@ -1,0 +1,20 @@
+// "Checks · 1 fails, 1 near, 6 hold": what the heading of the checks says.
+import { useChecks } from '../../../state/checks.ts'
+import { useVerdict, type VerdictState } from '../../../state/verdict.ts'
+
+export function verdictWords({ verdict, fails, near, notes, holds }: VerdictState): string {
+  if (verdict === null) return 'Checks · being computed'
+  const parts = [
+    fails > 0 ? `${fails} ${fails === 1 ? 'fails' : 'fail'}` : '',
+    near > 0 ? `${near} near` : '',
+    notes > 0 ? `${notes} ${notes === 1 ? 'note' : 'notes'}` : '',
+    holds > 0 ? `${holds} ${holds === 1 ? 'holds' : 'hold'}` : '',
+  ]
+  return `Checks · ${parts.filter((part) => part !== '').join(', ')}`
+}
+
+export function useVerdictWords(): string {
+  const words = useVerdict(verdictWords)
+  const problem = useChecks((state) => state.problem)
+  return problem === null ? words : 'Checks · not computed'
+}

@@ -1,0 +1,47 @@
+// The place a plot is drawn in. The plot lives outside React: made when the place appears, destroyed when it goes.
+import { useCallback, useId, useRef } from 'react'
+import { plotEntry } from '../../../plots/plotList.ts'
+import type { MountedPlot } from '../../../plots/plotTypes.ts'
+import { everySecond } from '../../../state/frames.ts'
+import type { PlotId } from '../../../state/view.ts'
+
+interface PlotBodyProps {
+  readonly id: PlotId
+  readonly label: string
+  readonly reading: HTMLElement
+  /** Its table stands in front of it. */
+  readonly hidden: boolean
+  onMounted(mounted: MountedPlot | null): void
+}
+
+export function PlotBody({ id, label, reading, hidden, onMounted }: PlotBodyProps) {
+  const summaryId = useId()
+  const summary = useRef<HTMLParagraphElement>(null)
+  const mount = useCallback(
+    (element: HTMLElement | null) => {
+      if (!element) return
+      const mounted = plotEntry(id).mount({ element, reading: (text) => write(reading, text) })
+      const stop = everySecond(() => {
+        if (summary.current) write(summary.current, mounted.summary())
+      })
+      onMounted(mounted)
+      return () => {
+        stop()
+        onMounted(null)
+        mounted.destroy()
+        write(reading, '')
+      }
+    },
+    [id, reading, onMounted],
+  )
+  return (
+    <figure className="cw-plot-figure" aria-label={label} aria-describedby={summaryId} inert={hidden}>
+      <div className="cw-plot" ref={mount} />
+      <p className="cw-unseen" id={summaryId} ref={summary} />
+    </figure>
+  )
+}
+
+function write(element: HTMLElement, text: string): void {
+  if (element.textContent !== text) element.textContent = text
+}

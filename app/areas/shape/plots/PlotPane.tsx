@@ -1,0 +1,48 @@
+// One plot with its tabs, its reading line, and its menu: table, picture, numbers.
+import { Tabs } from '@base-ui/react/tabs'
+import { useState } from 'react'
+import { PLOTS, plotEntry } from '../../../plots/plotList.ts'
+import type { MountedPlot } from '../../../plots/plotTypes.ts'
+import { type PlotId, useView } from '../../../state/view.ts'
+import { HoldButton } from './HoldButton.tsx'
+import { PlotBody } from './PlotBody.tsx'
+import { PlotMenu } from './PlotMenu.tsx'
+import { PlotTableView } from './PlotTableView.tsx'
+
+/** Shows a plot in a pane; the other pane takes over what stood there when it showed the same. */
+function showPlot(index: 0 | 1, id: PlotId): void {
+  useView.setState(({ plots }) => {
+    const shown: [PlotId, PlotId] = [...plots]
+    if (shown[1 - index] === id) shown[1 - index] = shown[index]
+    shown[index] = id
+    return { plots: shown }
+  })
+}
+
+export function PlotPane({ index }: { readonly index: 0 | 1 }) {
+  const id = useView((state) => state.plots[index])
+  const { label } = plotEntry(id)
+  const [mounted, setMounted] = useState<MountedPlot | null>(null)
+  const [reading, setReading] = useState<HTMLElement | null>(null)
+  const [asTable, setAsTable] = useState(false)
+  return (
+    <Tabs.Root className="cw-plot-pane" value={id} onValueChange={(value: PlotId) => showPlot(index, value)}>
+      <div className="cw-plot-head">
+        <Tabs.List className="cw-plot-tabs" activateOnFocus aria-label={index === 0 ? 'Upper plot' : 'Lower plot'}>
+          {PLOTS.map((plot) => (
+            <Tabs.Tab key={plot.id} value={plot.id} className="cw-plot-tab">
+              {plot.label}
+            </Tabs.Tab>
+          ))}
+        </Tabs.List>
+        <p className="cw-plot-reading" ref={setReading} />
+        {id === 'sweep' ? <HoldButton /> : null}
+        <PlotMenu id={id} label={label} mounted={mounted} asTable={asTable} onTable={setAsTable} />
+      </div>
+      <Tabs.Panel className="cw-plot-panel" value={id} tabIndex={-1} keepMounted={false}>
+        {reading ? <PlotBody key={id} id={id} label={label} reading={reading} hidden={asTable} onMounted={setMounted} /> : null}
+        {asTable && mounted ? <PlotTableView mounted={mounted} /> : null}
+      </Tabs.Panel>
+    </Tabs.Root>
+  )
+}

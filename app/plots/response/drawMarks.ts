@@ -1,0 +1,44 @@
+// Notch and peak marks: a triangle under a notch, over a peak, with its frequency as a plain number.
+import type { Mark } from '../../workers/analysisJobs/teeth.ts'
+import { type Columns, partOf } from '../columns.ts'
+import { canvasFont } from '../host/corner.ts'
+import type { PlotBox } from '../host/createPlot.ts'
+import type { PlotTheme } from '../host/theme.ts'
+import { hertz } from '../words.ts'
+import { type Levels, levelY } from './drawTrace.ts'
+
+const SIZE_PX = 4
+const AWAY_PX = 5
+
+export function drawMarks(
+  ctx: CanvasRenderingContext2D,
+  box: PlotBox,
+  theme: PlotTheme,
+  levels: Levels,
+  columns: Columns,
+  marks: readonly Mark[],
+): void {
+  const { ratio } = box
+  ctx.font = canvasFont(theme, ratio)
+  ctx.textAlign = 'center'
+  for (const mark of marks) {
+    const under = mark.kind === 'notch'
+    const away = (under ? 1 : -1) * ratio
+    const x = box.left + box.width * partOf(columns, mark.frequencyHz)
+    const room = (SIZE_PX * 2 + AWAY_PX + (mark.labelled ? theme.textPx + 2 : 0)) * ratio
+    const level = levelY(box, levels, mark.db)
+    const y = under ? Math.min(level, box.top + box.height - room) : Math.max(level, box.top + room)
+    const tip = y + AWAY_PX * away
+    const base = tip + 1.75 * SIZE_PX * away
+    ctx.fillStyle = theme.now
+    ctx.beginPath()
+    ctx.moveTo(x, tip)
+    ctx.lineTo(x - SIZE_PX * ratio, base)
+    ctx.lineTo(x + SIZE_PX * ratio, base)
+    ctx.fill()
+    if (!mark.labelled) continue
+    ctx.fillStyle = theme.ink
+    ctx.textBaseline = under ? 'top' : 'bottom'
+    ctx.fillText(hertz(mark.frequencyHz), x, base + 2 * away)
+  }
+}

@@ -1,0 +1,16 @@
+// The level axis: whole steps of 6 dB around everything the sweep reaches, deep notches cut off.
+import type { Levels } from './drawTrace.ts'
+
+const STEP_DB = 6
+const DEEPEST_DB = 42
+const LEAST_DB = 24
+/** Room for marks and their numbers above and below. */
+const ROOM_DB = 4
+
+/** `lowDb`, `highDb`: what has to be shown. At least 24 dB, at most 42 dB below the top. */
+export function levelRange(lowDb: number, highDb: number): Levels {
+  const top = Math.min(highDb, 120)
+  const maxDb = Math.ceil((top + ROOM_DB) / STEP_DB) * STEP_DB
+  const bottom = Math.max(lowDb - ROOM_DB, maxDb - DEEPEST_DB)
+  return { minDb: Math.min(Math.floor(bottom / STEP_DB) * STEP_DB, maxDb - LEAST_DB), maxDb }
+}

@@ -1,0 +1,113 @@
+// The response at one sweep position as a plot draws it: levels at the points of its pixel columns, the smallest and
+// largest level inside each column (every notch and peak counted, so nothing aliases), marks, tooth spacing.
+import { type Extreme, frozenExtremes } from '../../../src/analysis/extremes.ts'
+import { freeze } from '../../../src/analysis/frozen.ts'
+import { transferAt, transferOf } from '../../../src/analysis/transfer.ts'
+import type { ParameterSet } from '../../../src/set/types.ts'
+import { type Columns, columnPoints, partOf, sameColumns } from '../../plots/columns.ts'
+import { powerDb } from './powerDb.ts'
+import { denseColumn, type Mark, marksOf, spacingOf } from './teeth.ts'
+
+export interface TraceRequest {
+  readonly set: ParameterSet
+  /** Sweep position, 0 to 1. */
+  readonly position: number
+  readonly columns: Columns
+}
+
+export interface TraceChannel {
+  /** dB at the 2 · count + 1 points of the columns. */
+  readonly db: Float64Array
+  /** Smallest and largest dB inside each column, edges included; from `dense` on, two columns either side as well. */
+  readonly low: Float64Array
+  readonly high: Float64Array
+}
+
+export interface Trace {
+  readonly position: number
+  readonly columns: Columns
+  readonly channels: readonly TraceChannel[]
+  /** The second channel's response is another one. */
+  readonly differs: boolean
+  /** Of the first channel. */
+  readonly marks: readonly Mark[]
+  /** Hz between the first channel's notches where they are evenly spaced, else null. */
+  readonly spacingHz: number | null
+  /** First column whose teeth are denser than pixels can show; `count` when there is none. */
+  readonly dense: number
+  /** Shapers count by their slope at 0. */
+  readonly smallSignal: boolean
+}
+
+let points = { columns: { lowHz: 0, highHz: 0, count: 0 } as Columns, hz: new Float64Array() as Float64Array }
+
+export function pointsOf(columns: Columns): Float64Array {
+  if (!sameColumns(points.columns, columns)) points = { columns, hz: columnPoints(columns) }
+  return points.hz
+}
+
+export function traceJob({ set, position, columns }: TraceRequest): Trace {
+  const frozen = freeze(set, position)
+  const transfer = transferOf(frozen)
+  const hz = pointsOf(columns)
+  const channels = frozen.channels.map(() => new Float64Array(hz.length))
+  const out = new Float64Array(4 * channels.length)
+  for (let i = 0; i < hz.length; i++) {
+    transferAt(transfer, (2 * Math.PI * (hz[i] as number)) / frozen.sampleRate, out)
+    channels.forEach((db, c) => {
+      db[i] = powerDb(out[4 * c] as number, out[4 * c + 1] as number)
+    })
+  }
+  const extremes = frozenExtremes(frozen)
+  const first = extremes.filter((extreme) => extreme.channel === 0)
+  const dense = denseColumn(extremes, columns)
+  const [left, right] = channels
+  return {
+    position,
+    columns,
+    channels: channels.map((db, channel) => {
+      const { low, high } = columnBand(db, extremes, channel, columns)
+      return { db, low: widened(low, dense, Math.min), high: widened(high, dense, Math.max) }
+    }),
+    differs: left !== undefined && right !== undefined && differ(left, right),
+    marks: marksOf(first, columns),
+    spacingHz: spacingOf(first),
+    dense,
+    smallSignal: frozen.smallSignal,
+  }
+}
+
+/** Levels of each column from its three points and every extreme in it. */
+export function columnBand(db: Float64Array, extremes: readonly Extreme[], channel: number, columns: Columns): TraceChannel {
+  const { count } = columns
+  const low = new Float64Array(count)
+  const high = new Float64Array(count)
+  for (let i = 0; i < count; i++) {
+    const a = db[2 * i] as number
+    const b = db[2 * i + 1] as number
+    const c = db[2 * i + 2] as number
+    low[i] = Math.min(a, b, c)
+    high[i] = Math.max(a, b, c)
+  }
+  for (const extreme of extremes) {
+    if (extreme.channel !== channel) continue
+    const i = Math.floor(partOf(columns, extreme.frequencyHz) * count)
+    if (i < 0 || i >= count) continue
+    low[i] = Math.min(low[i] as number, extreme.db)
+    high[i] = Math.max(high[i] as number, extreme.db)
+  }
+  return { db, low, high }
+}
+
+/** Columns either side that a dense band looks at: together as wide as the widest tooth in it, so that its outline is that of the teeth. */
+const WIDEN = 2
+
+/** From column `from` on, the smallest or largest of each column and its neighbours. */
+function widened(values: Float64Array, from: number, pick: (...values: number[]) => number): Float64Array {
+  return Float64Array.from(values, (value, i) => (i < from ? value : pick(...values.subarray(Math.max(from, i - WIDEN), i + WIDEN + 1))))
+}
+
+/** 0.001 dB, where both are above −100 dB. */
+function differ(a: Float64Array, b: Float64Array): boolean {
+  return a.some((value, i) => Math.abs(value - (b[i] as number)) > 1e-3 && Math.max(value, b[i] as number) > -100)
+}
