@@ -144,3 +144,16 @@ export function loopOrder(line: LoopLine): number {
   }
   return Math.max(zeros, openLoopPoles(line).length)
 }
+
+/**
+ * The pair that damping and low cut make between them when both are slow against the delay: at such angles the read is as good as 1, which
+ * leaves (1 − a v)(1 − b v) − G (1−a)(1+b)/2 (1 − v) = 0. null when its roots are real, which the real axis shows.
+ */
+export function slowPair({ lowPass: a, highPass: b, gain }: LoopLine): { x: number; theta: number } | null {
+  if (a === null || b === null) return null
+  const k = (gain * (1 - a) * (1 + b)) / 2
+  // In z: z² (1 − k) − z (a + b − k) + a b = 0, |z|² = a b/(1 − k).
+  const cosine = (a + b - k) / (2 * Math.sqrt(a * b * (1 - k)))
+  if (!(Math.abs(cosine) < 1)) return null
+  return { x: Math.log((a * b) / (1 - k)) / 2, theta: Math.acos(cosine) }
+}

@@ -1,7 +1,7 @@
 // The poles of one line, 1 − G A(z) F(z) = 0, exactly, however long the line. Every pole lies on the curve |L| = 1 (the modulus equation), one
 // about every 2π/D; the largest is next to the curve's largest x. Poles near 0 Hz, where a filter's own pole is as near as a branch, are
 // searched for from more starts.
-import { type LoopLine, logGain, logGainResult, loopOrder } from './loopLine.ts'
+import { type LoopLine, logGain, logGainResult, loopOrder, slowPair } from './loopLine.ts'
 import { bisect, goldenMaximum, localMaxima } from './loopSearch.ts'
 import { branchAngles, modulusEquation, newtonPole, type Pole } from './polesNewton.ts'
 import { allPolesOfShortLoop, SHORT_LOOP } from './polesPolynomial.ts'
@@ -56,7 +56,7 @@ export function allPolesOfLine(line: LoopLine, maxTheta: number): Pole[] {
   if (line.gain === 0) return []
   const poles =
     loopOrder(line) <= SHORT_LOOP ? allPolesOfShortLoop(line) : [...realPoles(line), ...polesNearDc(line), ...branches(line, maxTheta)]
-  return distinct(poles, line.delay).filter((pole) => pole.theta <= maxTheta)
+  return distinctPoles(poles, line.delay).filter((pole) => pole.theta <= maxTheta)
 }
 
 /** One pole a branch k: D θ = phase + 2πk, from the previous branch's x. About two steps each. */
@@ -87,19 +87,6 @@ function polesNearDc(line: LoopLine): Pole[] {
   return poles
 }
 
-/**
- * The pair that damping and low cut make between them when both are slow against the delay: at such angles the read is as good as 1, which
- * leaves (1 − a v)(1 − b v) − G (1−a)(1+b)/2 (1 − v) = 0. null when its roots are real, which realPoles finds.
- */
-function slowPair({ lowPass: a, highPass: b, gain }: LoopLine): Pole | null {
-  if (a === null || b === null) return null
-  const k = (gain * (1 - a) * (1 + b)) / 2
-  // In z: z² (1 − k) − z (a + b − k) + a b = 0, |z|² = a b/(1 − k).
-  const cosine = (a + b - k) / (2 * Math.sqrt(a * b * (1 - k)))
-  if (!(Math.abs(cosine) < 1)) return null
-  return { x: Math.log((a * b) / (1 - k)) / 2, theta: Math.acos(cosine) }
-}
-
 function pushPole(poles: Pole[], pole: Pole | null): void {
   if (pole !== null) poles.push(pole)
 }
@@ -109,7 +96,7 @@ function largest(poles: readonly Pole[]): Pole | null {
 }
 
 /** Without repeats: two starts may reach one pole. Poles are about 2π/D apart. */
-function distinct(poles: readonly Pole[], delay: number): Pole[] {
+export function distinctPoles(poles: readonly Pole[], delay: number): Pole[] {
   const near = 1e-6 / delay
   const sorted = [...poles].sort((a, b) => a.theta - b.theta)
   const kept: Pole[] = []

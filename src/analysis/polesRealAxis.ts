@@ -13,11 +13,16 @@ export function realPoles(line: LoopLine): Pole[] {
   return [...polesOnAxis(line, 0), ...polesOnAxis(line, Math.PI)]
 }
 
+/** x at which an axis is looked at: around 1 and around every positive one of `poles` (radii). */
+export function axisGrid(poles: readonly number[]): number[] {
+  const centres = [0, ...poles.filter((pole) => pole > 0).map(Math.log)]
+  return [...new Set(centres.flatMap((c) => DISTANCES.flatMap((d) => [c - d, c + d])))].filter((x) => x > -3).sort((a, b) => a - b)
+}
+
 function polesOnAxis(line: LoopLine, theta: number): Pole[] {
   const sign = theta === 0 ? 1 : -1
   const open = openLoopPoles(line).map((pole) => pole * sign)
-  const centres = [0, ...open.filter((pole) => pole > 0).map(Math.log)]
-  const grid = [...new Set(centres.flatMap((c) => DISTANCES.flatMap((d) => [c - d, c + d])))].filter((x) => x > -3).sort((a, b) => a - b)
+  const grid = axisGrid(open)
   // (1 − L) times L's denominator: no poles, so every change of sign is a root.
   const positive = (x: number) => {
     logGain(line, x, theta, scratch)
