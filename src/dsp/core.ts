@@ -1,0 +1,182 @@
+// One signal path with all its memory. The engine has two: a change that only a cross-fade can make is loaded into the idle one, on a
+// copy of the other's memory, and both run while one fades into the other.
+
+import { setTargets } from './gains.ts'
+import { CHUNK, createLine, lineLength } from './line.ts'
+import { CORE_RAMPS, copyRamps, createRamps, type Ramps, SHAPER_VALUES, SHAPERS, settleRamps } from './ramps.ts'
+import type { Read } from './reads.ts'
+import { createSettings, MAX_VOICES, type Settings, takeStructure } from './settings.ts'
+import { takeShaperValues } from './shaperPass.ts'
+import { createTrajectory, jump, READS, type Trajectory } from './trajectory.ts'
+
+type Pair = readonly [Float64Array, Float64Array]
+
+/** Memory of the recursive parts; one slot a line or output channel, two where a filter keeps two. */
+interface States {
+  readonly damping: Float64Array
+  readonly lowCut: Float64Array
+  readonly wetHighCut: Float64Array
+  readonly wetLowCut: Float64Array
+  /** Last input of shaper i of channel c at 2 i + c. */
+  readonly shapers: Float64Array
+  /** All-pass reads, one slot a read of the trajectory. */
+  readonly reads: Float64Array
+}
+
+export interface Core {
+  readonly fs: number
+  readonly settings: Settings
+  readonly ramps: Ramps
+  readonly trajectory: Trajectory
+  /** Samples a line holds; its memory is twice as long. */
+  readonly length: number
+  /** Where the next sample is written in every line. */
+  position: number
+  readonly lines: Pair
+  /** u of each line, for a dry path that leaves at the input and is delayed. */
+  readonly dryLines: Pair
+  /** Whether dryLines are written; without, they have no memory. */
+  readonly keepsDry: boolean
+  readonly states: States
+  /** Line values below this are written as 0. */
+  readonly flush: number
+  /** A chunk each: u, s, w, wet and output by channel. */
+  readonly input: Pair
+  readonly loop: Pair
+  readonly written: Pair
+  readonly wet: Pair
+  readonly output: Pair
+  readonly read: Read
+}
+
+const pair = (length: number): Pair => [new Float64Array(length), new Float64Array(length)]
+
+export interface CoreOptions {
+  readonly fs: number
+  /** Longest delay any read may have, samples. */
+  readonly maxDelay: number
+  readonly keepsDry: boolean
+  readonly flush: number
+}
+
+export function createCore({ fs, maxDelay, keepsDry, flush }: CoreOptions): Core {
+  const length = lineLength(maxDelay)
+  const trajectory = createTrajectory(fs, maxDelay)
+  const states: States = {
+    damping: new Float64Array(2),
+    lowCut: new Float64Array(4),
+    wetHighCut: new Float64Array(2),
+    wetLowCut: new Float64Array(4),
+    shapers: new Float64Array(6),
+    reads: new Float64Array(READS),
+  }
+  const lines: Pair = [createLine(length), createLine(length)]
+  const wet = pair(CHUNK)
+  return {
+    fs,
+    settings: createSettings(),
+    ramps: createRamps(fs, CORE_RAMPS),
+    trajectory,
+    length,
+    position: 0,
+    lines,
+    dryLines: keepsDry ? [createLine(length), createLine(length)] : pair(0),
+    keepsDry,
+    states,
+    flush,
+    input: pair(CHUNK),
+    loop: pair(CHUNK),
+    written: pair(CHUNK),
+    wet,
+    output: pair(CHUNK),
+    read: { line: lines[0], at: 0, delays: trajectory.delays, d: 0, states: states.reads, state: 0, out: wet[0], o: 0 },
+  }
+}
+
+/** Sets what recursive parts have nearly forgotten to 0: below `flush` they only head for denormal numbers. */
+export function flushStates({ states, flush }: Core): void {
+  flushSlots(states.damping, flush)
+  flushSlots(states.lowCut, flush)
+  flushSlots(states.wetHighCut, flush)
+  flushSlots(states.wetLowCut, flush)
+  flushSlots(states.reads, flush)
+}
+
+function flushSlots(states: Float64Array, flush: number): void {
+  for (let i = 0; i < states.length; i++) if (Math.abs(states[i]!) < flush) states[i] = 0
+}
+
+/** Silence: lines and filters empty. Settings, ramps and phase stay. */
+export function clearCore({ lines, dryLines, states }: Core): void {
+  for (let c = 0; c < 2; c++) {
+    lines[c]!.fill(0)
+    dryLines[c]!.fill(0)
+  }
+  states.damping.fill(0)
+  states.lowCut.fill(0)
+  states.wetHighCut.fill(0)
+  states.wetLowCut.fill(0)
+  states.shapers.fill(0)
+  states.reads.fill(0)
+}
+
+/** Loads everything of a flat set at once: ramps at their targets, delays where they belong. Memory and phase stay. */
+export function loadCore(core: Core, flat: Float64Array, inputOpen: number, dryOpen: number): void {
+  takeStructure(core.settings, flat)
+  setTargets(core.ramps, flat, core.fs, inputOpen, dryOpen)
+  settleCore(core)
+  jump(core.trajectory)
+}
+
+/** Ends all ramps at their targets. */
+export function settleCore({ settings, ramps }: Core): void {
+  settleRamps(ramps)
+  for (let i = 0; i < settings.shapers.length; i++) takeShaperValues(settings.shapers[i]!, ramps, SHAPERS + SHAPER_VALUES * i, 0)
+}
+
+/** Copies another core's memory and motion, not its settings. */
+export function copyMemory(to: Core, from: Core): void {
+  to.position = from.position
+  copyRamps(to.ramps, from.ramps)
+  for (let c = 0; c < 2; c++) {
+    to.lines[c]!.set(from.lines[c]!)
+    to.dryLines[c]!.set(from.dryLines[c]!)
+  }
+  to.states.damping.set(from.states.damping)
+  to.states.lowCut.set(from.states.lowCut)
+  to.states.wetHighCut.set(from.states.wetHighCut)
+  to.states.wetLowCut.set(from.states.wetLowCut)
+  to.states.shapers.set(from.states.shapers)
+  to.states.reads.set(from.states.reads)
+  to.trajectory.phase = from.trajectory.phase
+  to.trajectory.since = from.trajectory.since
+  to.trajectory.held = from.trajectory.held
+}
+
+/** Makes memory copied from a core of another layout fit: one line becomes two alike, two become one by their mean, as inputs do. */
+export function fitMemory({ settings, lines, dryLines, states }: Core, linesBefore: number, outputsBefore: number): void {
+  if (linesBefore < settings.lines) {
+    lines[1].set(lines[0])
+    dryLines[1].set(dryLines[0])
+    copySlots(states.damping, 1)
+    copySlots(states.lowCut, 2)
+  } else if (linesBefore > settings.lines) {
+    meanInto(lines[0], lines[1])
+    meanInto(dryLines[0], dryLines[1])
+  }
+  if (outputsBefore < settings.outputs) {
+    copySlots(states.wetHighCut, 1)
+    copySlots(states.wetLowCut, 2)
+    states.reads.copyWithin(MAX_VOICES, 0, MAX_VOICES)
+    for (let i = 0; i < settings.shapers.length; i++) states.shapers[2 * i + 1] = states.shapers[2 * i]!
+  }
+}
+
+/** The first `n` slots again for the second channel. */
+function copySlots(states: Float64Array, n: number): void {
+  states.copyWithin(n, 0, n)
+}
+
+function meanInto(a: Float64Array, b: Float64Array): void {
+  for (let i = 0; i < a.length; i++) a[i] = (a[i]! + b[i]!) / 2
+}
