@@ -1,0 +1,63 @@
+// The built-in phrases: what an effect is judged on when no recording is at hand. All synthesised here, mono, the same samples each time.
+import { setLevel } from './circular.ts'
+import { drumBar } from './drums.ts'
+import { heldChord, impulses, pinkNoise } from './steady.ts'
+import { bassLine, pluckedChords } from './stringPhrases.ts'
+import { DEFAULT_TONE, type ToneOptions, tone } from './tone.ts'
+
+export type PhraseId = 'pluckedChords' | 'bassLine' | 'drumBar' | 'heldChord' | 'noise' | 'impulse' | 'tone'
+
+export interface PhraseInfo {
+  readonly id: PhraseId
+  readonly label: string
+  /** What it is good for hearing, one sentence. */
+  readonly about: string
+}
+
+export const PHRASES: readonly PhraseInfo[] = [
+  {
+    id: 'pluckedChords',
+    label: 'Plucked chords',
+    about: 'Strummed strings with attack, decay and a wide spectrum: the usual judge of chorus and flanger.',
+  },
+  { id: 'bassLine', label: 'Bass line', about: 'Low notes from 44 Hz: shows what a comb takes from the fundamental.' },
+  { id: 'drumBar', label: 'Drum bar', about: 'Kick, snare and hat: short attacks show echoes and ringing, the noise shows the sweep.' },
+  { id: 'heldChord', label: 'Held chord', about: 'A rich chord that never changes: all that moves is the effect.' },
+  { id: 'noise', label: 'Pink noise', about: 'Equal power in every octave: every notch and peak can be heard.' },
+  { id: 'impulse', label: 'Impulses', about: 'One sample a second: every echo shows in the scope.' },
+  { id: 'tone', label: 'Tone', about: 'A sine of any frequency and level: pitch wobble and steps of the sweep.' },
+]
+
+export const MIN_PHRASE_RATE = 8000
+export const MAX_PHRASE_RATE = 192_000
+
+// −20 dBFS rms leaves a resonance 14 dB before it clips; −6.1 dB caps what is mostly attack.
+const LEVEL = { targetRms: 0.1, maxPeak: 0.495 }
+
+/**
+ * A phrase as mono samples at `sampleRate` Hz, in [{@link MIN_PHRASE_RATE}, {@link MAX_PHRASE_RATE}]. The whole array repeats without a seam: what sounds at its end is laid over
+ * its beginning. 4 to 8 s; −20 dBFS rms or less where the peak would pass −6 dBFS (impulses: 0.5; tone: as `options` say). Takes 10 to 300 ms at 48 kHz. RangeError outside the ranges.
+ */
+export function phrase(id: PhraseId, sampleRate: number, options: { readonly tone?: ToneOptions } = {}): Float64Array {
+  if (!(sampleRate >= MIN_PHRASE_RATE && sampleRate <= MAX_PHRASE_RATE)) {
+    throw new RangeError(`sampleRate must be ${MIN_PHRASE_RATE} to ${MAX_PHRASE_RATE} Hz, got ${sampleRate}`)
+  }
+  switch (id) {
+    case 'pluckedChords':
+      return setLevel(pluckedChords(sampleRate), LEVEL)
+    case 'bassLine':
+      return setLevel(bassLine(sampleRate), LEVEL)
+    case 'drumBar':
+      return setLevel(drumBar(sampleRate), LEVEL)
+    case 'heldChord':
+      return setLevel(heldChord(sampleRate), LEVEL)
+    case 'noise':
+      return setLevel(pinkNoise(sampleRate), LEVEL)
+    case 'impulse':
+      return impulses(sampleRate)
+    case 'tone':
+      return tone(sampleRate, options.tone ?? DEFAULT_TONE)
+    default:
+      throw new RangeError(`phrase must be one of ${PHRASES.map((p) => p.id).join(', ')}, got ${id}`)
+  }
+}
