@@ -1,0 +1,48 @@
+// combwright check SET: all checks, their figures, limits and working.
+import type { Command } from 'commander'
+import { runChecks, verdictOf } from '../../checks/registry.ts'
+import type { Check, Verdict } from '../../checks/types.ts'
+import { type NumberParameter, parameter } from '../../set/parameters.ts'
+import { readChoice, readNumberOption } from '../arguments.ts'
+import { EXIT_CHECK, EXIT_GOOD } from '../failure.ts'
+import { readSetFile } from '../files.ts'
+import { printJson } from '../output.ts'
+import type { Session } from '../program.ts'
+
+interface CheckOptions {
+  readonly rate?: string
+  readonly failOn: string
+  readonly json?: boolean
+}
+
+const RATE = parameter('sampleRate') as NumberParameter
+
+export function addCheck(program: Command, session: Session): void {
+  program
+    .command('check')
+    .description('judge a set: every check with its figure, limit and working')
+    .argument('<set>', 'a set file')
+    .option('--rate <hz>', `judge it as if run at this rate, ${RATE.min} to ${RATE.max} Hz`)
+    .option('--fail-on <status>', 'exit 1 on fails, or already on near', 'fails')
+    .option('--json', 'print { set, verdict, checks } as JSON')
+    .addHelpText(
+      'after',
+      "\nExit: 0 no check at or past --fail-on, 1 one is, 2 bad use or bad input.\n'combwright new --help' lists the ranges of a set's values.",
+    )
+    .action((file: string, options: CheckOptions) => {
+      const failOn = readChoice(options.failOn, '--fail-on', ['fails', 'near'])
+      const sampleRate = options.rate === undefined ? undefined : readNumberOption(options.rate, { ...RATE, name: '--rate' })
+      const set = readSetFile(file)
+      const checks = runChecks(set, { sampleRate })
+      const verdict = verdictOf(checks)
+      if (options.json) printJson({ set: set.name, verdict, checks })
+      else process.stdout.write(checkReport(set.name, verdict, checks))
+      session.exitCode = verdict === 'fails' || (failOn === 'near' && verdict === 'near') ? EXIT_CHECK : EXIT_GOOD
+    })
+}
+
+function checkReport(name: string, verdict: Verdict, checks: readonly Check[]): string {
+  const width = Math.max(...checks.map((check) => check.id.length))
+  const lines = checks.map((check) => `${check.status.padEnd(5)}  ${check.id.padEnd(width)}  ${check.text}`)
+  return `${name}: ${verdict}\n${lines.map((line) => `${line}\n`).join('')}`
+}
