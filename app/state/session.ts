@@ -88,7 +88,7 @@ export const useSession = create<SessionState>()(() => ({
   playing: false,
   cautionRead: false,
   cautionOpen: false,
-  source: { kind: 'phrase', id: 'plucked' },
+  source: { kind: 'phrase', id: 'pluckedChords' },
   loading: null,
   overview: null,
   repeat: null,

@@ -45,6 +45,8 @@ export type SourceMessage =
       readonly type: 'sample'
       readonly id: number
       readonly channels: readonly Float32Array[]
+      /** What sounds at the end flows into the beginning. */
+      readonly circular: boolean
       readonly start: number
       readonly end: number
     }

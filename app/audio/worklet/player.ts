@@ -3,6 +3,7 @@
 // Two heads: the one that plays and the one it takes over from, cross-faded in a straight line. Every jump (end of the region, a new
 // region, a new source) is such a take-over, so none clicks. At the end of the region the new head starts `join` frames before the
 // region's start and meets the old one at its end: the period is exactly end − start, and material that fits together is left untouched.
+import { DEFAULT_TONE } from '../../../src/material/steady.ts'
 import { createRamp, multiplyByRamp, type Ramp, rampTo } from './ramp.ts'
 
 /** What a head plays. */
@@ -16,12 +17,14 @@ export interface SampleMemory {
   /** One or two channels of equal length, full scale ±1. */
   readonly channels: readonly Float32Array[]
   readonly frames: number
+  /** What sounds at the end flows into the beginning (the phrases): the seam of the whole needs no join. */
+  readonly circular: boolean
 }
 
 interface Head {
   kind: number
   memory: SampleMemory | null
-  /** Next frame; may be negative before a join at the very start, where silence is read. */
+  /** Next frame; negative in a join at the very start, where silence is read, or the end of circular memory. */
   frame: number
 }
 
@@ -47,8 +50,7 @@ export interface Player {
 const JOIN_S = 0.005
 const SOURCE_FADE_S = 0.02
 const GATE_S = 0.05
-/** −12 dBFS: leaves the effect the same headroom as the phrases do. */
-const TONE_PEAK = 0.25
+const TONE_PEAK = 10 ** (DEFAULT_TONE.levelDb / 20)
 
 export function createPlayer(sampleRate: number, maxFrames: number): Player {
   return {
@@ -206,7 +208,8 @@ function addSample(gains: Float64Array, head: Head, left: Float64Array, right: F
     const first = memory.channels[0] as Float32Array
     const second = (memory.channels[1] ?? first) as Float32Array
     for (let i = 0; i < count; i++) {
-      const frame = head.frame + i
+      let frame = head.frame + i
+      if (frame < 0 && memory.circular) frame += memory.frames
       if (frame < 0 || frame >= memory.frames) continue
       const gain = gains[i] as number
       left[at + i] = (left[at + i] as number) + gain * (first[frame] as number)
