@@ -3,7 +3,7 @@
 // Two heads: the one that plays and the one it takes over from, cross-faded in a straight line. Every jump (end of the region, a new
 // region, a new source) is such a take-over, so none clicks. At the end of the region the new head starts `join` frames before the
 // region's start and meets the old one at its end: the period is exactly end − start, and material that fits together is left untouched.
-import { DEFAULT_TONE } from '../../../src/material/steady.ts'
+import { DEFAULT_TONE } from '../../../src/material/tone.ts'
 import { createRamp, multiplyByRamp, type Ramp, rampTo } from './ramp.ts'
 
 /** What a head plays. */

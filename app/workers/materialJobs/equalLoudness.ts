@@ -4,7 +4,7 @@
 // that layout and channel count count alike. The region goes round once unmeasured first (up to 2 s), so that the tail of its end lies under its start as it does when it
 // repeats.
 import { createEngine, inputChannels, outputChannels, processEngine, setBypass } from '../../../src/dsp/engine.ts'
-import { DEFAULT_TONE } from '../../../src/material/steady.ts'
+import { DEFAULT_TONE } from '../../../src/material/tone.ts'
 import { integratedLoudness } from '../../../src/signal/loudness.ts'
 import type { MaterialReply, MaterialRequest } from '../materialProtocol.ts'
 import { keptMaterial } from './memory.ts'
