@@ -1,0 +1,95 @@
+// The signal path as it is, and the control over it: choosing a block opens its fields. One tab stop; arrows move inside.
+import './Drawing.css'
+import { useLayoutEffect, useRef, useState } from 'react'
+import { useCurrent } from '../../../state/current.ts'
+import { useView } from '../../../state/view.ts'
+import { BlockTab } from './BlockTab.tsx'
+import { interpolationName, LOOP_BLOCKS, MAIN_BLOCKS } from './blocks.ts'
+import { geometryOf, TIGHT_WIDTH } from './geometry.ts'
+import { neighbour } from './roving.ts'
+import { Wires } from './Wires.tsx'
+
+export function Drawing() {
+  const set = useCurrent((s) => s.set)
+  const chosen = useView((s) => s.block)
+  const [frame, width] = useWidthRem()
+  const geometry = geometryOf(set, width)
+  const stop = chosen === 'set' ? 'line' : chosen
+  const style = { width: `${geometry.width}rem`, height: `${geometry.height}rem` }
+  return (
+    <div className="cw-drawing" ref={frame}>
+      <div
+        className="cw-drawing-sheet"
+        role="tablist"
+        aria-label="Signal path"
+        style={style}
+        onKeyDown={(event) => {
+          const next = neighbour(stop, event.key)
+          if (!next) return
+          event.preventDefault()
+          useView.setState({ block: next })
+          document.getElementById(`cw-block-${next}`)?.focus()
+        }}
+      >
+        <Wires geometry={geometry} crossIdle={set.loop.feedback === 0} />
+        <Labels set={set} geometry={geometry} />
+        {[...MAIN_BLOCKS, ...LOOP_BLOCKS].map((id) => (
+          <BlockTab key={id} id={id} set={set} box={geometry.boxes[id]} chosen={id === chosen} isStop={id === stop} />
+        ))}
+      </div>
+    </div>
+  )
+}
+
+type LabelsProps = { readonly set: Parameters<typeof geometryOf>[0]; readonly geometry: ReturnType<typeof geometryOf> }
+
+function Labels({ set, geometry }: LabelsProps) {
+  const { labels, cross } = geometry
+  const at = ({ x, y }: { readonly x: number; readonly y: number }) => ({ left: `${x}rem`, top: `${y}rem` })
+  const { loop, mix } = set
+  const dry = mix.dry === 0 ? 'no dry' : mix.dryDelayMs > 0 ? `dry, ${mix.dryDelayMs} ms late` : 'dry'
+  const reads = `loop reads ${interpolationName(loop.interpolation)}${loop.delay === 'fixed' ? ', fixed at base' : ''}`
+  return (
+    <div aria-hidden="true">
+      <span className="cw-drawing-end" style={at(labels.in)}>
+        in
+      </span>
+      <span className="cw-drawing-end" style={at(labels.out)}>
+        out
+      </span>
+      <span className="cw-drawing-label" style={at(labels.dry)}>
+        {dry}
+      </span>
+      <span className="cw-drawing-label" style={at(labels.loopReads)}>
+        {loop.feedback === 0 ? 'no loop' : reads}
+      </span>
+      <span className="cw-drawing-sum" style={at(geometry.sum)}>
+        +
+      </span>
+      {cross && loop.crossFeed > 0 && (
+        <span className="cw-drawing-label cw-drawing-label--centred" style={at({ x: cross.x + cross.width / 2, y: cross.y + 1.375 })}>
+          cross {Number(loop.crossFeed.toFixed(2))}
+        </span>
+      )}
+    </div>
+  )
+}
+
+/** Inner width of the frame in rem, followed as it changes. */
+function useWidthRem() {
+  const frame = useRef<HTMLDivElement>(null)
+  const [width, setWidth] = useState(TIGHT_WIDTH)
+  useLayoutEffect(() => {
+    const element = frame.current
+    if (!element) return
+    const measure = () => {
+      const rem = Number.parseFloat(getComputedStyle(document.documentElement).fontSize) || 16
+      setWidth(Math.floor((element.clientWidth / rem) * 16) / 16)
+    }
+    measure()
+    const observer = new ResizeObserver(measure)
+    observer.observe(element)
+    return () => observer.disconnect()
+  }, [])
+  return [frame, width] as const
+}

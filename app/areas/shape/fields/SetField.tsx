@@ -1,0 +1,50 @@
+// A field of the set by its path: which kind, from the table; what is usual and what follows, from the set's other values.
+import { parameter } from '../../../../src/set/parameters.ts'
+import { usualRange } from '../../../../src/set/usualRanges.ts'
+import { type Binding, useField } from '../../../fields/binding.ts'
+import { ChoiceField } from '../../../fields/ChoiceField.tsx'
+import { keepTypedTempo, quantityContext } from '../../../fields/contexts.ts'
+import { firstValue } from '../../../fields/firstValues.ts'
+import { NumberField } from '../../../fields/NumberField.tsx'
+import { SwitchField } from '../../../fields/SwitchField.tsx'
+import { TextField } from '../../../fields/TextField.tsx'
+import { useCurrent } from '../../../state/current.ts'
+import { useView } from '../../../state/view.ts'
+import { fieldNotes } from './notes.ts'
+
+interface SetFieldProps {
+  readonly path: string
+  /** Lines kept for what follows from the value. */
+  readonly lines?: number
+  readonly label?: string
+}
+
+export function SetField({ path, lines, label }: SetFieldProps) {
+  const row = parameter(path)
+  const named = label === undefined ? row : { ...row, label }
+  const binding = useField<unknown>(path)
+  const set = useCurrent((s) => s.set)
+  const tempoBpm = useView((s) => s.tempoBpm)
+  const notes = fieldNotes(path, set, { tempoBpm })
+  switch (named.kind) {
+    case 'choice':
+      return <ChoiceField spec={named} binding={binding as Binding<string | null>} notes={notes} />
+    case 'boolean':
+      return <SwitchField spec={named} binding={binding as Binding<boolean>} />
+    case 'text':
+      return <TextField spec={named} binding={binding as Binding<string>} {...(path === 'notes' ? { rows: 6 } : {})} />
+    default:
+      return (
+        <NumberField
+          spec={named}
+          binding={binding as Binding<number | null>}
+          context={quantityContext}
+          usual={usualRange(set.intent, path)}
+          notes={notes}
+          whenOff={firstValue(path)}
+          onApplied={keepTypedTempo}
+          {...(lines === undefined ? {} : { lines })}
+        />
+      )
+  }
+}

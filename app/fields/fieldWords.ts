@@ -1,0 +1,32 @@
+// Why a value cannot stand, in the words of the page: labels instead of paths.
+import { CLOSE_TOLERANCE, delayRange } from '../../src/set/delayRange.ts'
+import { isParameterPath, parameter } from '../../src/set/parameters.ts'
+import type { Problem } from '../../src/set/result.ts'
+import type { ParameterSet } from '../../src/set/types.ts'
+import { rangeText } from '../../src/set/valueProblem.ts'
+import { showIn } from './quantity.ts'
+
+/** One sentence for a typed value that was not applied; `set` is what it would have become, when it got that far. */
+export function whyNot(path: string, problem: Problem, set: ParameterSet | null): string {
+  const close = set && closeRead(set)
+  if (close) return close
+  if (isParameterPath(path) && problem.path === path) {
+    const row = parameter(path)
+    return `${row.label} takes ${withMinus(rangeText(row))}`
+  }
+  return withMinus(sentence(problem.message))
+}
+
+/** "The delay would come to −1.75 ms; a voice reads no closer than 0.02 ms"; null when nothing reads too close. */
+function closeRead(set: ParameterSet): string | null {
+  const { voices, loop, voiceLimitSamples, loopLimitSamples } = delayRange(set)
+  const ms = (samples: number) => showIn((samples * 1000) / set.sampleRate, 'ms')
+  if (voices.minSamples < voiceLimitSamples - CLOSE_TOLERANCE)
+    return `The delay would come to ${ms(voices.minSamples)}; a voice reads no closer than ${ms(voiceLimitSamples)}`
+  if (set.loop.feedback !== 0 && loop.minSamples < loopLimitSamples - CLOSE_TOLERANCE)
+    return `The loop’s delay would come to ${ms(loop.minSamples)}; it reads no closer than ${ms(loopLimitSamples)}`
+  return null
+}
+
+const sentence = (text: string) => text.charAt(0).toUpperCase() + text.slice(1)
+const withMinus = (text: string) => text.replace(/(^|[\s(])-(?=\d)/g, '$1−')
