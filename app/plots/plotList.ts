@@ -3,6 +3,7 @@ import type { PlotId } from '../state/view.ts'
 import type { MountPlot } from './plotTypes.ts'
 import { mountResponse } from './response/response.ts'
 import { mountScope } from './scope/scope.ts'
+import { mountSweep } from './sweep/sweep.ts'
 
 export interface PlotEntry {
   readonly id: PlotId
@@ -12,6 +13,7 @@ export interface PlotEntry {
 
 export const PLOTS: readonly PlotEntry[] = [
   { id: 'response', label: 'Response', mount: mountResponse },
+  { id: 'sweep', label: 'Sweep', mount: mountSweep },
   { id: 'scope', label: 'Scope', mount: mountScope },
 ]
 

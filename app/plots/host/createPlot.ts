@@ -59,7 +59,7 @@ export function createPlot(element: HTMLElement, spec: PlotSpec): HostedPlot {
       axes: spec.axes,
       series: [{}, ...(spec.series ?? [])],
       legend: { show: false },
-      padding: [6, 10, 0, 0],
+      padding: [6, 16, 0, 0],
       cursor: { y: false, points: { show: false }, drag: { x: false, y: false } },
       hooks: {
         drawAxes: [layer(spec.under)],

@@ -31,7 +31,7 @@ function read(): PlotTheme {
     second: token('second', 'VisitedText'),
     fails: token('fails', 'CanvasText'),
     textPx,
-    font: `${textPx}px ${style.fontFamily || 'system-ui, sans-serif'}`,
+    font: `${textPx}px ${getComputedStyle(document.body).fontFamily || 'sans-serif'}`,
   }
 }
 

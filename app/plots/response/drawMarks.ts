@@ -21,6 +21,10 @@ export function drawMarks(
   const { ratio } = box
   ctx.font = canvasFont(theme, ratio)
   ctx.textAlign = 'center'
+  // A rim of paper keeps numbers legible over the curve.
+  ctx.strokeStyle = theme.paper
+  ctx.lineWidth = 3 * ratio
+  ctx.lineJoin = 'round'
   for (const mark of marks) {
     const under = mark.kind === 'notch'
     const away = (under ? 1 : -1) * ratio
@@ -37,8 +41,9 @@ export function drawMarks(
     ctx.lineTo(x + SIZE_PX * ratio, base)
     ctx.fill()
     if (!mark.labelled) continue
-    ctx.fillStyle = theme.ink
     ctx.textBaseline = under ? 'top' : 'bottom'
+    ctx.strokeText(hertz(mark.frequencyHz), x, base + 2 * away)
+    ctx.fillStyle = theme.ink
     ctx.fillText(hertz(mark.frequencyHz), x, base + 2 * away)
   }
 }

@@ -17,7 +17,7 @@ const DASH_PX = [5, 4] as const
 export function drawReach(ctx: CanvasRenderingContext2D, box: PlotBox, theme: PlotTheme, levels: Levels, reach: Reach | null): void {
   if (!reach) return
   clip(ctx, box)
-  const { fill, top, bottom } = bandEdges(box, levels, reach.low, reach.high, 0)
+  const { fill, top, bottom } = bandEdges(box, levels, reach, reach.columns.count)
   ctx.fillStyle = theme.now
   ctx.strokeStyle = theme.now
   ctx.globalAlpha = WASH
@@ -34,12 +34,13 @@ export function drawTrace(ctx: CanvasRenderingContext2D, box: PlotBox, theme: Pl
   cornerText(ctx, box, theme, 'topRight', 'shaded: everywhere the sweep reaches')
   if (!trace) return
   const [first, second] = trace.channels
+  const [firstBand, secondBand] = trace.bands
   ctx.save()
   clip(ctx, box)
   ctx.lineJoin = 'round'
   ctx.lineWidth = LINE_PX * box.ratio
-  if (first) {
-    const { fill, top, bottom } = bandEdges(box, levels, first.low, first.high, trace.dense)
+  if (first && firstBand) {
+    const { fill, top, bottom } = bandEdges(box, levels, firstBand, trace.columns.count)
     ctx.fillStyle = theme.now
     ctx.strokeStyle = theme.now
     ctx.globalAlpha = BAND
@@ -50,8 +51,8 @@ export function drawTrace(ctx: CanvasRenderingContext2D, box: PlotBox, theme: Pl
     ctx.stroke(top)
     ctx.stroke(bottom)
   }
-  if (second && trace.differs) {
-    const { top, bottom } = bandEdges(box, levels, second.low, second.high, trace.dense)
+  if (second && secondBand && trace.differs) {
+    const { top, bottom } = bandEdges(box, levels, secondBand, trace.columns.count)
     ctx.strokeStyle = theme.second
     ctx.lineWidth = box.ratio
     ctx.setLineDash(DASH_PX.map((px) => px * box.ratio))

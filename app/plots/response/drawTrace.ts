@@ -36,38 +36,36 @@ function sharpest(start: number, middle: number, end: number, low: number, high:
   return high > Math.max(start, middle, end) ? high : middle
 }
 
+export interface Band {
+  readonly low: Float64Array
+  readonly high: Float64Array
+}
+
 export interface BandEdges {
   readonly fill: Path2D
   readonly top: Path2D
   readonly bottom: Path2D
 }
 
-/** Top, bottom and the closed band between them, each column one step wide, joined at the columns' middles. */
-export function bandEdges(box: PlotBox, levels: Levels, low: Float64Array, high: Float64Array, from: number): BandEdges {
-  const count = low.length
+/** Top, bottom and the closed band between them over the last `low.length` of `count` columns, joined at the columns' middles. */
+export function bandEdges(box: PlotBox, levels: Levels, { low, high }: Band, count: number): BandEdges {
   const width = box.width / count
-  const edge = (values: Float64Array): [number, number][] => {
-    const points: [number, number][] = []
-    for (let i = from; i < count; i++) points.push([box.left + (i + 0.5) * width, levelY(box, levels, values[i] as number)])
-    const first = points[0]
+  const start = box.left + box.width - low.length * width
+  const edge = (values: Float64Array): Point[] => {
+    const points = Array.from(values, (db, i): Point => [start + (i + 0.5) * width, levelY(box, levels, db)])
+    const [first] = points
     const last = points.at(-1)
-    if (first && last) {
-      points.unshift([box.left + from * width, first[1]])
-      points.push([box.left + box.width, last[1]])
-    }
-    return points
+    return first && last ? [[start, first[1]], ...points, [box.left + box.width, last[1]]] : []
   }
   const upper = edge(high)
   const lower = edge(low)
-  return { fill: through([...upper, ...lower.reverse()], true), top: through(upper, false), bottom: through(lower, false) }
+  return { fill: through([...upper, ...lower.toReversed()]), top: through(upper), bottom: through(lower) }
 }
 
-function through(points: readonly (readonly [number, number])[], closed: boolean): Path2D {
+type Point = readonly [number, number]
+
+function through(points: readonly Point[]): Path2D {
   const path = new Path2D()
-  points.forEach(([x, y], i) => {
-    if (i === 0) path.moveTo(x, y)
-    else path.lineTo(x, y)
-  })
-  if (closed) path.closePath()
+  for (const [x, y] of points) path.lineTo(x, y)
   return path
 }

@@ -8,6 +8,7 @@ import type { Reach } from '../../workers/analysisJobs/reach.ts'
 import type { Trace } from '../../workers/analysisJobs/trace.ts'
 import { axisColumns, type Columns, frequencyAt, sameColumns } from '../columns.ts'
 import { axis, DECIBEL_STEPS, evenSplits, frequencyLabel, frequencySplits } from '../host/axes.ts'
+import { middleText } from '../host/corner.ts'
 import { createPlot } from '../host/createPlot.ts'
 import { plotCursor } from '../host/plotCursor.ts'
 import type { MountedPlot, PlotPlace } from '../plotTypes.ts'
@@ -27,16 +28,25 @@ export function mountResponse({ element, reading }: PlotPlace): MountedPlot {
   let trace: Trace | null = null
   let reach: Reach | null = null
   let asked = { set: currentSet(), position: -1, columns }
+  let problem = ''
   let dirty = false
   let unread = false
   let cursor: number | null = null
   let readAt = 0
 
-  const traces = analysis().openFeed('trace', (reply) => {
-    trace = reply
-    dirty = true
-    if (reach === null) fitLevels()
-  })
+  const traces = analysis().openFeed(
+    'trace',
+    (reply) => {
+      trace = reply
+      problem = ''
+      dirty = true
+      if (reach === null) fitLevels()
+    },
+    (message) => {
+      problem = `The response could not be computed:\n${message}`
+      dirty = true
+    },
+  )
   const reaches = analysis().openFeed('reach', (reply) => {
     reach = reply
     dirty = true
@@ -63,7 +73,10 @@ export function mountResponse({ element, reading }: PlotPlace): MountedPlot {
       [0, 0],
     ],
     under: (ctx, box, theme) => drawReach(ctx, box, theme, levels, reach),
-    over: (ctx, box, theme) => drawTrace(ctx, box, theme, levels, trace),
+    over: (ctx, box, theme) => {
+      if (problem !== '') middleText(ctx, box, theme, problem)
+      else drawTrace(ctx, box, theme, levels, trace)
+    },
     onCursor: (part) => {
       cursor = part
       read()

@@ -44,8 +44,8 @@ export function mountScope({ element, reading }: PlotPlace): MountedPlot {
       axis({ scale: 'level', side: 3, splits: (min, max, length) => evenSplits(min, max, length, 30), label: levelLabel, room: 3.4 }),
     ],
     series: [
-      { scale: 'level', stroke: () => plotTheme().second, width: 1, dash: [4, 3], points: { show: false } },
-      { scale: 'level', stroke: () => plotTheme().now, width: 1.5, points: { show: false } },
+      { scale: 'level', stroke: () => plotTheme().second, width: 1, dash: [4, 3], points: { show: false }, pxAlign: 0 },
+      { scale: 'level', stroke: () => plotTheme().now, width: 1.5, points: { show: false }, pxAlign: 0 },
     ],
     data: [time, into, out],
     over: (ctx, box, theme) => {

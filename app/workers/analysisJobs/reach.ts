@@ -1,6 +1,9 @@
-// What the response reaches over the whole sweep, as a plot shades it.
+// What the response reaches over the whole sweep, as a plot shades it: the exact envelope at the edges of the pixel
+// columns, and what stands inside the columns at some positions, for sweeps too small to smear their teeth.
+import { sweepEnvelope } from '../../../src/analysis/envelope.ts'
 import type { ParameterSet } from '../../../src/set/types.ts'
 import type { Columns } from '../../plots/columns.ts'
+import { bandsAt, pointsOf } from './trace.ts'
 
 export interface ReachRequest {
   readonly set: ParameterSet
@@ -14,6 +17,35 @@ export interface Reach {
   readonly high: Float64Array
 }
 
-export function reachJob({ columns }: ReachRequest): Reach {
-  return { columns, low: new Float64Array(columns.count), high: new Float64Array(columns.count) }
+/** Frequencies a slice takes, so that a newer request waits some milliseconds at most. */
+const SLICE = 64
+const POSITIONS = 8
+
+export function* reachJob({ set, columns }: ReachRequest): Generator<undefined, Reach> {
+  const { count } = columns
+  const edges = pointsOf(columns).filter((_, i) => i % 2 === 0)
+  const low = new Float64Array(count).fill(Number.POSITIVE_INFINITY)
+  const high = new Float64Array(count).fill(Number.NEGATIVE_INFINITY)
+  const take = (i: number, lowDb: number, highDb: number) => {
+    if (i < 0 || i >= count) return
+    low[i] = Math.min(low[i] as number, lowDb)
+    high[i] = Math.max(high[i] as number, highDb)
+  }
+  for (let from = 0; from < edges.length; from += SLICE) {
+    for (const { minDb, maxDb } of sweepEnvelope(set, edges.subarray(from, from + SLICE)))
+      minDb.forEach((db, k) => {
+        // An edge belongs to the columns on both sides.
+        take(from + k - 1, db, maxDb[k] as number)
+        take(from + k, db, maxDb[k] as number)
+      })
+    yield
+  }
+  for (let k = 0; k < POSITIONS; k++) {
+    for (const band of bandsAt(set, k / POSITIONS, columns))
+      band.low.forEach((db, i) => {
+        take(i, db, band.high[i] as number)
+      })
+    yield
+  }
+  return { columns, low, high }
 }

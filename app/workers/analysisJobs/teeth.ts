@@ -21,19 +21,21 @@ const DENSE_PX = 4
 /** Over how many pixels the teeth are counted. */
 const WINDOW_PX = 24
 
-/** Marks of one channel's extremes (rising frequency), thinned from the left, each kind by itself. */
+/** Marks of one channel's extremes (rising frequency), thinned from the left, each kind by itself; none where teeth are closer than marks. */
 export function marksOf(extremes: readonly Extreme[], columns: Columns): Mark[] {
   const marks: Mark[] = []
-  const lastLabel = { notch: Number.NEGATIVE_INFINITY, peak: Number.NEGATIVE_INFINITY }
-  const lastMark = { notch: Number.NEGATIVE_INFINITY, peak: Number.NEGATIVE_INFINITY }
+  const far = Number.NEGATIVE_INFINITY
+  const last = { notch: far, peak: far }
+  const lastLabel = { notch: far, peak: far }
   extremes.forEach((extreme, i) => {
     if (!standsOut(extremes, i)) return
     const { kind, frequencyHz, db } = extreme
     const x = partOf(columns, frequencyHz) * columns.count
-    if (x < 0 || x > columns.count || x - lastMark[kind] < MARK_APART_PX) return
-    const labelled = x - lastLabel[kind] >= LABEL_APART_PX
+    const apart = x - last[kind]
+    last[kind] = x
+    if (x < 0 || x > columns.count || apart < MARK_APART_PX) return
+    const labelled = apart >= LABEL_APART_PX / 2 && x - lastLabel[kind] >= LABEL_APART_PX
     marks.push({ kind, frequencyHz, db, labelled })
-    lastMark[kind] = x
     if (labelled) lastLabel[kind] = x
   })
   return marks

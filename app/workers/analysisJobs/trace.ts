@@ -1,7 +1,7 @@
 // The response at one sweep position as a plot draws it: levels at the points of its pixel columns, the smallest and
 // largest level inside each column (every notch and peak counted, so nothing aliases), marks, tooth spacing.
 import { type Extreme, frozenExtremes } from '../../../src/analysis/extremes.ts'
-import { freeze } from '../../../src/analysis/frozen.ts'
+import { type Frozen, freeze } from '../../../src/analysis/frozen.ts'
 import { transferAt, transferOf } from '../../../src/analysis/transfer.ts'
 import type { ParameterSet } from '../../../src/set/types.ts'
 import { type Columns, columnPoints, partOf, sameColumns } from '../../plots/columns.ts'
@@ -18,7 +18,13 @@ export interface TraceRequest {
 export interface TraceChannel {
   /** dB at the 2 · count + 1 points of the columns. */
   readonly db: Float64Array
-  /** Smallest and largest dB inside each column, edges included; from `dense` on, two columns either side as well. */
+  /** Smallest and largest dB inside each column, edges included. */
+  readonly low: Float64Array
+  readonly high: Float64Array
+}
+
+/** Smooth outlines around the columns from `dense` on: never inside any column's levels. */
+export interface DenseBand {
   readonly low: Float64Array
   readonly high: Float64Array
 }
@@ -35,6 +41,8 @@ export interface Trace {
   readonly spacingHz: number | null
   /** First column whose teeth are denser than pixels can show; `count` when there is none. */
   readonly dense: number
+  /** One a channel. */
+  readonly bands: readonly DenseBand[]
   /** Shapers count by their slope at 0. */
   readonly smallSignal: boolean
 }
@@ -48,6 +56,34 @@ export function pointsOf(columns: Columns): Float64Array {
 
 export function traceJob({ set, position, columns }: TraceRequest): Trace {
   const frozen = freeze(set, position)
+  const channels = levels(frozen, columns)
+  const extremes = frozenExtremes(frozen)
+  const first = extremes.filter((extreme) => extreme.channel === 0)
+  const dense = denseColumn(extremes, columns)
+  const [left, right] = channels
+  const columnBands = channels.map((db, channel) => columnBand(db, extremes, channel, columns))
+  return {
+    position,
+    columns,
+    channels: columnBands,
+    differs: left !== undefined && right !== undefined && differ(left, right),
+    marks: marksOf(first, columns),
+    spacingHz: spacingOf(first),
+    dense,
+    bands: columnBands.map(({ low, high }) => ({ low: outline(low, dense, Math.min), high: outline(high, dense, Math.max) })),
+    smallSignal: frozen.smallSignal,
+  }
+}
+
+/** Smallest and largest level inside each column at one position, every channel. */
+export function bandsAt(set: ParameterSet, position: number, columns: Columns): TraceChannel[] {
+  const frozen = freeze(set, position)
+  const extremes = frozenExtremes(frozen)
+  return levels(frozen, columns).map((db, channel) => columnBand(db, extremes, channel, columns))
+}
+
+/** dB at the columns' points, every channel. */
+function levels(frozen: Frozen, columns: Columns): Float64Array[] {
   const transfer = transferOf(frozen)
   const hz = pointsOf(columns)
   const channels = frozen.channels.map(() => new Float64Array(hz.length))
@@ -58,23 +94,7 @@ export function traceJob({ set, position, columns }: TraceRequest): Trace {
       db[i] = powerDb(out[4 * c] as number, out[4 * c + 1] as number)
     })
   }
-  const extremes = frozenExtremes(frozen)
-  const first = extremes.filter((extreme) => extreme.channel === 0)
-  const dense = denseColumn(extremes, columns)
-  const [left, right] = channels
-  return {
-    position,
-    columns,
-    channels: channels.map((db, channel) => {
-      const { low, high } = columnBand(db, extremes, channel, columns)
-      return { db, low: widened(low, dense, Math.min), high: widened(high, dense, Math.max) }
-    }),
-    differs: left !== undefined && right !== undefined && differ(left, right),
-    marks: marksOf(first, columns),
-    spacingHz: spacingOf(first),
-    dense,
-    smallSignal: frozen.smallSignal,
-  }
+  return channels
 }
 
 /** Levels of each column from its three points and every extreme in it. */
@@ -99,12 +119,15 @@ export function columnBand(db: Float64Array, extremes: readonly Extreme[], chann
   return { db, low, high }
 }
 
-/** Columns either side that a dense band looks at: together as wide as the widest tooth in it, so that its outline is that of the teeth. */
+/** Columns either side that an outline looks at: together wider than the widest tooth in it. */
 const WIDEN = 2
 
-/** From column `from` on, the smallest or largest of each column and its neighbours. */
-function widened(values: Float64Array, from: number, pick: (...values: number[]) => number): Float64Array {
-  return Float64Array.from(values, (value, i) => (i < from ? value : pick(...values.subarray(Math.max(from, i - WIDEN), i + WIDEN + 1))))
+/** From column `from` on: the extreme of each column and its neighbours, then the mean of those around it. Each of them counts the column itself, so the mean encloses it. */
+function outline(values: Float64Array, from: number, pick: (...values: number[]) => number): Float64Array {
+  const dense = values.subarray(from)
+  const around = (of: Float64Array, i: number) => of.subarray(Math.max(0, i - WIDEN), i + WIDEN + 1)
+  const wide = Float64Array.from(dense, (_, i) => pick(...around(dense, i)))
+  return Float64Array.from(wide, (_, i) => around(wide, i).reduce((sum, value) => sum + value, 0) / around(wide, i).length)
 }
 
 /** 0.001 dB, where both are above −100 dB. */

@@ -1,0 +1,176 @@
+// Sweep: delay over the cycle of every voice, the detune of the first, and the position being shown, which can be
+// taken hold of.
+import type { ParameterSet } from '../../../src/set/types.ts'
+import { currentSet } from '../../state/current.ts'
+import { onFrame } from '../../state/frames.ts'
+import { shownPosition } from '../../state/position.ts'
+import { useView } from '../../state/view.ts'
+import { axis, evenSplits } from '../host/axes.ts'
+import { cornerText } from '../host/corner.ts'
+import { createPlot, type Layer } from '../host/createPlot.ts'
+import { plotTheme } from '../host/theme.ts'
+import type { MountedPlot, PlotPlace, PlotTable } from '../plotTypes.ts'
+import { cents, decimal, milliseconds } from '../words.ts'
+import './sweep.css'
+import { nowMarker } from './nowMarker.ts'
+import { delayAxis, type SweepCurves, sweepAt, sweepCurves, sweepWords } from './sweepCurves.ts'
+
+const READING_MS = 100
+const FAINT = 0.38
+
+export function mountSweep({ element, reading }: PlotPlace): MountedPlot {
+  let curves: SweepCurves = sweepCurves(currentSet())
+  let set = currentSet()
+  let placed = Number.NaN
+  let readAt = 0
+  let cursor: number | null = null
+
+  const centsAxis = (): [number, number] => {
+    const most = Math.max(curves.maxCents, 0.1) * 1.25
+    return [-most, most]
+  }
+  const faintVoices: Layer = (ctx, box, theme, u) => {
+    ctx.strokeStyle = theme.now
+    ctx.globalAlpha = FAINT
+    ctx.lineWidth = box.ratio
+    ctx.beginPath()
+    for (const { delayMs } of curves.voices.slice(1))
+      delayMs.forEach((ms, i) => {
+        const x = u.valToPos(curves.positions[i] as number, 'x', true)
+        const y = u.valToPos(ms, 'delay', true)
+        if (i === 0) ctx.moveTo(x, y)
+        else ctx.lineTo(x, y)
+      })
+    ctx.stroke()
+  }
+  const plot = createPlot(element, {
+    scales: {
+      x: { time: false, range: [0, 1] },
+      delay: { auto: false, range: () => delayAxis(curves) },
+      cents: { auto: false, range: centsAxis },
+    },
+    axes: [
+      axis({
+        scale: 'x',
+        side: 2,
+        splits: () => [0, 0.25, 0.5, 0.75, 1],
+        label: (part) => decimal(part, part % 0.5 === 0 ? (part % 1 === 0 ? 0 : 1) : 2),
+      }),
+      axis({ scale: 'delay', side: 3, splits: (min, max, length) => evenSplits(min, max, length, 36), label: shortNumber, colour: 'now' }),
+      axis({
+        scale: 'cents',
+        side: 1,
+        splits: (min, max, length) => evenSplits(min, max, length, 48),
+        label: (ct) => `${signedNumber(ct)} ct`,
+        colour: 'second',
+        grid: false,
+        room: 4.2,
+      }),
+    ],
+    series: [
+      { scale: 'cents', stroke: () => plotTheme().second, width: 1.25, dash: [5, 4], points: { show: false }, pxAlign: 0 },
+      { scale: 'delay', stroke: () => plotTheme().now, width: 1.75, points: { show: false }, pxAlign: 0 },
+    ],
+    data: data(curves),
+    under: faintVoices,
+    over: (ctx, box, theme) => {
+      cornerText(ctx, box, theme, 'topLeft', 'ms', theme.now)
+      cornerText(ctx, box, theme, 'topRight', corner(set))
+    },
+    onCursor: (part) => {
+      cursor = part
+      read()
+    },
+    onSize: () => {
+      placed = Number.NaN
+    },
+  })
+  const marker = nowMarker(plot.u, element, (position) => sweepWords(currentSet(), position))
+
+  function read() {
+    const held = useView.getState().held === null ? '' : ' · held'
+    reading(cursor === null ? `${sweepWords(currentSet(), shownPosition())}${held}` : sweepWords(currentSet(), cursor))
+  }
+
+  function frame(timeMs: number) {
+    if (set !== currentSet()) {
+      set = currentSet()
+      curves = sweepCurves(set)
+      plot.u.setData(data(curves))
+      placed = Number.NaN
+    }
+    const position = shownPosition()
+    if (position !== placed) {
+      placed = position
+      const [low, high] = delayAxis(curves)
+      marker.place(position, (high - sweepAt(set, position).delayMs) / (high - low))
+    }
+    if (timeMs - readAt < READING_MS) return
+    readAt = timeMs
+    read()
+  }
+
+  const stopFrames = onFrame(frame)
+
+  return {
+    summary: () => summary(curves, set.sweep.rateHz),
+    table: () => table(curves),
+    numbers: () => ({
+      head: [
+        'position',
+        ...curves.voices.flatMap(({ channel, voice }) =>
+          ['delay_ms', 'cents'].map((what) => `channel_${channel + 1}_voice_${voice + 1}_${what}`),
+        ),
+      ],
+      columns: [curves.positions, ...curves.voices.flatMap(({ delayMs, cents }) => [delayMs, cents])],
+    }),
+    picture: plot.picture,
+    destroy() {
+      stopFrames()
+      marker.destroy()
+      plot.destroy()
+    },
+  }
+}
+
+function data({ positions, voices }: SweepCurves): [Float64Array, Float64Array, Float64Array] {
+  const empty = new Float64Array(positions.length)
+  return [positions, voices[0]?.cents ?? empty, voices[0]?.delayMs ?? empty]
+}
+
+function corner({ sweep, voices, layout }: ParameterSet): string {
+  const parts = ['dashed: detune']
+  if (voices.count > 1) parts.push('faint: the other voices')
+  else if (layout !== 'mono' && sweep.stereoPhase % 360 !== 0) parts.push('faint: the second channel')
+  if (sweep.shape === 'drift') parts.push('drift stands as a sine')
+  return parts.join(' · ')
+}
+
+const shortNumber = (value: number): string => decimal(value, Math.min(4, Math.max(0, decimalsOf(value))))
+const signedNumber = (value: number): string => decimal(value, Math.min(4, Math.max(0, decimalsOf(value))), true)
+const decimalsOf = (value: number): number => (String(value).split('.')[1] ?? '').length
+
+function summary({ minMs, maxMs, maxCents, voices }: SweepCurves, rateHz: number): string {
+  const many = voices.length > 1 ? ` of ${voices.length} voices` : ''
+  return `Sweep: delay${many} from ${milliseconds(minMs)} to ${milliseconds(maxMs)} over a cycle at ${decimal(rateHz, 2)} Hz, the first voice detuned by up to ${decimal(maxCents, 1)} cents.`
+}
+
+const ROWS = 32
+
+function table({ positions, voices }: SweepCurves): PlotTable {
+  const name = (channel: number, voice: number) => `channel ${channel + 1}, voice ${voice + 1}`
+  return {
+    caption: 'Delay and detune over the cycle of the sweep',
+    head: ['Position', ...voices.flatMap(({ channel, voice }) => [`Delay, ${name(channel, voice)}`, `Detune, ${name(channel, voice)}`])],
+    rows: Array.from({ length: ROWS + 1 }, (_, k) => {
+      const i = (k * (positions.length - 1)) / ROWS
+      return [
+        decimal(positions[i] as number, 3),
+        ...voices.flatMap((voice) => {
+          const bend = voice.cents[i] as number
+          return [milliseconds(voice.delayMs[i] as number), Number.isNaN(bend) ? 'none' : cents(bend)]
+        }),
+      ]
+    }),
+  }
+}
