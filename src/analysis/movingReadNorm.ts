@@ -1,0 +1,158 @@
+// N = ‖R‖, the largest energy gain of the loop's read over this very sweep: measured by bisection where it moves fastest, then certified with a margin
+// over whole cycles. A cycle that is no whole number of update intervals meets other fractions each time it comes round: several are certified.
+
+import { sweepPhase } from '../dsp/sweep.ts'
+import type { Interpolation, ParameterSet } from '../set/types.ts'
+import { fillLoopDelays, loopMovement } from './movingRead.ts'
+import { addAllpassRows, createAllpassTest } from './movingReadAllpass.ts'
+import { addRows, createGramTest, finishGramTest } from './movingReadGram.ts'
+import { shapeCorners } from './sweepSlope.ts'
+
+export interface CertifiedNorm {
+  /** Certified: the read raises no energy by more than this, margin included. */
+  readonly norm: number
+  /** N where it is largest, by bisection to 1e-9. */
+  readonly measured: number
+  /** Part of N − 1 added for alignments that were not tried. */
+  readonly margin: number
+  /** `cycles`: whole cycles were factored; `windows`: stretches about the steepest places, the cycle being too long. */
+  readonly method: 'cycles' | 'windows'
+  /** Cycles (or starting fractions) tried a line. */
+  readonly alignments: number
+  /** True when every cycle reads exactly like the first, so that one stands for all. */
+  readonly repeats: boolean
+}
+
+/** Rows of R that may be factored for the certificate: 0.1 µs each. */
+const BUDGET = 1_500_000
+const MARGIN = 0.01
+const BLOCK = 4096
+/** Rows past a cycle's end, so that what its first rows share with the cycle before is seen too. */
+const OVERLAP = 2048
+/** Cycles tried where each meets other fractions: far apart, so that the fractions differ. */
+const CYCLES = [0, 1, 3, 8, 21, 55, 144, 377]
+const LONGEST_WINDOW = 65536
+const MOST_WINDOWS = 48
+
+interface Stretch {
+  readonly channel: number
+  readonly first: number
+  readonly rows: number
+}
+
+/**
+ * Certified norm of the loop's read over the sweep of `set` at `sampleRate` (Hz). 1 exactly when it stands still (the reads are passive: FACTS 3). null where it
+ * cannot be decided (an all-pass read running backwards). `drift` is judged by the steepest cycle it can draw and by its first ones.
+ */
+export function certifiedNorm(set: ParameterSet, sampleRate = set.sampleRate, budget = BUDGET): CertifiedNorm | null {
+  if (!loopMovement(set, sampleRate).moves) return { norm: 1, measured: 1, margin: 0, method: 'cycles', alignments: 1, repeats: true }
+  if (set.sweep.shape !== 'drift') return normOfSweep(set, sampleRate, budget)
+  // A cosine from −1 to 1 in one cycle is a sine of half the rate.
+  const steepest = normOfSweep({ ...set, sweep: { ...set.sweep, shape: 'sine', rateHz: set.sweep.rateHz / 2 } }, sampleRate, budget / 2)
+  const drawn = steepest && normOfSweep(set, sampleRate, budget / 2, steepest.measured)
+  return (
+    drawn && { ...drawn, norm: Math.max(drawn.norm, steepest.norm), measured: Math.max(drawn.measured, steepest.measured), repeats: false }
+  )
+}
+
+function normOfSweep(set: ParameterSet, sampleRate: number, budget: number, known = 1): CertifiedNorm | null {
+  const period = sampleRate / set.sweep.rateHz
+  const repeats = Number.isInteger(period) && period % set.sweep.updateEvery === 0 && set.sweep.shape !== 'drift'
+  const channels = set.layout === 'stereo' && set.sweep.stereoPhase % 360 !== 0 ? [0, 1] : [0]
+  const whole = Math.floor(budget / channels.length / (period + OVERLAP))
+  const alignments = repeats ? 1 : CYCLES.length
+  const windows = channels.flatMap((channel) => steepWindows(set, sampleRate, channel, repeats))
+  let measured = known
+  for (const window of windows) {
+    const norm = normOfStretch(set, sampleRate, window, measured)
+    if (norm === null) return null
+    measured = norm
+  }
+  const raised = (norm: number) => norm + MARGIN * Math.max(norm - 1, 1e-7)
+  const certificate = { measured, margin: MARGIN, repeats }
+  if (whole < 1) return { ...certificate, norm: raised(measured), method: 'windows', alignments }
+  const tried = Math.min(alignments, whole)
+  const rows = Math.ceil(period) + OVERLAP
+  const cycles = CYCLES.slice(0, tried).map((k) => Math.floor(k * period))
+  const stretches = channels.flatMap((channel) => cycles.map((first): Stretch => ({ channel, first, rows })))
+  for (const stretch of stretches) {
+    for (let attempt = 0; !below(set, sampleRate, stretch, raised(measured)); attempt++) {
+      // Steeper somewhere than the windows showed: measure that cycle itself, which is dear and rare.
+      const norm = attempt === 0 ? normOfStretch(set, sampleRate, stretch, measured) : null
+      if (norm === null) return null
+      measured = norm
+    }
+  }
+  return { ...certificate, measured, norm: raised(measured), method: 'cycles', alignments: tried }
+}
+
+/** Norm over a stretch if it exceeds `known`, by bisection to 1e-9 from above (a certified figure); `known` if it does not; null past 64. */
+function normOfStretch(set: ParameterSet, sampleRate: number, stretch: Stretch, known: number): number | null {
+  if (below(set, sampleRate, stretch, known * (1 + 1e-9))) return known
+  let low = known
+  let high = 1.25 * known
+  while (!below(set, sampleRate, stretch, high)) {
+    low = high
+    high = 2 * high - 0.75
+    if (high > 64) return null
+  }
+  while (high - low > 1e-9) {
+    const middle = (low + high) / 2
+    if (below(set, sampleRate, stretch, middle)) high = middle
+    else low = middle
+  }
+  return high
+}
+
+const block = new Float64Array(BLOCK)
+
+/** Whether R over these rows has a norm below t. */
+function below(set: ParameterSet, sampleRate: number, { channel, first, rows }: Stretch, t: number): boolean {
+  const kind: Interpolation = set.loop.interpolation
+  const { minSamples, maxSamples } = loopMovement(set, sampleRate)
+  const allpass = kind === 'allpass1' ? createAllpassTest(t) : null
+  const gram = kind === 'allpass1' ? null : createGramTest(kind, t, { shortest: minSamples, longest: maxSamples })
+  for (let done = 0; done < rows; done += BLOCK) {
+    const count = Math.min(BLOCK, rows - done)
+    fillLoopDelays(set, sampleRate, { channel, first: first + done }, block)
+    if (allpass && !addAllpassRows(allpass, first + done, block, count)) return false
+    if (gram && !addRows(gram, first + done, block, count)) return false
+  }
+  return gram === null || finishGramTest(gram, first + rows)
+}
+
+/** Stretches about the steepest rise and fall of the delay and about every corner of the shape, at several starting fractions. */
+function steepWindows(set: ParameterSet, sampleRate: number, channel: number, repeats: boolean): Stretch[] {
+  const period = sampleRate / set.sweep.rateHz
+  const { epsilon } = loopMovement(set, sampleRate)
+  const rows = Math.ceil(Math.min(Math.max(1024, 8 / epsilon), LONGEST_WINDOW, period + OVERLAP))
+  const offset = sweepPhase(set, 0, channel, 0, sampleRate)
+  const phases = [...steepestPhases(set, sampleRate, channel), ...shapeCorners(set.sweep).map((corner) => corner - offset)]
+  const cycles = repeats ? [0] : CYCLES
+  const each = Math.max(1, Math.floor(MOST_WINDOWS / phases.length))
+  return phases.flatMap((phase) =>
+    cycles.slice(0, each).map((cycle): Stretch => {
+      const centre = (phase - Math.floor(phase) + cycle) * period
+      return { channel, first: Math.max(0, Math.floor(centre - rows / 2)), rows }
+    }),
+  )
+}
+
+/** Parts of the first cycle, from its start, at which the delay rises and falls fastest. */
+function steepestPhases(set: ParameterSet, sampleRate: number, channel: number): number[] {
+  const period = sampleRate / set.sweep.rateHz
+  const points = 1024
+  const delays = new Float64Array(1)
+  let rise = { at: 0, change: 0 }
+  let fall = { at: 0, change: 0 }
+  let before = Number.NaN
+  for (let i = 0; i <= points; i++) {
+    const at = i / points
+    fillLoopDelays(set, sampleRate, { channel, first: Math.floor(at * period) }, delays)
+    const change = (delays[0] as number) - before
+    if (change > rise.change) rise = { at: at - 0.5 / points, change }
+    if (change < fall.change) fall = { at: at - 0.5 / points, change }
+    before = delays[0] as number
+  }
+  return [rise.at, fall.at]
+}
