@@ -26,9 +26,10 @@ export function moveValue(move: Move, position: number): Value {
 
 function between({ min, max, taper }: Move, t: number): number {
   const [from, to] = [min as number, max as number]
-  // The ends are exact, whatever the power rounds to.
+  // The ends are exact and nothing lies past them, whatever the power rounds to.
   if (t === 0 || t === 1) return t === 0 ? from : to
-  return taper === 'log' ? from * (to / from) ** t : from + (to - from) * t
+  const value = taper === 'log' ? from * (to / from) ** t : from + (to - from) * t
+  return Math.min(Math.max(from, to), Math.max(Math.min(from, to), value))
 }
 
 /** The values a switch-like move steps through, or null for a continuous one. */

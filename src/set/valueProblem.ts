@@ -67,8 +67,16 @@ export const withoutNull = (p: Parameter): Parameter => ('nullable' in p ? { ...
 /** A value as it stands in a file, on one line and cut to 60 characters. */
 export function valueText(value: unknown): string {
   if (value === undefined) return 'nothing'
-  const text = JSON.stringify(value) ?? String(value)
+  const text = typeof value === 'number' ? String(value) : jsonText(value)
   return text.length > 60 ? `${text.slice(0, 59)}…` : text
+}
+
+function jsonText(value: unknown): string {
+  try {
+    return JSON.stringify(value) ?? `a ${typeof value}`
+  } catch {
+    return `a ${typeof value} that JSON cannot hold`
+  }
 }
 
 /** 'did you mean "depthMs"?' when one of the known words is close enough or goes on from this one, else undefined. */
