@@ -15,6 +15,7 @@ const stamp: { -readonly [K in keyof Stamp]: Stamp[K] } = { frame: 0, position: 
 const holdUntilS = { in: [0, 0], out: [0, 0] }
 let overs = 0
 let overUntilS = 0
+let heldUntilS = 0
 let report: Float64Array = new Float64Array(REPORT_LENGTH)
 let stopReading = () => {}
 
@@ -22,6 +23,10 @@ let stopReading = () => {}
 export function followReports(graph: Graph): void {
   stopReading()
   overs = 0
+  overUntilS = 0
+  heldUntilS = 0
+  stamp.frame = 0
+  live.heldDelays = 0
   live.position = () => positionAt(stamp, heardTimeS(graph), graph.rate)
   const stopShared = graph.shared ? followShared(graph, graph.shared) : () => {}
   const onMessage = ({ data }: MessageEvent<FromProcessor>) => {
@@ -98,7 +103,7 @@ function take(graph: Graph): void {
   if (at(REPORT.overs) > overs) overUntilS = nowS + OVERLOAD_S
   overs = at(REPORT.overs)
   live.overload = nowS < overUntilS
-  live.heldDelays = at(REPORT.heldDelays)
+  sayHeld(at(REPORT.heldDelays), nowS)
   live.sourceSeconds = at(REPORT.playFrame) < 0 ? null : at(REPORT.playFrame) / graph.rate
   for (let i = 0; i < SCOPE_FRAMES; i++) {
     live.scopeIn[i] = at(REPORT.scope + i)
@@ -116,6 +121,17 @@ function meter(peaks: number[], holds: number[], until: number[], c: number, lin
     holds[c] = peaks[c] as number
     until[c] = nowS + HOLD_S
   }
+}
+
+/** Held this recently counts as now, so that the notice does not flicker once a cycle of a fast sweep. */
+const HELD_S = 1
+
+/** The count starts again when the engine is reset. */
+function sayHeld(count: number, nowS: number): void {
+  if (count > live.heldDelays) heldUntilS = nowS + HELD_S
+  live.heldDelays = count
+  const delaysHeld = nowS < heldUntilS
+  if (delaysHeld !== useSession.getState().delaysHeld) useSession.setState({ delaysHeld })
 }
 
 const limit = `+${GUARD_LIMIT_DB} dBFS`

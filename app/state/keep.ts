@@ -70,6 +70,7 @@ export const KEEP_SESSION: KeepTable<SessionState> = {
   guard: 'never',
   guardState: 'never',
   remark: 'never',
+  delaysHeld: 'never',
   error: 'never',
   contextRate: 'never',
   headphones: 'never',

@@ -65,6 +65,8 @@ export interface SessionState {
   readonly guardState: GuardState | null
   /** "heard at 44.1 kHz, set at 48" and the like; null when there is nothing to say. */
   readonly remark: string | null
+  /** Delays are being held at their limit right now. */
+  readonly delaysHeld: boolean
   readonly error: string | null
   readonly contextRate: number | null
   /** Live input sounds only after "I wear headphones". */
@@ -103,6 +105,7 @@ export const useSession = create<SessionState>()(() => ({
   guard: null,
   guardState: null,
   remark: null,
+  delaysHeld: false,
   error: null,
   contextRate: null,
   headphones: false,
