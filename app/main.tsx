@@ -4,6 +4,7 @@ import { StrictMode } from 'react'
 import { createRoot } from 'react-dom/client'
 import './styles/tokens.css'
 import './styles/base.css'
+import { mute } from './audio/audition.ts'
 import { App } from './shell/App.tsx'
 import { watchKeys } from './shell/keys.ts'
 import { watchLayout } from './shell/layout.ts'
@@ -17,7 +18,7 @@ useView.setState({ theme: keptTheme() })
 watchTheme()
 watchLayout()
 watchState()
-watchKeys(() => {})
+watchKeys(mute)
 
 const root = document.getElementById('root')
 if (!root) throw new TypeError('index.html has no #root')

@@ -1,4 +1,5 @@
 // The one table of keyboard commands: the key handler and the key help are made from it.
+import { toggleBypass, toggleMute, togglePlay } from '../audio/audition.ts'
 import { redo, undo, useDocument } from '../state/document.ts'
 import { dropGesture, useDraft } from '../state/draft.ts'
 import { holdAt, shownPosition } from '../state/position.ts'
@@ -24,6 +25,9 @@ const withControl =
     (event.ctrlKey || event.metaKey) && !event.altKey && event.shiftKey === shift && event.key.toLowerCase() === key
 
 export const COMMANDS: readonly Command[] = [
+  { keys: 'Space', does: 'play, pause', letter: true, matches: bare(' '), perform: togglePlay },
+  { keys: 'M', does: 'mute, sound on', letter: true, matches: bare('m'), perform: toggleMute },
+  { keys: 'B', does: 'bypass, effect', letter: true, matches: bare('b'), perform: toggleBypass },
   { keys: 'H', does: 'hold the sweep, let it run', letter: true, matches: bare('h'), perform: toggleHold },
   { keys: 'Ctrl+Z', does: 'undo', letter: false, matches: withControl('z'), perform: undoStep },
   { keys: 'Ctrl+Shift+Z', does: 'redo', letter: false, matches: withControl('z', true), perform: redoStep },

@@ -1,0 +1,205 @@
+// The difference equation of the set as it is, with today's numbers in it: input, line, output, delay.
+import './Equation.css'
+import type { ReactNode } from 'react'
+import type { ParameterSet } from '../../../../src/set/types.ts'
+import { useCurrent } from '../../../state/current.ts'
+import { Call, Name, Now, Row, Signal, Signed } from './parts.tsx'
+import { loopChain, shaped, sweepShape, wetChain } from './terms.tsx'
+
+export function Equation() {
+  const set = useCurrent((s) => s.set)
+  return (
+    <section className="cw-equation" aria-label="Difference equation">
+      {hasInput(set) && <InputLine set={set} />}
+      <OutputLine set={set} />
+      <WriteLine set={set} />
+      <DelayLine set={set} />
+    </section>
+  )
+}
+
+interface LineProps {
+  readonly set: ParameterSet
+}
+
+const hasInput = ({ input }: ParameterSet) => input.gainDb !== 0 || input.shaper !== null
+const lineSub = (set: ParameterSet) => (set.layout === 'stereo' ? 'c' : undefined)
+const outSub = (set: ParameterSet) => (set.layout === 'mono' ? undefined : 'c')
+/** What goes into the line: the input itself, or what gain and shaper make of it. */
+const inputName = (set: ParameterSet) => (hasInput(set) ? 'u' : 'x')
+
+/** Voices read at D with their own phase and offset; the loop at the plain one. They differ with more than one voice. */
+const manyVoices = (set: ParameterSet) => set.voices.count > 1
+const voiceSub = (set: ParameterSet) => (manyVoices(set) ? 'v' : '')
+
+function Line({ label, children }: { readonly label: string; readonly children: ReactNode }) {
+  return (
+    <math className="cw-eq" aria-label={label}>
+      <mrow>{children}</mrow>
+    </math>
+  )
+}
+
+function InputLine({ set }: LineProps) {
+  const gain = 10 ** (set.input.gainDb / 20)
+  const inside = (
+    <mrow>
+      {gain !== 1 && <Now value={gain} />}
+      <Signal of="x" sub={lineSub(set)} />
+    </mrow>
+  )
+  return (
+    <Line label="Input">
+      <Signal of="u" sub={lineSub(set)} />
+      <mo>=</mo>
+      {shaped(set.input.shaper, inside)}
+    </Line>
+  )
+}
+
+function OutputLine({ set }: LineProps) {
+  const { mix, sampleRate } = set
+  const gain = 10 ** (mix.outputGainDb / 20)
+  const dryAgo = Math.floor((mix.dryDelayMs * sampleRate) / 1000 + 0.5)
+  const dryOf = mix.dryTap === 'line' ? 'w' : inputName(set)
+  const terms: ReactNode[] = []
+  if (mix.dry !== 0)
+    terms.push(
+      <mrow>
+        <Signed value={mix.dry} first />
+        <Signal of={dryOf} sub={lineSub(set)} ago={dryAgo > 0 ? <Now value={dryAgo} unit="samples" /> : undefined} />
+      </mrow>,
+    )
+  if (mix.wet !== 0)
+    terms.push(
+      <mrow>
+        <Signed value={mix.wet / Math.sqrt(set.voices.count)} first={terms.length === 0} both={mix.invertRight && set.layout !== 'mono'} />
+        {wetChain(set, <VoiceSum set={set} />)}
+      </mrow>,
+    )
+  const inside = terms.length === 0 ? <mn>0</mn> : <Row>{terms}</Row>
+  return (
+    <Line label="Output">
+      <Signal of="y" sub={outSub(set)} />
+      <mo>=</mo>
+      {gain !== 1 && <Now value={gain} />}
+      {gain !== 1 && set.mix.shaper === null ? <Call name={<mrow />}>{inside}</Call> : shaped(set.mix.shaper, inside)}
+    </Line>
+  )
+}
+
+function VoiceSum({ set }: LineProps) {
+  const sub = `${outSub(set) ?? ''}${voiceSub(set)}`
+  return (
+    <mrow>
+      {manyVoices(set) && (
+        <munder>
+          <mo>Σ</mo>
+          <mi>v</mi>
+        </munder>
+      )}
+      <Signal of="w" sub={lineSub(set)} ago={<DelayName sub={sub} />} />
+    </mrow>
+  )
+}
+
+function DelayName({ sub }: { readonly sub: string }) {
+  return (
+    <mrow>
+      <Name of="D" sub={sub || undefined} />
+      <mo stretchy="false">(</mo>
+      <mi>n</mi>
+      <mo stretchy="false">)</mo>
+    </mrow>
+  )
+}
+
+function WriteLine({ set }: LineProps) {
+  const { loop } = set
+  const sub = lineSub(set)
+  const cross = set.layout === 'stereo' ? loop.crossFeed : 0
+  return (
+    <Line label="Line">
+      <Signal of="w" sub={sub} />
+      <mo>=</mo>
+      <Signal of={inputName(set)} sub={sub} />
+      {loop.feedback !== 0 && (
+        <>
+          <Signed value={loop.feedback} />
+          {cross > 0 ? (
+            <Call name={<mrow />}>
+              {cross < 1 && (
+                <>
+                  <Now value={1 - cross} />
+                  <LoopRead set={set} sub={sub} />
+                  <mo>+</mo>
+                </>
+              )}
+              <Now value={cross} />
+              <LoopRead set={set} sub="1−c" />
+            </Call>
+          ) : (
+            <mrow>
+              <mo>·</mo>
+              <LoopRead set={set} sub={sub} />
+            </mrow>
+          )}
+        </>
+      )}
+    </Line>
+  )
+}
+
+function LoopRead({ set, sub }: LineProps & { readonly sub: string | undefined }) {
+  const base = <Now value={(set.line.baseMs * set.sampleRate) / 1000} unit="samples" />
+  const moving = <DelayName sub={`${sub ?? ''}${manyVoices(set) ? '0' : ''}`} />
+  return loopChain(set, <Signal of="w" sub={sub} ago={set.loop.delay === 'fixed' ? base : moving} />)
+}
+
+function DelayLine({ set }: LineProps) {
+  const { sweep, line, voices, sampleRate } = set
+  const base = (line.baseMs * sampleRate) / 1000
+  const spread = manyVoices(set) && voices.spreadMs !== 0
+  const depth = sweep.law === 'time' ? (sweep.depthMs * sampleRate) / 1000 : sweep.depthOctaves
+  const shape = sweepShape(set, manyVoices(set), set.layout !== 'mono')
+  const middle = (
+    <mrow>
+      <Now value={base} unit="samples" />
+      {spread && (
+        <>
+          <mo>+</mo>
+          <Name of="o" sub="v" />
+        </>
+      )}
+    </mrow>
+  )
+  return (
+    <Line label="Delay">
+      <DelayName sub={`${outSub(set) ?? ''}${voiceSub(set)}`} />
+      <mo>=</mo>
+      {depth === 0 ? (
+        middle
+      ) : sweep.law === 'time' ? (
+        <mrow>
+          {middle}
+          <mo>+</mo>
+          <Now value={depth} unit="samples" />
+          {shape}
+        </mrow>
+      ) : (
+        <mrow>
+          {spread ? <Call name={<mrow />}>{middle}</Call> : middle}
+          <mo>·</mo>
+          <msup>
+            <mn>2</mn>
+            <mrow>
+              <Now value={depth} />
+              {shape}
+            </mrow>
+          </msup>
+        </mrow>
+      )}
+      <mtext className="cw-eq-unit">samples</mtext>
+    </Line>
+  )
+}
