@@ -1,8 +1,10 @@
 // What the response reaches over the whole sweep, as a plot shades it: the exact envelope at the edges of the pixel
 // columns, and what stands inside the columns at some positions, for sweeps too small to smear their teeth.
 import { sweepEnvelope } from '../../../src/analysis/envelope.ts'
+import { delayRange } from '../../../src/set/delayRange.ts'
 import type { ParameterSet } from '../../../src/set/types.ts'
-import type { Columns } from '../../plots/columns.ts'
+import { type Columns, partOf } from '../../plots/columns.ts'
+import { outline } from './outline.ts'
 import { bandsAt, pointsOf } from './trace.ts'
 
 export interface ReachRequest {
@@ -10,7 +12,7 @@ export interface ReachRequest {
   readonly columns: Columns
 }
 
-/** Smallest and largest dB in each pixel column, over the sweep and all channels. */
+/** Smallest and largest dB in each pixel column, over the sweep and all channels; outlines where teeth are only some pixels wide. */
 export interface Reach {
   readonly columns: Columns
   readonly low: Float64Array
@@ -47,5 +49,19 @@ export function* reachJob({ set, columns }: ReachRequest): Generator<undefined, 
       })
     yield
   }
+  const from = crowded(set, columns)
+  low.set(outline(low.subarray(from), Math.min), from)
+  high.set(outline(high.subarray(from), Math.max), from)
   return { columns, low, high }
+}
+
+/** Teeth of the longest delay are narrower than this from the column on which `crowded` gives: between its points a column then hides some. */
+const CROWDED_PX = 10
+
+function crowded(set: ParameterSet, columns: Columns): number {
+  const { voices, loop } = delayRange(set)
+  const toothHz = set.sampleRate / Math.max(1, voices.maxSamples, loop.maxSamples)
+  // A pixel at f is f · ln(high/low)/count wide.
+  const hz = (toothHz * columns.count) / (CROWDED_PX * Math.log(columns.highHz / columns.lowHz))
+  return Math.max(0, Math.min(columns.count, Math.floor(partOf(columns, hz) * columns.count)))
 }

@@ -5,6 +5,7 @@ import { type Frozen, freeze } from '../../../src/analysis/frozen.ts'
 import { transferAt, transferOf } from '../../../src/analysis/transfer.ts'
 import type { ParameterSet } from '../../../src/set/types.ts'
 import { type Columns, columnPoints, partOf, sameColumns } from '../../plots/columns.ts'
+import { outline } from './outline.ts'
 import { powerDb } from './powerDb.ts'
 import { denseColumn, type Mark, marksOf, spacingOf } from './teeth.ts'
 
@@ -70,7 +71,10 @@ export function traceJob({ set, position, columns }: TraceRequest): Trace {
     marks: marksOf(first, columns),
     spacingHz: spacingOf(first),
     dense,
-    bands: columnBands.map(({ low, high }) => ({ low: outline(low, dense, Math.min), high: outline(high, dense, Math.max) })),
+    bands: columnBands.map(({ low, high }) => ({
+      low: outline(low.subarray(dense), Math.min),
+      high: outline(high.subarray(dense), Math.max),
+    })),
     smallSignal: frozen.smallSignal,
   }
 }
@@ -117,17 +121,6 @@ export function columnBand(db: Float64Array, extremes: readonly Extreme[], chann
     high[i] = Math.max(high[i] as number, extreme.db)
   }
   return { db, low, high }
-}
-
-/** Columns either side that an outline looks at: together wider than the widest tooth in it. */
-const WIDEN = 2
-
-/** From column `from` on: the extreme of each column and its neighbours, then the mean of those around it. Each of them counts the column itself, so the mean encloses it. */
-function outline(values: Float64Array, from: number, pick: (...values: number[]) => number): Float64Array {
-  const dense = values.subarray(from)
-  const around = (of: Float64Array, i: number) => of.subarray(Math.max(0, i - WIDEN), i + WIDEN + 1)
-  const wide = Float64Array.from(dense, (_, i) => pick(...around(dense, i)))
-  return Float64Array.from(wide, (_, i) => around(wide, i).reduce((sum, value) => sum + value, 0) / around(wide, i).length)
 }
 
 /** 0.001 dB, where both are above −100 dB. */

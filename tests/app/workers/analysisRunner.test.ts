@@ -1,0 +1,88 @@
+import { describe, expect, it } from 'vitest'
+import { createRunner, type FromWorker, type SlicedJob, type ToWorker } from '../../../app/workers/analysisRunner.ts'
+
+/** A runner whose turns and clock the test moves by hand. */
+function byHand(jobs: Readonly<Record<string, SlicedJob<never, unknown>>>) {
+  const posted: FromWorker[] = []
+  const turns: (() => void)[] = []
+  const clock = { ms: 0 }
+  const hear = createRunner({ jobs, post: (message) => posted.push(message), later: (turn) => turns.push(turn), now: () => clock.ms })
+  const turn = () => turns.shift()?.()
+  return { hear, posted, turn, clock, waiting: () => turns.length }
+}
+
+const run = (id: number, kind: string, request: unknown = null): ToWorker => ({ type: 'run', id, kind, request })
+
+describe('the runner of analysis jobs', () => {
+  it('answers a short job with its value and the id it was asked under', () => {
+    const { hear, posted, turn } = byHand({ double: (x: number) => 2 * x })
+    hear(run(7, 'double', 21))
+    turn()
+    expect(posted).toEqual([{ id: 7, ok: true, value: 42 }])
+  })
+
+  it('answers a failing job with its message and goes on with the next', () => {
+    const { hear, posted, turn } = byHand({
+      fail: () => {
+        throw new RangeError('position must be in [0, 1], got 2')
+      },
+      fine: () => 'fine',
+    })
+    hear(run(1, 'fail'))
+    hear(run(2, 'fine'))
+    turn()
+    turn()
+    expect(posted).toEqual([
+      { id: 1, ok: false, message: 'position must be in [0, 1], got 2' },
+      { id: 2, ok: true, value: 'fine' },
+    ])
+  })
+
+  it('names a kind of job it does not know', () => {
+    const { hear, posted, turn } = byHand({})
+    hear(run(1, 'tea'))
+    turn()
+    expect(posted).toEqual([{ id: 1, ok: false, message: 'no job is called tea' }])
+  })
+
+  it('cuts a long job into slices of 12 ms and hears messages between them', () => {
+    const { hear, posted, turn, clock, waiting } = byHand({
+      *long() {
+        for (let k = 0; k < 5; k++) {
+          clock.ms += 10
+          yield
+        }
+        return 'done'
+      },
+    })
+    hear(run(1, 'long'))
+    let turns = 0
+    while (waiting() > 0) {
+      turn()
+      turns += 1
+    }
+    expect(posted).toEqual([{ id: 1, ok: true, value: 'done' }])
+    // Five steps of 10 ms: two fit before 12 ms are over.
+    expect(turns).toBe(3)
+  })
+
+  it('drops a cancelled job between its slices, without an answer', () => {
+    let steps = 0
+    const { hear, posted, turn, clock, waiting } = byHand({
+      *long() {
+        for (let k = 0; k < 100; k++) {
+          steps += 1
+          clock.ms += 20
+          yield
+        }
+        return 'done'
+      },
+    })
+    hear(run(1, 'long'))
+    turn()
+    hear({ type: 'cancel', id: 1 })
+    while (waiting() > 0) turn()
+    expect(posted).toEqual([])
+    expect(steps).toBe(1)
+  })
+})
