@@ -68,7 +68,7 @@ function poleOf(line: LoopLine, certify: boolean): Bounded | null {
 }
 
 function poleOfPair(pair: LoopPair, certify: boolean): Bounded | null {
-  const found = certify ? largestPoleOfPair(pair, 4000) : largestPoleOfPair(pair)
+  const found = certify ? largestPoleOfPair(pair, 1200) : largestPoleOfPair(pair)
   return found === null ? null : { ...found.pole, bound: found.bound }
 }
 

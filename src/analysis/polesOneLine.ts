@@ -25,7 +25,8 @@ export function largestOfLongLine(line: LoopLine): Pole | null {
   const curve = (theta: number) => modulusEquation(line, theta, start) ?? Number.NEGATIVE_INFINITY
   const grid = loopAngles(line.delay)
   const xs = grid.map(curve)
-  const found: Pole[] = [...realPoles(line), ...polesNearDc(line)]
+  // Without filters every pole is a branch, the real ones included.
+  const found: Pole[] = line.lowPass === null && line.highPass === null ? [] : [...realPoles(line), ...polesNearDc(line)]
   for (const i of localMaxima(xs).slice(0, TOPS)) {
     const from = grid[Math.max(0, i - 1)] as number
     const to = grid[Math.min(grid.length - 1, i + 1)] as number
