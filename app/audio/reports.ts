@@ -110,6 +110,7 @@ function take(graph: Graph): void {
     live.scopeOut[i] = at(REPORT.scope + SCOPE_FRAMES + i)
   }
   live.scopeCount += 1
+  if (!live.running) silence()
   sayGuard(at(REPORT.guardState), at(REPORT.guardReason), at(REPORT.guardLatched) === 1)
 }
 
@@ -152,6 +153,10 @@ export function guardText(state: GuardState, reason: number): string {
 function rest(): void {
   live.running = false
   live.sourceSeconds = null
+  silence()
+}
+
+function silence(): void {
   live.overload = false
   for (const levels of [live.inPeakDb, live.outPeakDb, live.inHoldDb, live.outHoldDb]) levels.fill(FLOOR_DB)
 }

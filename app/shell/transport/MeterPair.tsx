@@ -75,10 +75,12 @@ export function MeterPair() {
       </div>
       <div className="cw-meter-texts">
         <span>
-          in <span className="cw-meter-number">−∞</span>
+          <span>in </span>
+          <span className="cw-meter-number">−∞</span>
         </span>
         <span>
-          out <span className="cw-meter-number">−∞</span> <span className="cw-meter-unit">dBFS</span>
+          <span>out </span>
+          <span className="cw-meter-number">−∞</span> <span className="cw-meter-unit">dBFS</span>
         </span>
       </div>
     </div>
