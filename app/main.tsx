@@ -6,6 +6,7 @@ import './styles/tokens.css'
 import './styles/base.css'
 import { mute } from './audio/audition.ts'
 import { App } from './shell/App.tsx'
+import { watchDrops } from './shell/drop.ts'
 import { watchKeys } from './shell/keys.ts'
 import { watchLayout } from './shell/layout.ts'
 import { say } from './shell/messages.ts'
@@ -19,6 +20,7 @@ watchTheme()
 watchLayout()
 watchState()
 watchKeys(mute)
+watchDrops()
 
 const root = document.getElementById('root')
 if (!root) throw new TypeError('index.html has no #root')

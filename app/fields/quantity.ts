@@ -8,16 +8,26 @@ export type NumberSpec = Pick<
   'kind' | 'label' | 'help' | 'unit' | 'min' | 'max' | 'nullable' | 'taper' | 'values' | 'trackMin' | 'trackMax'
 >
 
-/** Below this size a value of the unit shows at least two decimals, so that its digits do not come and go while it moves. */
-const TWO_DECIMALS_BELOW: Readonly<Record<string, number>> = { ms: 100, Hz: 10, '': 10, octaves: 10, dB: 100, s: 10 }
+/** Below this size a value of the unit shows at least so many decimals, so that its digits do not come and go while it moves. */
+const TWO = { below: 10, decimals: 2 }
+const PADDED: Readonly<Record<string, { readonly below: number; readonly decimals: number }>> = {
+  ms: { below: 100, decimals: 2 },
+  dB: { below: 100, decimals: 2 },
+  cents: { below: 1000, decimals: 1 },
+  Hz: TWO,
+  s: TWO,
+  octaves: TWO,
+  '': TWO,
+}
 
 /** "3.50", "−6.00", "6500", "12 000": four significant digits at most, thin spaces, a real minus sign. */
 export function showNumber(value: number, { kind, unit }: Pick<NumberSpec, 'kind' | 'unit'>): string {
   const { number } = formatQuantity(value, unit)
-  if (kind === 'integer' || Math.abs(value) >= (TWO_DECIMALS_BELOW[unit] ?? 0) || number.includes('e')) return number
+  const padded = PADDED[unit]
+  if (kind === 'integer' || !padded || Math.abs(value) >= padded.below || number.includes('e')) return number
   const decimals = number.split('.')[1]?.length ?? 0
-  if (decimals >= 2) return number
-  return `${decimals === 0 ? `${number}.` : number}${'0'.repeat(2 - decimals)}`
+  if (decimals >= padded.decimals) return number
+  return `${decimals === 0 ? `${number}.` : number}${'0'.repeat(padded.decimals - decimals)}`
 }
 
 const SPACED = new Set(['°'])

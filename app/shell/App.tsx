@@ -5,6 +5,7 @@ import { Announcer } from './Announcer.tsx'
 import { useLayout } from './layout.ts'
 import { Messages } from './Messages.tsx'
 import { TopBar } from './TopBar.tsx'
+import { TransportNarrow } from './transport/Transport.tsx'
 
 export function App() {
   const layout = useLayout((s) => s.layout)
@@ -13,6 +14,11 @@ export function App() {
     <div className="cw-app" data-layout={layout} data-fits={fits || undefined}>
       <TopBar />
       <Shape />
+      {layout === 'narrow' && (
+        <div className="cw-bottombar">
+          <TransportNarrow />
+        </div>
+      )}
       <Messages />
       <Announcer />
     </div>

@@ -6,10 +6,13 @@ import { useSaved } from '../state/storage.ts'
 import { useView } from '../state/view.ts'
 import { AreaTabs } from './AreaTabs.tsx'
 import { HistoryButtons } from './HistoryButtons.tsx'
+import { useLayout } from './layout.ts'
 import { SetMenu } from './SetMenu.tsx'
+import { Transport } from './transport/Transport.tsx'
 import { ViewMenu } from './ViewMenu.tsx'
 
 export function TopBar() {
+  const layout = useLayout((s) => s.layout)
   return (
     <header className="cw-topbar">
       <div className="cw-topbar-set">
@@ -19,6 +22,7 @@ export function TopBar() {
       <AreaTabs />
       <HistoryButtons />
       <ViewMenu />
+      {layout !== 'narrow' && <Transport />}
     </header>
   )
 }

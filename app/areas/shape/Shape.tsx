@@ -24,7 +24,6 @@ function Wide() {
     <>
       <section className="cw-shape-drawing" aria-label="Signal path">
         <Drawing />
-        <Equation />
       </section>
       <section className="cw-shape-fields" aria-label="Fields">
         <FieldsColumn />

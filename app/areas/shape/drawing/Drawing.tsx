@@ -3,6 +3,7 @@ import './Drawing.css'
 import { useLayoutEffect, useRef, useState } from 'react'
 import { useCurrent } from '../../../state/current.ts'
 import { useView } from '../../../state/view.ts'
+import { Equation } from '../equation/Equation.tsx'
 import { BlockTab } from './BlockTab.tsx'
 import { interpolationName, LOOP_BLOCKS, MAIN_BLOCKS } from './blocks.ts'
 import { geometryOf, TIGHT_WIDTH } from './geometry.ts'
@@ -14,6 +15,7 @@ export function Drawing() {
   const chosen = useView((s) => s.block)
   const [frame, width] = useWidthRem()
   const geometry = geometryOf(set, width)
+  const besideRem = geometry.labels.loopReads.x + LOOP_WORDS_REM
   const stop = chosen === 'set' ? 'line' : chosen
   const style = { width: `${geometry.width}rem`, height: `${geometry.height}rem` }
   return (
@@ -37,9 +39,14 @@ export function Drawing() {
           <BlockTab key={id} id={id} set={set} box={geometry.boxes[id]} chosen={id === chosen} isStop={id === stop} />
         ))}
       </div>
+      <Equation besideRem={geometry.width - besideRem < EQUATION_REM ? undefined : besideRem} />
     </div>
   )
 }
+
+/** Room the equation needs beside the loop, and the words at the loop's tap, rem. */
+const EQUATION_REM = 27
+const LOOP_WORDS_REM = 7.5
 
 type LabelsProps = { readonly set: Parameters<typeof geometryOf>[0]; readonly geometry: ReturnType<typeof geometryOf> }
 

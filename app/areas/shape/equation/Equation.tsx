@@ -6,10 +6,16 @@ import { useCurrent } from '../../../state/current.ts'
 import { Call, Name, Now, Row, Signal, Signed } from './parts.tsx'
 import { loopChain, shaped, sweepShape, wetChain } from './terms.tsx'
 
-export function Equation() {
+interface EquationProps {
+  /** Left edge, rem, where it stands beside the loop; else it has the width to itself. */
+  readonly besideRem?: number | undefined
+}
+
+export function Equation({ besideRem }: EquationProps) {
   const set = useCurrent((s) => s.set)
+  const style = besideRem === undefined ? undefined : { marginLeft: `${besideRem}rem` }
   return (
-    <section className="cw-equation" aria-label="Difference equation">
+    <section className="cw-equation" aria-label="Difference equation" data-beside={besideRem !== undefined || undefined} style={style}>
       {hasInput(set) && <InputLine set={set} />}
       <OutputLine set={set} />
       <WriteLine set={set} />

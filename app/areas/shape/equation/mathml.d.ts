@@ -6,6 +6,7 @@ interface MathAttributes extends HTMLAttributes<MathMLElement> {
   readonly children?: ReactNode
   readonly display?: 'block' | 'inline'
   readonly stretchy?: 'true' | 'false'
+  readonly form?: 'prefix' | 'infix' | 'postfix'
 }
 
 declare module 'react' {

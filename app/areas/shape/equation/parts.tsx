@@ -25,7 +25,7 @@ export function Signed({
   const sign = both ? '±' : value < 0 ? '−' : first ? null : '+'
   return (
     <>
-      {sign && <mo>{sign}</mo>}
+      {sign && <mo form={first ? 'prefix' : 'infix'}>{sign}</mo>}
       <Now value={Math.abs(value)} />
     </>
   )

@@ -69,7 +69,7 @@ function cycles(set: ParameterSet, voice: boolean, channel: boolean): readonly R
 function term(value: number, times: string | null, first: boolean): ReactNode {
   return (
     <mrow>
-      {(value < 0 || !first) && <mo>{value < 0 ? '−' : '+'}</mo>}
+      {(value < 0 || !first) && <mo form={first ? 'prefix' : 'infix'}>{value < 0 ? '−' : '+'}</mo>}
       <Now value={Math.abs(value)} />
       {times && <mi>{times}</mi>}
     </mrow>

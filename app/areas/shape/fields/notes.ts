@@ -23,7 +23,7 @@ const usual = (path: string, unit: string): Note => {
   return (set) => {
     const range = usualRange(set.intent, path)
     if (!range) return []
-    const span = range.low === range.high ? plain(range.low, unit) : `${number(range.low, unit)} to ${plain(range.high, unit)}`
+    const span = range.low === range.high ? plain(range.low, unit) : `${shortNumber(range.low)} to ${plain(range.high, unit)}`
     return [`usual for a ${set.intent} ${span}`]
   }
 }
@@ -50,13 +50,13 @@ const NOTES: Readonly<Record<string, Note>> = {
     const edge = Math.min((sweep.edgeMs * sweep.rateHz) / 1000, 0.5)
     return [edge === 0 ? 'jumps at once' : `${percent(edge)} of the cycle an edge`]
   },
-  'sweep.updateEvery': ({ sweep, sampleRate }) => [`every ${showIn((1000 * sweep.updateEvery) / sampleRate, 'ms')}`],
+  'sweep.updateEvery': ({ sweep, sampleRate }) => [`every ${roundedMs((1000 * sweep.updateEvery) / sampleRate)} ms`],
   'voices.phaseSpread': ({ voices }) =>
     voices.count === 1 ? ['one voice: nothing to spread'] : [`voices ${showNumber(voices.phaseSpread / voices.count, DEGREES)}° apart`],
   'voices.spreadMs': (set) => {
     const { count } = set.voices
     if (count === 1) return ['one voice: nothing to spread']
-    const at = (v: number) => number(set.line.baseMs + voiceOffsetMs(set.voices, v), 'ms')
+    const at = (v: number) => roundedMs(set.line.baseMs + voiceOffsetMs(set.voices, v))
     return [`middles from ${at(0)} to ${at(count - 1)} ms`]
   },
   'loop.feedback': (set) => [ringNote(set), ...usual('loop.feedback', '')(set, { tempoBpm: 0 })],
@@ -73,6 +73,8 @@ const NOTES: Readonly<Record<string, Note>> = {
 
 const DEGREES = { kind: 'number', unit: '°' } as const
 const number = (value: number, unit: string) => showNumber(value, { kind: 'number', unit })
+/** Two decimals from a tenth of a millisecond up, four below. */
+const roundedMs = (ms: number) => number(Number(ms.toFixed(Math.abs(ms) < 0.1 ? 4 : 2)), 'ms')
 const plain = (value: number, unit: string) => (unit === '' ? shortNumber(value) : `${shortNumber(value)} ${unit}`)
 const shortNumber = (value: number) => String(Number(value.toFixed(2))).replace('-', '−')
 const percent = (share: number) => `${shortNumber(Number((100 * share).toPrecision(2)))} %`
@@ -107,7 +109,7 @@ function highPassNote(path: string): Note {
 
 function sweptRange(set: ParameterSet): string {
   const { voices } = delayRange(set)
-  const ms = (samples: number) => number((samples * 1000) / set.sampleRate, 'ms')
+  const ms = (samples: number) => roundedMs((samples * 1000) / set.sampleRate)
   return `${ms(voices.minSamples)} to ${ms(voices.maxSamples)} ms`
 }
 
