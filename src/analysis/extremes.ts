@@ -27,7 +27,7 @@ export interface Extreme {
 const POINTS_PER_PERIOD = 14
 /** Steps after which the grid's phasors are computed afresh. */
 const FRESH_EVERY = 256
-/** Where a search for a root ends, Hz. */
+/** Where a search for a root ends, Hz, unless asked otherwise. */
 const ROOT_HZ = 0.002
 /** A notch and a peak next to it closer than this are one level: 1e-6 dB. */
 const SAME_LEVEL = 2.3e-7
@@ -37,15 +37,19 @@ const ROUNDING = 1e-24
 /**
  * Notches and peaks in (0, maxHz], by channel, then rising frequency. maxHz in (0, sampleRate/2], by default
  * sampleRate/2, where |H| always stands level: what is there counts when it is a null, or a turn after another one.
- * Frequencies within 0.02 Hz; pairs that differ by less than 1e-6 dB are left out. Throws RangeError for maxHz.
+ * Frequencies within `withinHz` (0.002 Hz); pairs that differ by less than 1e-6 dB are left out. Throws RangeError for maxHz.
  */
-export function frozenExtremes(frozen: Frozen, options: { readonly maxHz?: number } = {}): Extreme[] {
+export function frozenExtremes(frozen: Frozen, options: { readonly maxHz?: number; readonly withinHz?: number } = {}): Extreme[] {
   const nyquist = frozen.sampleRate / 2
   const maxHz = options.maxHz ?? nyquist
   if (!(maxHz > 0 && maxHz <= nyquist)) throw new RangeError(`maxHz must be in (0, ${nyquist}] Hz, got ${maxHz}`)
   const transfer = transferOf(frozen)
   const grid = sampleGrid(transfer, (2 * Math.PI * maxHz) / frozen.sampleRate, lowestCorner(frozen))
-  return frozen.channels.flatMap((_, channel) => channelExtremes(transfer, channel, grid, maxHz === nyquist))
+  const tolerance = (2 * Math.PI * (options.withinHz ?? ROOT_HZ)) / frozen.sampleRate
+  return frozen.channels.flatMap((_, channel) => {
+    const search: Search = { transfer, channel, tolerance, out: new Float64Array(4 * transfer.channels), found: [] }
+    return channelExtremes(search, grid, maxHz === nyquist)
+  })
 }
 
 interface Grid {
@@ -96,12 +100,11 @@ function sampleGrid(t: Transfer, maxOmega: number, corner: number): Grid {
   return grid
 }
 
-function channelExtremes(transfer: Transfer, channel: number, grid: Grid, toNyquist: boolean): Extreme[] {
+function channelExtremes(search: Search, grid: Grid, toNyquist: boolean): Extreme[] {
+  const { channel, transfer } = search
   const { omegas } = grid
   const powers = grid.powers[channel] as Float64Array
   const slopes = grid.slopes[channel] as Float64Array
-  const tolerance = (2 * Math.PI * ROOT_HZ) / transfer.sampleRate
-  const search: Search = { transfer, channel, tolerance, out: new Float64Array(4 * transfer.channels), found: [] }
   const at = (i: number): PowerSample => ({ omega: omegas[i] as number, power: powers[i] as number, slope: slopes[i] as number })
   let a = at(0)
   let bentBefore = false

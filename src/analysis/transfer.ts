@@ -250,7 +250,7 @@ function sumReads(t: Transfer, from: number, to: number, er: number, ei: number,
 const NO_TONE: FrozenTone = { lowPass: null, highPass: null }
 
 /** gain · (1−a)/(1−aE) · (1+b)/2 (1−E)/(1−bE) · ((1+E)/2)^averages, with its derivative. */
-function chain(out: Float64Array, er: number, ei: number, gain: number, tone: FrozenTone, averaged: boolean, twice: boolean): void {
+export function chain(out: Float64Array, er: number, ei: number, gain: number, tone: FrozenTone, averaged: boolean, twice: boolean): void {
   out[0] = gain
   out[1] = 0
   out[2] = 0
