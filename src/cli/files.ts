@@ -1,5 +1,6 @@
 // Paths as typed, sets and sounds read, results written whole or not at all.
-import { mkdtempSync, readFileSync, realpathSync, renameSync, rmSync, statSync, writeFileSync } from 'node:fs'
+import { readFileSync, realpathSync, statSync } from 'node:fs'
+import { mkdtemp, rename, rm, writeFile } from 'node:fs/promises'
 import path from 'node:path'
 import { readWav, type WavAudio } from '../media/wav.ts'
 import { MAX_TEXT_BYTES, tooLarge } from '../set/jsonText.ts'
@@ -73,6 +74,8 @@ export function checkOutput(typed: string, { inputs, keep = false }: OutputRules
     fail(`${typed} cannot be written: there is no folder ${path.dirname(typed)}`, 'make the folder first, or give another path')
   const there = statOf(file)
   if (there?.isDirectory()) fail(`${typed} cannot be written: it is a folder`, 'give the path of a file')
+  // Moving a file over a device or a pipe would take its place.
+  if (there && !there.isFile()) fail(`${typed} cannot be written: it is a device or a pipe`, 'give the path of a file')
   const same = inputs.find((input) => identity(input) === identity(typed))
   if (same !== undefined) fail(`the output ${typed} is the input ${same}`, 'give the output another name')
   if (there && keep) fail(`${typed} is already there`, 'give another name, or --force to write over it')
@@ -93,19 +96,24 @@ function identity(typed: string): string {
   }
 }
 
-/** Writes a file whole: into a folder of its own beside the target first, then moved over it, so that no half-written file is ever seen under the name. */
-export function writeWhole(typed: string, bytes: Uint8Array | string): void {
-  const file = resolvePath(typed)
+/**
+ * Writes a file whole: into a folder of its own beside the target first, then moved over it, so that no half-written file is ever seen under the
+ * name. An aborted signal stops it and clears it away.
+ */
+export async function writeWhole(typed: string, bytes: Uint8Array | string, signal: AbortSignal): Promise<void> {
+  // Through a link, the file it leads to is written, not the link.
+  const file = statOf(resolvePath(typed)) ? realpathSync(resolvePath(typed)) : resolvePath(typed)
   let besides: string | undefined
   try {
-    besides = mkdtempSync(path.join(path.dirname(file), '.combwright-'))
+    besides = await mkdtemp(path.join(path.dirname(file), '.combwright-'))
     const half = path.join(besides, 'half')
-    writeFileSync(half, bytes)
-    renameSync(half, file)
+    await writeFile(half, bytes, { signal })
+    await rename(half, file)
   } catch (error) {
+    signal.throwIfAborted()
     fail(`${typed} cannot be written: ${reasonOf(error)}`, 'check the folder, its rights and the room on the disk')
   } finally {
-    if (besides) rmSync(besides, { recursive: true, force: true })
+    if (besides) await rm(besides, { recursive: true, force: true })
   }
 }
 

@@ -3,6 +3,7 @@ import { Command, CommanderError } from 'commander'
 import packageFile from '../../package.json' with { type: 'json' }
 import { addCheck } from './commands/check.ts'
 import { addNew } from './commands/new.ts'
+import { addRender } from './commands/render.ts'
 import { addResponse } from './commands/response.ts'
 import { addSweep } from './commands/sweep.ts'
 import { CommandFailure, EXIT_BAD_USE, EXIT_GOOD, printFailure } from './failure.ts'
@@ -24,7 +25,7 @@ function buildProgram(session: Session): Command {
   program.showSuggestionAfterError().configureHelp({ helpWidth: 110 })
   // Our own printing replaces commander's: one error, one hint.
   program.exitOverride().configureOutput({ outputError: () => undefined, writeErr: () => undefined })
-  for (const add of [addCheck, addResponse, addSweep, addNew]) add(program, session)
+  for (const add of [addCheck, addResponse, addSweep, addRender, addNew]) add(program, session)
   for (const command of program.commands) command.helpOption('-h, --help', 'print this help')
   return program
 }
@@ -55,7 +56,10 @@ function wordFailure(error: CommanderError, words: readonly string[], program: C
   const [said = '', suggestion] = error.message.split('\n')
   const meant = suggestion?.match(/Did you mean (?:one of )?(.*)\?/)?.[1]
   const text = said.replace(/^error: /, '').replace(/\.$/, '')
-  return new CommandFailure({ error: lowerFirst(text), hint: meant ? `did you mean ${meant}?` : help })
+  return new CommandFailure({
+    error: lowerFirst(text.replace(/\. (.)/g, (_, letter: string) => `: ${letter.toLowerCase()}`)),
+    hint: meant ? `did you mean ${meant}?` : help,
+  })
 }
 
 const lowerFirst = (text: string) => text.charAt(0).toLowerCase() + text.slice(1)

@@ -35,10 +35,15 @@ export function addCheck(program: Command, session: Session): void {
       const set = readSetFile(file)
       const checks = runChecks(set, { sampleRate })
       const verdict = verdictOf(checks)
-      if (options.json) printJson({ set: set.name, verdict, checks })
+      if (options.json) printJson({ set: set.name, verdict, checks: checks.map(inOrder) })
       else process.stdout.write(checkReport(set.name, verdict, checks))
       session.exitCode = verdict === 'fails' || (failOn === 'near' && verdict === 'near') ? EXIT_CHECK : EXIT_GOOD
     })
+}
+
+/** The keys scripts rely on first, in their order. */
+function inOrder({ id, status, value, limit, unit, text, working, ...more }: Check): Check {
+  return { id, status, value, limit, unit, text, working, ...more }
 }
 
 function checkReport(name: string, verdict: Verdict, checks: readonly Check[]): string {

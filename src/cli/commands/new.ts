@@ -6,6 +6,7 @@ import type { Intent } from '../../set/types.ts'
 import { writeSet } from '../../set/write.ts'
 import { readChoice } from '../arguments.ts'
 import { checkOutput, writeWhole } from '../files.ts'
+import { interruptible } from '../interrupt.ts'
 import { printJson } from '../output.ts'
 import { parameterHelp } from '../parameterHelp.ts'
 
@@ -27,11 +28,13 @@ export function addNew(program: Command): void {
     .option('--force', 'write over a file that is already there')
     .option('--json', 'print { out, set } as JSON')
     .addHelpText('after', parameterHelp())
-    .action((options: NewOptions) => {
-      const set = startingSet(readChoice(options.intent, '--intent', INTENTS))
-      checkOutput(options.out, { inputs: [], keep: !options.force })
-      writeWhole(options.out, writeSet(set))
-      if (options.json) printJson({ out: options.out, set })
-      else process.stderr.write(`wrote ${options.out}: ${set.name}\n`)
-    })
+    .action((options: NewOptions) => interruptible((signal) => writeStart(options, signal)))
+}
+
+async function writeStart({ intent, out, force = false, json = false }: NewOptions, signal: AbortSignal): Promise<void> {
+  const set = startingSet(readChoice(intent, '--intent', INTENTS))
+  checkOutput(out, { inputs: [], keep: !force })
+  await writeWhole(out, writeSet(set), signal)
+  if (json) printJson({ out, set })
+  else process.stderr.write(`wrote ${out}: ${set.name}\n`)
 }
