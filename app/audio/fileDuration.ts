@@ -17,7 +17,7 @@ function flac(head: Uint8Array): number | null {
   if (!text(head, 0, 'fLaC') || head.length < 26) return null
   const view = viewOf(head)
   const rate = view.getUint32(18) >>> 12
-  const samples = (head[21] as number & 15) * 2 ** 32 + view.getUint32(22)
+  const samples = ((head[21] as number) & 15) * 2 ** 32 + view.getUint32(22)
   return rate > 0 ? samples / rate : null
 }
 

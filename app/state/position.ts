@@ -1,4 +1,4 @@
-// The sweep position everything on the page shows: the held one, else the one being heard, else where it rests.
+// The sweep position everything on the page shows: the held one, else the one being heard (or heard last), else where it rests.
 import { currentSet } from './current.ts'
 import { live } from './live.ts'
 import { useView } from './view.ts'
@@ -6,7 +6,7 @@ import { useView } from './view.ts'
 export function shownPosition(): number {
   const { held } = useView.getState()
   if (held !== null) return held
-  return live.running ? live.position() : currentSet().sweep.startPhase
+  return live.heard ? live.position() : currentSet().sweep.startPhase
 }
 
 /** Holds the sweep at a position, wrapped to [0, 1); null lets it run again. */

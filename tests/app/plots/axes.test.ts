@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest'
 import { axisColumns, columnPoints, frequencyAt, partOf } from '../../../app/plots/columns.ts'
 import { evenSplits, frequencyLabel, frequencySplits } from '../../../app/plots/host/axes.ts'
 import { sliderKey } from '../../../app/plots/host/plotCursor.ts'
-import { levelRange } from '../../../app/plots/response/levelRange.ts'
+import { levelRange } from '../../../app/plots/levels.ts'
 
 describe('the frequency axis', () => {
   it('goes from 20 Hz to 20 kHz, but not past half the rate', () => {
