@@ -1,5 +1,6 @@
 // The plots there are, in the order of their tabs.
 import type { PlotId } from '../state/view.ts'
+import { mountLoop } from './loop/loop.ts'
 import type { MountPlot } from './plotTypes.ts'
 import { mountResponse } from './response/response.ts'
 import { mountScope } from './scope/scope.ts'
@@ -14,6 +15,7 @@ export interface PlotEntry {
 export const PLOTS: readonly PlotEntry[] = [
   { id: 'response', label: 'Response', mount: mountResponse },
   { id: 'sweep', label: 'Sweep', mount: mountSweep },
+  { id: 'loop', label: 'Loop', mount: mountLoop },
   { id: 'scope', label: 'Scope', mount: mountScope },
 ]
 

@@ -1,23 +1,15 @@
 // Notch and peak marks: a triangle under a notch, over a peak, with its frequency as a plain number.
 import type { Mark } from '../../workers/analysisJobs/teeth.ts'
 import { type Columns, partOf } from '../columns.ts'
+import type { Surface } from '../frequencyPlot.ts'
 import { canvasFont } from '../host/corner.ts'
-import type { PlotBox } from '../host/createPlot.ts'
-import type { PlotTheme } from '../host/theme.ts'
+import { levelY } from '../levels.ts'
 import { hertz } from '../words.ts'
-import { type Levels, levelY } from './drawTrace.ts'
 
 const SIZE_PX = 4
 const AWAY_PX = 5
 
-export function drawMarks(
-  ctx: CanvasRenderingContext2D,
-  box: PlotBox,
-  theme: PlotTheme,
-  levels: Levels,
-  columns: Columns,
-  marks: readonly Mark[],
-): void {
+export function drawMarks({ ctx, box, theme, levels }: Surface, columns: Columns, marks: readonly Mark[]): void {
   const { ratio } = box
   ctx.font = canvasFont(theme, ratio)
   ctx.textAlign = 'center'

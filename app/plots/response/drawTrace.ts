@@ -1,18 +1,7 @@
-// Draws the response: a line where its teeth can be told apart, from there on the band between the smallest and the
-// largest level of each pixel column.
+// The line of the response where its teeth can be told apart.
 import type { TraceChannel } from '../../workers/analysisJobs/trace.ts'
 import type { PlotBox } from '../host/createPlot.ts'
-
-export interface Levels {
-  readonly minDb: number
-  readonly maxDb: number
-}
-
-/** Canvas y of a level, held a little outside the plot. */
-export function levelY(box: PlotBox, { minDb, maxDb }: Levels, db: number): number {
-  const part = (maxDb - db) / (maxDb - minDb)
-  return box.top + box.height * Math.max(-0.1, Math.min(1.1, part))
-}
+import { type Levels, levelY } from '../levels.ts'
 
 /** The line over the columns before `dense`; notches and peaks between its points are not cut off. */
 export function traceLine(box: PlotBox, levels: Levels, { db, low, high }: TraceChannel, dense: number): Path2D {
@@ -34,38 +23,4 @@ export function traceLine(box: PlotBox, levels: Levels, { db, low, high }: Trace
 function sharpest(start: number, middle: number, end: number, low: number, high: number): number {
   if (low < Math.min(start, middle, end)) return low
   return high > Math.max(start, middle, end) ? high : middle
-}
-
-export interface Band {
-  readonly low: Float64Array
-  readonly high: Float64Array
-}
-
-export interface BandEdges {
-  readonly fill: Path2D
-  readonly top: Path2D
-  readonly bottom: Path2D
-}
-
-/** Top, bottom and the closed band between them over the last `low.length` of `count` columns, joined at the columns' middles. */
-export function bandEdges(box: PlotBox, levels: Levels, { low, high }: Band, count: number): BandEdges {
-  const width = box.width / count
-  const start = box.left + box.width - low.length * width
-  const edge = (values: Float64Array): Point[] => {
-    const points = Array.from(values, (db, i): Point => [start + (i + 0.5) * width, levelY(box, levels, db)])
-    const [first] = points
-    const last = points.at(-1)
-    return first && last ? [[start, first[1]], ...points, [box.left + box.width, last[1]]] : []
-  }
-  const upper = edge(high)
-  const lower = edge(low)
-  return { fill: through([...upper, ...lower.toReversed()]), top: through(upper), bottom: through(lower) }
-}
-
-type Point = readonly [number, number]
-
-function through(points: readonly Point[]): Path2D {
-  const path = new Path2D()
-  for (const [x, y] of points) path.lineTo(x, y)
-  return path
 }

@@ -11,8 +11,7 @@ const THIRDS = [
   8000, 10000, 12500, 16000, 20000,
 ] as const
 
-export function responseTable(trace: Trace | null, reach: Reach | null): PlotTable {
-  if (!trace) return { caption: 'Response: being computed', head: [], rows: [] }
+export function responseTable(trace: Trace, reach: Reach | null): PlotTable {
   const second = trace.differs
   const head = [
     'Frequency',
@@ -55,8 +54,7 @@ function between(low: number, high: number): string {
 }
 
 /** At every point of the trace: both channels, and the sweep's reach of the point's pixel column. */
-export function responseNumbers(trace: Trace | null, reach: Reach | null): PlotNumbers {
-  if (!trace) return { head: [], columns: [] }
+export function responseNumbers(trace: Trace, reach: Reach | null): PlotNumbers {
   const hz = columnPoints(trace.columns)
   const channels = trace.channels.map(({ db }) => db)
   const names = channels.length === 1 ? ['level_db'] : channels.map((_, c) => `channel_${c + 1}_db`)

@@ -5,6 +5,7 @@ import type { ParameterSet } from '../../../src/set/types.ts'
 import { powerDb } from '../../workers/analysisJobs/powerDb.ts'
 import type { Reach } from '../../workers/analysisJobs/reach.ts'
 import type { Trace } from '../../workers/analysisJobs/trace.ts'
+import type { Under } from '../frequencyPlot.ts'
 import { decibel, decimal, hertz, noteWords } from '../words.ts'
 
 /** Level of every channel at one frequency with the sweep held at `position`, dB. */
@@ -16,7 +17,7 @@ export function levelsAt(set: ParameterSet, position: number, hz: number): numbe
 }
 
 /** "1 268 Hz · −9.8 dB · D♯6 +33 ct"; two levels where the channels differ. */
-export function cursorWords(set: ParameterSet, position: number, hz: number): string {
+export function cursorWords({ set, position, hz }: Pick<Under<'trace'>, 'set' | 'position' | 'hz'>): string {
   const [first = Number.NaN, second] = levelsAt(set, position, hz)
   const other = second !== undefined && Math.abs(second - first) >= 0.05 ? ` · second ${decibel(second)}` : ''
   return `${hertz(hz)} Hz · ${decibel(first)}${other} · ${noteWords(hz)}`
@@ -30,8 +31,7 @@ export function restWords(trace: Trace): string {
   return first ? `first notch ${hertz(first.frequencyHz)} Hz` : 'no notch'
 }
 
-export function summaryWords(trace: Trace | null, reach: Reach | null): string {
-  if (!trace) return 'Response: being computed.'
+export function summaryWords(trace: Trace, reach: Reach | null): string {
   const at = `Response at sweep position ${decimal(trace.position, 2)}`
   const [first] = trace.channels
   const span = first ? `, ${decibel(Math.min(...first.low))} to ${decibel(Math.max(...first.high))}` : ''

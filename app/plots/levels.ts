@@ -1,5 +1,16 @@
-// The level axis: whole steps of 6 dB around everything the sweep reaches, deep notches cut off.
-import type { Levels } from './drawTrace.ts'
+// The level axis of a plot: whole steps of 6 dB around everything to be shown, deep notches cut off.
+import type { PlotBox } from './host/createPlot.ts'
+
+export interface Levels {
+  readonly minDb: number
+  readonly maxDb: number
+}
+
+/** Canvas y of a level, held a little outside the plot. */
+export function levelY(box: PlotBox, { minDb, maxDb }: Levels, db: number): number {
+  const part = (maxDb - db) / (maxDb - minDb)
+  return box.top + box.height * Math.max(-0.1, Math.min(1.1, part))
+}
 
 const STEP_DB = 6
 const DEEPEST_DB = 42
