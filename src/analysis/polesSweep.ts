@@ -21,11 +21,22 @@ export interface SweptPole extends LargestPole {
 /** A pole this much inside, as ln r times the delay, is told from one on the circle; nearer, rounding decides. */
 const CIRCLE = 1e-12
 
+/** The frozen loop at the place of the sweep where its largest pole is largest. */
+export function sweptPoleLoop(set: ParameterSet, sampleRate = set.sampleRate): FrozenLoop {
+  const sweep = loopSweep(set, sampleRate)
+  return sweep.at(worstPole(sweep, sampleRate, undefined))
+}
+
+/** Place of the sweep where the largest pole is largest. */
+function worstPole(sweep: LoopSweep, sampleRate: number, slope: number | undefined): number {
+  const score = (loop: FrozenLoop) => largestPoleOfLoop(loop, sampleRate, { slope })?.lnRadius ?? Number.NEGATIVE_INFINITY
+  return worstPlace(sweep, score, { estimate: radiusEstimate(slope) }).place
+}
+
 /** Largest pole radius over the whole sweep, the shaper counted at its small-signal slope (or `slope`); null without a loop. */
 export function sweptPole(set: ParameterSet, sampleRate = set.sampleRate, slope?: number): SweptPole | null {
   const sweep = loopSweep(set, sampleRate)
-  const score = (loop: FrozenLoop) => largestPoleOfLoop(loop, sampleRate, { slope })?.lnRadius ?? Number.NEGATIVE_INFINITY
-  const { place } = worstPlace(sweep, score, { estimate: radiusEstimate(slope) })
+  const place = worstPole(sweep, sampleRate, slope)
   const loop = sweep.at(place)
   const pole = largestPoleOfLoop(loop, sampleRate, { slope, certify: true })
   if (pole === null) return null

@@ -75,34 +75,43 @@ export function loopGains(set: ParameterSet, sampleRate = set.sampleRate): LoopG
 
 /**
  * The strongest word for a valid set at `sampleRate` (Hz). Closed form but for `computed`, which factors the read operator over the sweep, and only where nothing
- * stronger holds and it could help. `budget`: rows that may cost (0: none, the word then skips `computed`).
+ * stronger holds and it could help. `budget`: rows that may cost (see certifiedNorm).
  */
 export function stability(set: ParameterSet, sampleRate = set.sampleRate, budget?: number): Stability {
   const gains = loopGains(set, sampleRate)
-  const rest = { norm: null, gammaN: null, level: null, pole: null }
-  const smallest = smallestGain(gains)
-  if (gains.feedback * gains.sector.bound === 0) return { ...gains, ...rest, word: 'proven', proof: 'noLoop', certified: null }
-  if (!gains.movement.moves && set.loop.shaper === null) return stillStability(set, sampleRate, gains)
-  if (gains.gammaInfinity < 1) return { ...gains, ...rest, word: 'proven', proof: 'peak', certified: smallest }
-  if (gains.gamma2 !== null && gains.gamma2 < 1) return { ...gains, ...rest, word: 'proven', proof: 'energy', certified: smallest }
-  if (!gains.movement.moves && gains.frozenGain < 1) return { ...gains, ...rest, word: 'proven', proof: 'still', certified: smallest }
+  const proven = provenStability(set, sampleRate, gains)
+  if (proven !== null) return proven
   const gain = gains.feedback * gains.sector.bound * gains.toneMax
-  const norm = gain < 1 && gains.movement.moves && budget !== 0 ? certifiedNorm(set, sampleRate, budget) : null
+  const norm = gain < 1 && gains.movement.moves ? certifiedNorm(set, sampleRate, budget) : null
   const gammaN = norm && gain * norm.norm
-  const withNorm = { ...gains, ...rest, norm, gammaN }
+  const withNorm = { ...gains, norm, gammaN, level: null, pole: null }
   if (gammaN !== null && gammaN < 1) return { ...withNorm, word: 'computed', proof: 'sweep', certified: { name: 'γN', value: gammaN } }
   return { ...withNorm, certified: null, ...weakerWord(set, sampleRate, gains) }
 }
 
-/** A loop that neither moves nor bends is decided exactly by its poles. */
-function stillStability(set: ParameterSet, sampleRate: number, gains: LoopGains): Stability {
+/** The word `proven` with what it rests on, or null where the set cannot be proven in closed form. Cheap: a millisecond or so. */
+export function provenStability(set: ParameterSet, sampleRate = set.sampleRate, gains = loopGains(set, sampleRate)): Stability | null {
+  const { feedback, sector, movement, gammaInfinity, gamma2, frozenGain } = gains
+  const proven = (proof: StabilityProof, certified = smallestGain(gains), pole: SweptPole | null = null): Stability => {
+    return { ...gains, norm: null, gammaN: null, level: null, pole, word: 'proven', proof, certified }
+  }
+  if (feedback * sector.bound === 0) return proven('noLoop', null)
+  if (!movement.moves && set.loop.shaper === null) {
+    const pole = stillPole(set, sampleRate)
+    return pole === null ? null : proven('poles', frozenGain < 1 ? smallestGain(gains) : null, pole)
+  }
+  if (gammaInfinity < 1) return proven('peak')
+  if (gamma2 !== null && gamma2 < 1) return proven('energy')
+  return !movement.moves && frozenGain < 1 ? proven('still') : null
+}
+
+/** The largest pole of a loop that neither moves nor bends, if it lies inside the circle: which decides such a loop exactly. */
+function stillPole(set: ParameterSet, sampleRate: number): SweptPole | null {
   const pole = sweptPole(set, sampleRate)
+  if (pole === null || !isInside(pole)) return null
   const { pair } = loopParts(freeze(set, set.sweep.startPhase, sampleRate).loop)
-  const uncertain = pair !== null && pole !== null && pole.lnBound >= 0 && isInside(pole)
-  const inside = isInside(pole) && !(uncertain && pairPolesOutside(pair, 0) > 0)
-  const rest = { norm: null, gammaN: null, level: null, pole }
-  const certified = inside && gains.frozenGain < 1 ? smallestGain(gains) : null
-  return { ...gains, ...rest, word: inside ? 'proven' : 'diverges', proof: inside ? 'poles' : 'none', certified }
+  // Crossed lines too long to be searched through are counted round the circle.
+  return pair !== null && pole.lnBound >= 0 && pairPolesOutside(pair, 0) > 0 ? null : pole
 }
 
 function weakerWord(set: ParameterSet, sampleRate: number, gains: LoopGains): Pick<Stability, 'word' | 'proof' | 'level' | 'pole'> {

@@ -1,10 +1,13 @@
 // The one table of limits. `holds` inside the limit, `near` within the margin of it, `outside` beyond it.
 // A set's own `limits` replaces the limit by id; the margin stays.
+import type { CHECK_IDS } from '../set/checkIds.ts'
 import type { ParameterSet } from '../set/types.ts'
 import type { Status } from './types.ts'
 
+export type CheckId = (typeof CHECK_IDS)[number]
+
 export interface LimitRow {
-  readonly id: string
+  readonly id: CheckId
   readonly label: string
   readonly unit: string
   /** `atMost`: beyond means above the limit. `atLeast`: beyond means at or below it. `none`: a value, or a word with its own rule. */
@@ -22,7 +25,7 @@ const q15 = (set: ParameterSet): boolean => set.target.numberFormat === 'q15'
 const practice = 'common practice, no source'
 const ours = 'this project’s choice'
 
-const ROWS = [
+const ROWS: readonly LimitRow[] = [
   {
     id: 'loop.stability',
     label: 'Stability under the sweep',
@@ -79,7 +82,7 @@ const ROWS = [
     label: 'Largest detune',
     unit: 'cents',
     sense: 'atMost',
-    limit: (set: ParameterSet) => (set.intent === 'vibrato' ? 150 : 50),
+    limit: (set) => (set.intent === 'vibrato' ? 150 : 50),
     margin: 0,
     outside: 'near',
     source: practice,
@@ -110,7 +113,7 @@ const ROWS = [
     label: 'Worst gain at the output',
     unit: 'dB',
     sense: 'atMost',
-    limit: (set: ParameterSet) => set.target.headroomDb,
+    limit: (set) => set.target.headroomDb,
     margin: 1,
     outside: 'fails',
     source: 'the set’s target.headroomDb',
@@ -120,7 +123,7 @@ const ROWS = [
     label: 'Worst gain in the line',
     unit: 'dB',
     sense: 'atMost',
-    limit: (set: ParameterSet) => set.target.headroomDb,
+    limit: (set) => set.target.headroomDb,
     margin: 1,
     outside: 'fails',
     source: 'the set’s target.headroomDb',
@@ -171,8 +174,8 @@ const ROWS = [
     label: 'Noise of the number format',
     unit: 'dBFS',
     sense: 'atMost',
-    limit: (set: ParameterSet) => (q15(set) ? -80 : -100),
-    margin: (set: ParameterSet) => (q15(set) ? 12 : 15),
+    limit: (set) => (q15(set) ? -80 : -100),
+    margin: (set) => (q15(set) ? 12 : 15),
     outside: 'fails',
     source: practice,
   },
@@ -218,15 +221,20 @@ const ROWS = [
     outside: 'fails',
     source: 'as the worst check',
   },
-] as const satisfies readonly LimitRow[]
-
-export type CheckId = (typeof ROWS)[number]['id']
+]
 
 /** Every check's row, in the order checks are listed. */
-export const LIMITS: readonly (LimitRow & { readonly id: CheckId })[] = ROWS
-const byId = new Map<string, LimitRow>(ROWS.map((row) => [row.id, row]))
+export const LIMITS = ROWS
+const byId = new Map(ROWS.map((row) => [row.id, row]))
 
-export const isCheckId = (id: string): id is CheckId => byId.has(id)
+function rowOf(id: CheckId): LimitRow {
+  const row = byId.get(id)
+  if (!row) throw new RangeError(`no check has the id ${id}`)
+  return row
+}
+
+/** What a check is called, in sentence case. */
+export const labelOf = (id: CheckId): string => rowOf(id).label
 
 export interface Limit {
   readonly row: LimitRow
@@ -238,8 +246,7 @@ export interface Limit {
 
 /** The limit in force for a check: the set's own if it has one, else the table's. */
 export function limitOf(set: ParameterSet, id: CheckId): Limit {
-  const row = byId.get(id)
-  if (!row) throw new RangeError(`no check has the id ${id}`)
+  const row = rowOf(id)
   const table = typeof row.limit === 'function' ? row.limit(set) : row.limit
   const own = row.sense === 'none' ? undefined : set.limits[id]
   return { row, limit: own ?? table, margin: typeof row.margin === 'function' ? row.margin(set) : row.margin, own: own !== undefined }

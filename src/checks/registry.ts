@@ -1,18 +1,13 @@
 // Which checks exist and in which order they run.
 import type { ParameterSet } from '../set/types.ts'
 import { LIMITS } from './limits.ts'
-import type { Check, Verdict } from './types.ts'
+import { loopMargin } from './loopMargin.ts'
+import { loopPoles } from './loopPoles.ts'
+import { loopRing } from './loopRing.ts'
+import { loopStability } from './loopStability.ts'
+import type { Check, CheckFunction, CheckInput, Verdict } from './types.ts'
 
-/** What a check looks at. One object a run, so that checks which share a costly figure can key it on it. */
-export interface CheckInput {
-  readonly set: ParameterSet
-  /** Hz: the rate judged at, the set's own unless `rate` says otherwise. */
-  readonly sampleRate: number
-}
-
-export type CheckFunction = (input: CheckInput) => Check
-
-const CHECKS: readonly CheckFunction[] = []
+const CHECKS: readonly CheckFunction[] = [loopStability, loopMargin, loopPoles, loopRing]
 
 /** All checks of a valid set, in the table's order. sampleRate in Hz, 8000 to 192000; the set's own when absent. */
 export function runChecks(set: ParameterSet, options: { readonly sampleRate?: number } = {}): Check[] {

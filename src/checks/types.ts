@@ -1,4 +1,5 @@
 // One judged statement about a set. What the page lists and the `check` command prints.
+import type { ParameterSet } from '../set/types.ts'
 import type { CheckId } from './limits.ts'
 
 /** `holds` inside the limit, `near` within the margin, `fails` outside, `note` unusual but not wrong. */
@@ -37,3 +38,12 @@ export interface Check {
   readonly working: readonly WorkingStep[]
   readonly mend?: readonly Mend[]
 }
+
+/** What a check looks at. One object a run, so that checks which share a costly figure can key it on it. */
+export interface CheckInput {
+  readonly set: ParameterSet
+  /** Hz: the rate judged at, the set's own unless `rate` says otherwise. */
+  readonly sampleRate: number
+}
+
+export type CheckFunction = (input: CheckInput) => Check

@@ -1,0 +1,71 @@
+// loop.margin: how far the smallest certified loop gain is from 1.
+import type { Stability } from '../analysis/stability.ts'
+import { roundedDown } from '../analysis/stabilityRaise.ts'
+import { judge, type Limit, labelOf, limitOf } from './limits.ts'
+import { loopFigures, noLoopReason } from './loopFigures.ts'
+import { marginDb, nearOne, quantity } from './loopText.ts'
+import type { Check, CheckFunction, CheckInput, Mend, Status } from './types.ts'
+
+export const loopMargin: CheckFunction = (input): Check => {
+  const figures = loopFigures(input)
+  const { stability } = figures
+  const limit = limitOf(input.set, 'loop.margin')
+  const reason = noLoopReason(input, figures)
+  const { name, gain } = decisive(stability)
+  const value = reason === null ? marginDb(gain) : null
+  const status = statusOf(input, limit, value)
+  const mend = status === 'holds' ? null : mendOf(input, stability, limit)
+  return {
+    id: 'loop.margin',
+    status,
+    value,
+    limit: limit.limit,
+    unit: 'dB',
+    label: labelOf('loop.margin'),
+    text: value === null ? `${reason}.` : marginText(value, stability),
+    working:
+      value === null
+        ? []
+        : [
+            {
+              formula: `−20 log₁₀ ${name}`,
+              numbers: `${name} = ${nearOne(gain)}`,
+              result: quantity(value, 'dB'),
+              source: stability.certified ? 'smallest certified loop gain' : 'largest frozen loop gain: none is certified while it moves',
+            },
+          ],
+    ...(mend && { mend: [mend] }),
+  }
+}
+
+function decisive({ certified, frozenGain }: Stability): { name: string; gain: number } {
+  return certified ? { name: certified.name, gain: certified.value } : { name: '|g| σ max|A F|', gain: frozenGain }
+}
+
+/** A shaper may hold a loop whose gain passes 1: then it is near, not outside. */
+function statusOf({ set }: CheckInput, limit: Limit, value: number | null): Status {
+  const status = judge(limit, value)
+  return status === 'fails' && set.loop.shaper !== null ? 'near' : status
+}
+
+function marginText(value: number, { certified, word }: Stability): string {
+  const db = quantity(Math.abs(value), 'dB')
+  if (certified) return `The loop gain stays ${db} below 1, certified while it moves.`
+  if (value > 0) return `Held anywhere, the loop gain stays ${db} below 1; while it moves that is not certified.`
+  return `The loop gain reaches ${db} above 1${word === 'proven' ? ', though not where it comes back in phase' : ''}.`
+}
+
+/**
+ * Feedback at which the gain that then decides is the margin away from the limit: all gains are proportional to it. γN decides only where the proofs still
+ * fail, so its larger feedback counts only there.
+ */
+function mendOf({ set }: CheckInput, { gammaInfinity, gamma2, gammaN }: Stability, { limit, margin }: Limit): Mend | null {
+  const size = Math.abs(set.loop.feedback)
+  const target = 10 ** (-((limit ?? 0) + margin) / 20)
+  const proof = Math.min(gammaInfinity, gamma2 ?? gammaInfinity)
+  const swept = gammaN !== null && (proof * target) / gammaN >= 1 ? target / gammaN : 0
+  const reached = roundedDown(size * Math.max(target / proof, swept))
+  if (!(reached > 0 && reached < size)) return null
+  const value = Math.sign(set.loop.feedback) * reached
+  return { label: `Feedback ${quantity(value)}`, path: 'loop.feedback', value }
+}
