@@ -4,7 +4,7 @@ import { create } from 'zustand'
 export type Layout = 'wide' | 'medium' | 'narrow'
 
 /** Widths below which three columns, then two, no longer fit; height below which they would not leave the plots room. */
-const WIDE_REM = 62
+const WIDE_REM = 70
 const MEDIUM_REM = 46
 const TALL_REM = 34
 

@@ -2,6 +2,7 @@
 import './Equation.css'
 import type { ReactNode } from 'react'
 import type { ParameterSet } from '../../../../src/set/types.ts'
+import { useLayout } from '../../../shell/layout.ts'
 import { useCurrent } from '../../../state/current.ts'
 import { Call, Name, Now, Row, Signal, Signed } from './parts.tsx'
 import { loopChain, shaped, sweepShape, wetChain } from './terms.tsx'
@@ -13,9 +14,16 @@ interface EquationProps {
 
 export function Equation({ besideRem }: EquationProps) {
   const set = useCurrent((s) => s.set)
+  const listed = useLayout((s) => s.layout !== 'wide')
   const style = besideRem === undefined ? undefined : { marginLeft: `${besideRem}rem` }
   return (
-    <section className="cw-equation" aria-label="Difference equation" data-beside={besideRem !== undefined || undefined} style={style}>
+    <section
+      className="cw-equation"
+      aria-label="Difference equation"
+      data-beside={besideRem !== undefined || undefined}
+      style={style}
+      tabIndex={listed ? 0 : undefined}
+    >
       {hasInput(set) && <InputLine set={set} />}
       <OutputLine set={set} />
       <WriteLine set={set} />
