@@ -4,7 +4,6 @@ import { edge, frozenShapeValue } from '../dsp/sweep.ts'
 import type { ParameterSet } from '../set/types.ts'
 import { type Extreme, type ExtremeKind, frozenExtremes } from './extremes.ts'
 import { type Frozen, freeze } from './frozen.ts'
-import { transferOf } from './transfer.ts'
 
 /** Part of 1/(longest delay) below which an extreme is a filter's doing, as the hump that a low cut leaves: its lead puts that at ¼ at most, combs turn from ½ on. */
 const FILTER_PART = 0.4
@@ -21,16 +20,30 @@ export function firstExtreme(set: ParameterSet, kind: ExtremeKind, position: num
 
 /** The same of a frozen set. */
 export function firstOfFrozen(frozen: Frozen, kind: ExtremeKind): Extreme | null {
-  const left = { ...frozen, channels: frozen.channels.slice(0, 1) }
+  const left = firstChannel(frozen)
   const nyquist = frozen.sampleRate / 2
   const lag = lowPassDelay(frozen.loop.tone.lowPass) + lowPassDelay(frozen.wetTone.lowPass)
-  const tooth = frozen.sampleRate / (transferOf(left).longest + lag)
+  const tooth = frozen.sampleRate / (longestOwnDelay(left) + lag)
   for (let maxHz = 2 * tooth; ; maxHz *= 4) {
     const found = frozenExtremes(left, { maxHz: Math.min(maxHz, nyquist), withinHz: FIRST_WITHIN_HZ })
     const first = found.find((extreme) => extreme.kind === kind && extreme.frequencyHz >= FILTER_PART * tooth)
     if (first) return first
     if (maxHz >= nyquist) return null
   }
+}
+
+/** The first channel alone, with the line it reads; with both lines where they feed each other. */
+function firstChannel(frozen: Frozen): Frozen {
+  const channels = frozen.channels.slice(0, 1)
+  if (frozen.loop.crossFeed !== 0 && frozen.loop.gain !== 0) return { ...frozen, channels }
+  return { ...frozen, channels, lines: 1, loop: { ...frozen.loop, crossFeed: 0, reads: frozen.loop.reads.slice(0, 1) } }
+}
+
+/** Longest delay that the first channel itself is made of, samples, at least 1. */
+function longestOwnDelay({ channels, loop, dryDelay }: Frozen): number {
+  const voices = channels[0]?.voices ?? []
+  const reads = loop.gain === 0 ? voices : [...voices, ...loop.reads.slice(0, 1)]
+  return Math.max(1, dryDelay, ...reads.map((read) => read.delaySamples))
 }
 
 /** Delay of (1−a)/(1−a z⁻¹) at 0 Hz, samples. */
