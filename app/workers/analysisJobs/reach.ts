@@ -1,11 +1,12 @@
 // What the response reaches over the whole sweep, as a plot shades it: the exact envelope at the edges of the pixel
 // columns, and what stands inside the columns at some positions, for sweeps too small to smear their teeth.
+import { bandEnvelope, logBandEdges } from '../../../src/analysis/bandEnvelope.ts'
 import { sweepEnvelope } from '../../../src/analysis/envelope.ts'
+import { freeze } from '../../../src/analysis/frozen.ts'
 import { delayRange } from '../../../src/set/delayRange.ts'
 import type { ParameterSet } from '../../../src/set/types.ts'
 import { type Columns, partOf } from '../../plots/columns.ts'
 import { outline } from './outline.ts'
-import { bandsAt, pointsOf } from './trace.ts'
 
 export interface ReachRequest {
   readonly set: ParameterSet
@@ -25,7 +26,7 @@ const POSITIONS = 8
 
 export function* reachJob({ set, columns }: ReachRequest): Generator<undefined, Reach> {
   const { count } = columns
-  const edges = pointsOf(columns).filter((_, i) => i % 2 === 0)
+  const edges = logBandEdges(columns.lowHz, columns.highHz, count)
   const low = new Float64Array(count).fill(Number.POSITIVE_INFINITY)
   const high = new Float64Array(count).fill(Number.NEGATIVE_INFINITY)
   const take = (i: number, lowDb: number, highDb: number) => {
@@ -43,9 +44,9 @@ export function* reachJob({ set, columns }: ReachRequest): Generator<undefined, 
     yield
   }
   for (let k = 0; k < POSITIONS; k++) {
-    for (const band of bandsAt(set, k / POSITIONS, columns))
-      band.low.forEach((db, i) => {
-        take(i, db, band.high[i] as number)
+    for (const { minDb, maxDb } of bandEnvelope(freeze(set, k / POSITIONS), edges))
+      minDb.forEach((db, i) => {
+        take(i, db, maxDb[i] as number)
       })
     yield
   }

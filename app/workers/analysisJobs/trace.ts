@@ -79,13 +79,6 @@ export function traceJob({ set, position, columns }: TraceRequest): Trace {
   }
 }
 
-/** Smallest and largest level inside each column at one position, every channel. */
-export function bandsAt(set: ParameterSet, position: number, columns: Columns): TraceChannel[] {
-  const frozen = freeze(set, position)
-  const extremes = frozenExtremes(frozen)
-  return levels(frozen, columns).map((db, channel) => columnBand(db, extremes, channel, columns))
-}
-
 /** dB at the columns' points, every channel. */
 function levels(frozen: Frozen, columns: Columns): Float64Array[] {
   const transfer = transferOf(frozen)

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { axisColumns } from '../../../app/plots/columns.ts'
 import { type Reach, reachJob } from '../../../app/workers/analysisJobs/reach.ts'
-import { bandsAt } from '../../../app/workers/analysisJobs/trace.ts'
+import { traceJob } from '../../../app/workers/analysisJobs/trace.ts'
 import { defaultSet } from '../../../src/set/defaults.ts'
 import type { ParameterSet } from '../../../src/set/types.ts'
 import { comb, combDb } from './combs.ts'
@@ -34,7 +34,7 @@ describe('the reach of the response over the sweep', () => {
     let outside = 0
     let all = 0
     for (const position of [0, 0.11, 0.37, 0.5, 0.82])
-      for (const { low, high } of bandsAt(set, position, columns))
+      for (const { low, high } of traceJob({ set, position, columns }).channels)
         for (let i = 0; i < columns.count; i++) {
           all += 2
           // Bottoms of notches below −30 dB are points no sampling meets.

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { axisColumns, columnPoints, frequencyAt } from '../../../app/plots/columns.ts'
-import { bandsAt, traceJob } from '../../../app/workers/analysisJobs/trace.ts'
+import { traceJob } from '../../../app/workers/analysisJobs/trace.ts'
 import { defaultSet } from '../../../src/set/defaults.ts'
 import { comb, combDb } from './combs.ts'
 
@@ -87,7 +87,7 @@ describe('the trace of the response', () => {
 
   it('goes on where a set rings at the limit: levels stay numbers', () => {
     const set = { ...comb(), loop: { ...comb().loop, feedback: 1, delay: 'fixed' as const, interpolation: 'nearest' as const } }
-    for (const { low, high } of bandsAt(set, 0, columns)) {
+    for (const { low, high } of traceJob({ set, position: 0, columns }).channels) {
       expect([...low, ...high].every(Number.isFinite)).toBe(true)
     }
   })
