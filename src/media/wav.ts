@@ -2,6 +2,11 @@
 // before memory is taken, and a refusal says why.
 //
 // Read: PCM of 8, 16, 24, 32 bits, float of 32 and 64, each plain or extensible, in RIFF, RF64 or BW64. Written: PCM of 16 and 32 bits, float of 32.
+//
+// Why no package reads them: of those compared, `wavefile` takes 20 to 200 times as long, accepts cut files and counts the pad byte as a sample;
+// `node-wav` allocates what the header asks for; `wav-decoder` loses its way at odd chunks; the last two and `wav-file-decoder` know
+// no extensible format and give single precision, which 32-bit words do not survive.
+//
 // Sources: FACTS 10; scipy.io.wavfile and sox as outside references in tests/outside.
 import { type MediaResult, type Refusal, refuse } from './mediaResult.ts'
 import { type Chunk, readRiff } from './riff.ts'

@@ -121,18 +121,14 @@ describe('hostile bytes', () => {
 })
 
 it('what is written is read back: float to single precision, integers to half a step', () => {
-  const channels = fc
-    .integer({ min: 1, max: 4 })
-    .chain((count) =>
-      fc
-        .integer({ min: 1, max: 30 })
-        .chain((frames) =>
-          fc.array(fc.array(fc.double({ min: -1, max: 1, noNaN: true }), { minLength: frames, maxLength: frames }), {
-            minLength: count,
-            maxLength: count,
-          }),
-        ),
-    )
+  const channels = fc.integer({ min: 1, max: 4 }).chain((count) =>
+    fc.integer({ min: 1, max: 30 }).chain((frames) =>
+      fc.array(fc.array(fc.double({ min: -1, max: 1, noNaN: true }), { minLength: frames, maxLength: frames }), {
+        minLength: count,
+        maxLength: count,
+      }),
+    ),
+  )
   fc.assert(
     fc.property(
       channels,
