@@ -55,10 +55,13 @@ export function pointsOf(columns: Columns): Float64Array {
   return points.hz
 }
 
+/** Marks are written in tenths of a hertz at most. */
+const WITHIN_HZ = 0.02
+
 export function traceJob({ set, position, columns }: TraceRequest): Trace {
   const frozen = freeze(set, position)
   const channels = levels(frozen, columns)
-  const extremes = frozenExtremes(frozen)
+  const extremes = frozenExtremes(frozen, { maxHz: columns.highHz, withinHz: WITHIN_HZ })
   const first = extremes.filter((extreme) => extreme.channel === 0)
   const dense = denseColumn(extremes, columns)
   const [left, right] = channels

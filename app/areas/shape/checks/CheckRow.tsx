@@ -43,7 +43,7 @@ export const CheckRow = memo(function CheckRow({ id, open, tabStop, onToggle }: 
         </span>
       </button>
       {troubled || open ? <p className="cw-check-text">{text}</p> : null}
-      {troubled && mend && mend.length > 0 ? <Mends label={label} mends={mend} /> : null}
+      {(troubled || open) && mend && mend.length > 0 ? <Mends label={label} mends={mend} /> : null}
       {open ? <Working id={workingId} label={label} steps={working} /> : null}
     </li>
   )
