@@ -131,7 +131,7 @@ const INTERRUPTED = 'The system interrupted the sound.'
 /** States, the clock and the processor's own end. */
 function watch(graph: Graph): void {
   stopWatching()
-  const isStalled = createStallWatch(STALL_MS)
+  let isStalled = createStallWatch(STALL_MS)
   const onState = () => {
     if (isInterrupted(graph.context)) useSession.setState({ status: 'interrupted', error: INTERRUPTED })
     else if (graph.context.state === 'running' && useSession.getState().status === 'interrupted')
@@ -140,8 +140,9 @@ function watch(graph: Graph): void {
   const stopState = onContextState(graph.context, onState)
   const timer = setInterval(() => {
     const { playing, status } = useSession.getState()
-    const still = isStalled(graph.context.currentTime, performance.now())
-    if (still && playing && status === 'running' && graph.context.state === 'running')
+    // While paused the clock may stand: watching starts afresh with Play.
+    if (!playing || status !== 'running') isStalled = createStallWatch(STALL_MS)
+    else if (isStalled(graph.context.currentTime, performance.now()))
       useSession.setState({ status: 'failed', error: 'The sound has stopped: the audio clock stands still.' })
   }, 250)
   graph.node.onprocessorerror = () =>

@@ -36,6 +36,8 @@ export interface Guard {
   peak: number
   safeFrames: number
   sinceOpened: number
+  /** The ten seconds, in frames. */
+  readonly againFrames: number
   readonly gain: Ramp
   readonly gains: Float64Array
 }
@@ -50,6 +52,7 @@ export function createGuard(sampleRate: number, maxFrames: number): Guard {
     peak: 0.5,
     safeFrames: 0,
     sinceOpened: Math.round(AGAIN_S * sampleRate),
+    againFrames: Math.round(AGAIN_S * sampleRate),
     gain: createRamp(1),
     gains: new Float64Array(maxFrames),
   }
@@ -77,7 +80,7 @@ export function applyGuard(guard: Guard, left: Float64Array, right: Float64Array
 /** The set changed: what ran away before may not any more. */
 export function forgetLatch(guard: Guard): void {
   guard.latched = false
-  guard.sinceOpened = Math.round(AGAIN_S * guard.sampleRate)
+  guard.sinceOpened = guard.againFrames
 }
 
 /** Somebody asked for the sound back. True when the effect's memory must be cleared first. */
@@ -89,8 +92,8 @@ export function resumeGuard(guard: Guard): boolean {
 }
 
 function watch(guard: Guard, left: Float64Array, right: Float64Array, frames: number): boolean {
-  const again = Math.round(AGAIN_S * guard.sampleRate)
-  guard.sinceOpened = Math.min(again, guard.sinceOpened + frames)
+  const again = guard.againFrames
+  if (guard.sinceOpened < again) guard.sinceOpened += frames
   const at = firstBeyond(guard, left, right, 0, frames, GUARD_LIMIT)
   if (at === frames) {
     multiplyByRamp(guard.gain, guard.gains, frames)

@@ -38,6 +38,8 @@ export interface Player {
   /** Repeat region of the memory playing, frames; end is the first frame not played. */
   start: number
   end: number
+  /** Frames of a join: 5 ms, at most half the region, so that a very short one still repeats. */
+  join: number
   /** Cycle of the tone, 0 to 1, and its step a frame. */
   tonePhase: number
   toneStep: number
@@ -61,6 +63,7 @@ export function createPlayer(sampleRate: number, maxFrames: number): Player {
     fadeLength: 1,
     start: 0,
     end: 0,
+    join: 1,
     tonePhase: 0.5,
     toneStep: 0.5 / sampleRate,
     inputGate: createRamp(0),
@@ -83,8 +86,8 @@ export function setRegion(player: Player, startFrame: number, endFrame: number):
   setBounds(player, startFrame, endFrame)
   const { now } = player
   if (now.kind !== SAMPLE) return
-  if (now.frame >= player.start - joinFrames(player) && now.frame < player.end) return
-  takeOver(player, joinFrames(player))
+  if (now.frame >= player.start - player.join && now.frame < player.end) return
+  takeOver(player, player.join)
   now.frame = player.start
 }
 
@@ -123,9 +126,8 @@ export function renderPlayer(
   let from = 0
   while (from < frames) {
     if (joinIsDue(player)) {
-      const join = joinFrames(player)
-      takeOver(player, join)
-      now.frame = player.start - join
+      takeOver(player, player.join)
+      now.frame = player.start - player.join
     }
     const count = runLength(player, frames - from)
     const fading = player.fadeLeft > 0
@@ -153,17 +155,13 @@ function setBounds(player: Player, startFrame: number, endFrame: number): void {
   const start = Math.min(Math.max(Math.round(startFrame) || 0, 0), end)
   player.start = start
   player.end = Math.max(end, start + 1)
+  player.join = Math.max(1, Math.min(seconds(player, JOIN_S), (player.end - player.start) >> 1))
 }
 
 const seconds = (player: Player, s: number) => Math.max(1, Math.round(s * player.sampleRate))
 
-/** At most half the region, so that a very short one still repeats. */
-function joinFrames(player: Player): number {
-  return Math.max(1, Math.min(seconds(player, JOIN_S), (player.end - player.start) >> 1))
-}
-
 function joinIsDue(player: Player): boolean {
-  return player.now.kind === SAMPLE && player.now.frame >= player.end - joinFrames(player)
+  return player.now.kind === SAMPLE && player.now.frame >= player.end - player.join
 }
 
 /** The playing head becomes the old one; whatever was still fading before it is dropped. */
@@ -181,7 +179,7 @@ function runLength(player: Player, most: number): number {
   let count = most
   if (player.fadeLeft > 0 && player.fadeLeft < count) count = player.fadeLeft
   if (player.now.kind === SAMPLE) {
-    const untilJoin = player.end - joinFrames(player) - player.now.frame
+    const untilJoin = player.end - player.join - player.now.frame
     if (untilJoin < count) count = untilJoin
   }
   return Math.max(1, count)
