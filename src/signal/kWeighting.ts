@@ -71,8 +71,10 @@ export function createKFilter(sampleRate: number): KFilter {
 
 /** Σ y² of x[from … to) after weighting; keeps the filter's memory. Allocates nothing. */
 export function weightedEnergy(filter: KFilter, x: Float64Array | Float32Array, from: number, to: number): number {
-  const [p, q] = filter.sections
-  const { state } = filter
+  const { state, sections } = filter
+  // By index: taking the pair apart would make an iterator each call.
+  const p = sections[0]
+  const q = sections[1]
   let s1 = state[0] as number
   let s2 = state[1] as number
   let t1 = state[2] as number

@@ -88,8 +88,9 @@ export const LAYERS: readonly Layer[] = [
   { folder: 'app/styles', may: [] },
   { folder: 'app/contentPolicy.ts', may: [] },
   {
+    // Where the page begins: it wires sound, state and shell together, so that they need not know each other.
     folder: 'app/main.tsx',
-    may: ['app/shell', 'app/state', 'app/styles', ...SERVICES],
+    may: ['app/shell', 'app/audio', 'app/state', 'app/styles', ...SERVICES],
     packages: ['react', 'react-dom', '@base-ui/react'],
   },
 ]
