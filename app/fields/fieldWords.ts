@@ -28,5 +28,6 @@ function closeRead(set: ParameterSet): string | null {
   return null
 }
 
-const sentence = (text: string) => text.charAt(0).toUpperCase() + text.slice(1)
-const withMinus = (text: string) => text.replace(/(^|[\s(])-(?=\d)/g, '$1−')
+export const sentence = (text: string) => text.charAt(0).toUpperCase() + text.slice(1)
+/** Minus signs of a message made for terminals, as the page writes them. */
+export const withMinus = (text: string) => text.replace(/(^|[\s(])-(?=\d)/g, '$1−')

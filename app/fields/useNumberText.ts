@@ -28,17 +28,19 @@ interface Options {
   readonly context: () => QuantityContext
   /** Where stepping starts while the field is off. */
   readonly whenOff: number
+  /** Shown for null. */
+  readonly none?: string
   /** Sees each applied text: the rate's tempo stands in it. */
   readonly onApplied?: ((text: string) => void) | undefined
 }
 
-export function useNumberText({ spec, binding, context, whenOff, onApplied }: Options): NumberText {
+export function useNumberText({ spec, binding, context, whenOff, none = 'off', onApplied }: Options): NumberText {
   const { value } = binding
   const [draft, setDraft] = useState<string | null>(null)
   const [refusal, setRefusal] = useState<Refusal>(null)
   const [held, setHeld] = useState<string | null>(null)
   const ref = useRef<HTMLInputElement>(null)
-  const shown = value === null ? 'off' : showNumber(value, spec)
+  const shown = value === null ? none : showNumber(value, spec)
 
   // A value that changed from elsewhere (a drag, undo, an offer taken) replaces what was typed and refused.
   const [lastValue, setLastValue] = useState(value)

@@ -2,6 +2,7 @@
 import { SWEEP_POINTS } from '../../../../src/set/drawnPoints.ts'
 import { PointsField } from '../../../fields/PointsField.tsx'
 import { useCurrent } from '../../../state/current.ts'
+import { ExtremeField } from './ExtremeField.tsx'
 import { SetField } from './SetField.tsx'
 import { applyPoints } from './ShaperFields.tsx'
 import { TempoField } from './TempoField.tsx'
@@ -13,6 +14,8 @@ export function LineFields() {
   const shape = useCurrent((s) => s.set.sweep.shape)
   return (
     <>
+      <ExtremeField kind="notch" />
+      <ExtremeField kind="peak" />
       <SetField path="line.baseMs" lines={1} />
       <SetField path={law === 'time' ? 'sweep.depthMs' : 'sweep.depthOctaves'} lines={1} />
       <WidthField />

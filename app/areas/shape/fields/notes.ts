@@ -36,9 +36,9 @@ const NOTES: Readonly<Record<string, Note>> = {
   'sweep.depthOctaves': (set) => [sweptRange(set)],
   'sweep.rateHz': ({ sweep }, { tempoBpm }) => {
     if (sweep.rateHz === 0) return ['stands still at the start position']
-    const seconds = 1 / sweep.rateHz
+    const seconds = threeDigits(1 / sweep.rateHz)
     return [
-      `a cycle in ${seconds < 1 ? showIn(1000 * seconds, 'ms') : showIn(seconds, 's')} · ${beats((seconds * tempoBpm) / 60)} at ${tempoBpm}`,
+      `a cycle in ${seconds < 1 ? showIn(1000 * seconds, 'ms') : showIn(seconds, 's')} · ${beats(tempoBpm / 60 / sweep.rateHz)} at ${tempoBpm}`,
     ]
   },
   'sweep.stereoPhase': ({ sweep }) => [
@@ -123,7 +123,8 @@ export function widthText(set: ParameterSet): string {
 
 const cents = (value: number) => `${value > 0 ? '+' : value < 0 ? '−' : ''}${Math.abs(value).toFixed(1)}`
 
-const beats = (count: number) => `${shortNumber(Number(count.toPrecision(3)))} ${count === 1 ? 'beat' : 'beats'}`
+const threeDigits = (value: number) => Number(value.toPrecision(3))
+const beats = (count: number) => `${shortNumber(threeDigits(count))} ${count === 1 ? 'beat' : 'beats'}`
 
 function part(cycles: number): string {
   const named: Readonly<Record<number, string>> = {
