@@ -89,7 +89,7 @@ export function createCore({ fs, maxDelay, keepsDry, flush }: CoreOptions): Core
     written: pair(CHUNK),
     wet,
     output: pair(CHUNK),
-    read: { line: lines[0], at: 0, delays: trajectory.delays, d: 0, states: states.reads, state: 0, out: wet[0], o: 0 },
+    read: { runs: trajectory.runs, read: 0, line: lines[0], at: 0, states: states.reads, out: wet[0] },
   }
 }
 

@@ -1,6 +1,7 @@
 // One chunk through one core: u, the lines, the voices, the mix.
 import type { Core } from './core.ts'
 import { settleCore } from './core.ts'
+import { planRuns } from './delays.ts'
 import { highPass, highPassMoving, lowPass, lowPassMoving } from './filterPasses.ts'
 import { CHUNK, writeLine } from './line.ts'
 import { writeLines } from './loop.ts'
@@ -22,7 +23,7 @@ import {
 import { addRead } from './reads.ts'
 import { INPUT, LOOP, MAX_VOICES, OUTPUT } from './settings.ts'
 import { shape, shapeMoving } from './shaperPass.ts'
-import { fillDelays, LOOPS } from './trajectory.ts'
+import { LOOPS, switchLoops } from './trajectory.ts'
 
 /** Samples that a chunk may have: to the end of the lines' first half and of the ramps. */
 export function chunkRoom({ length, position, ramps }: Core): number {
@@ -35,7 +36,7 @@ export function runCore(core: Core, first: number, n: number): void {
   const { settings, ramps, trajectory } = core
   const moving = rampsMove(ramps)
   takeLoopOnOrOff(core, moving)
-  fillDelays(trajectory, settings, first, n)
+  planRuns(trajectory, settings, first, n)
   for (let c = 0; c < settings.lines; c++) takeInput(core, c, n, moving)
   writeLines(core, n, moving)
   for (let c = 0; c < settings.outputs; c++) {
@@ -60,7 +61,7 @@ function takeLoopOnOrOff({ ramps, trajectory, states }: Core, moving: boolean): 
     states.shapers.fill(0, 2 * LOOP, 2 * LOOP + 2)
     states.reads.fill(0, LOOPS)
   }
-  trajectory.loops = on
+  switchLoops(trajectory, on)
 }
 
 /** u of line c from its x, in place. */
@@ -91,11 +92,9 @@ function readVoices({ settings, lines, position, length, read, wet }: Core, c: n
   read.line = lines[settings.lines === 2 ? c : 0]!
   read.at = position + length
   read.out = m
-  read.o = 0
   for (let v = 0; v < settings.voices.count; v++) {
-    read.state = c * MAX_VOICES + v
-    read.d = read.state * CHUNK
-    addRead(settings.voiceRead, read, n)
+    read.read = c * MAX_VOICES + v
+    addRead(settings.voiceRead, read)
   }
   if (settings.voices.count > 1) {
     const gain = settings.voiceScale

@@ -11,7 +11,7 @@ export function createLine(length: number): Float64Array {
 
 /** Samples a line needs for delays up to `maxDelay`: the oldest point of a cubic, and the chunk that is written ahead of its reads. */
 export function lineLength(maxDelay: number): number {
-  return Math.ceil(maxDelay) + 4 + CHUNK
+  return (Math.ceil(maxDelay) | 0) + 4 + CHUNK
 }
 
 /** Most samples processed between two looks at what moves. Cuts never change a result; this only sizes the scratch memory. */
@@ -22,10 +22,10 @@ export const CHUNK = 128
  * so that a dying tail does not end in denormal numbers, which are slow; flush 0 changes nothing.
  */
 export function writeLine(line: Float64Array, position: number, from: Float64Array, j: number, n: number, flush: number): void {
-  const again = position + line.length / 2
+  const again = position + (line.length >> 1)
   for (let i = 0; i < n; i++) {
     let w = from[j + i]!
-    if (w < flush && w > -flush) w = 0
+    if (Math.abs(w) < flush) w = 0
     line[position + i] = w
     line[again + i] = w
   }

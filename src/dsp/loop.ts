@@ -1,70 +1,87 @@
-// The loop and the write: s = loopShaper(lowCut(damping(q))), q the line read before w[n] is written, and w = u + g X s. Worked in runs
-// no longer than the shortest loop delay allows, so that a run's reads were all written before it.
+// The loop and the write: s = loopShaper(lowCut(damping(q))), q the line read before w[n] is written, and w = u + g X s. Worked in pieces
+// no longer than the shortest loop delay allows, so that all a piece reads was written before it.
 import type { Core } from './core.ts'
+import { smallestLoopDelay } from './delays.ts'
 import { highPass, highPassMoving, lowPass, lowPassMoving } from './filterPasses.ts'
-import { CHUNK, writeLine } from './line.ts'
+import { writeLine } from './line.ts'
+import { canFuse, fusedLoop } from './linearLoop.ts'
 import { CROSS_FEED, DAMPING, FEEDBACK, LOW_CUT, SHAPER_VALUES, SHAPERS } from './ramps.ts'
-import { addRead } from './reads.ts'
+import { addPiece } from './reads.ts'
 import { LOOP } from './settings.ts'
 import { shape, shapeMoving } from './shaperPass.ts'
-import { LOOPS, smallestLoopDelay } from './trajectory.ts'
+import { LOOPS } from './trajectory.ts'
 
 /** Writes the lines for u[0 … n); `moving` while the ramps move. */
 export function writeLines(core: Core, n: number, moving: boolean): void {
   const { settings, trajectory, position, flush } = core
-  const run = trajectory.loops ? longestRun(core, n) : n
-  for (let j = 0; j < n; j += run) {
-    const m = Math.min(run, n - j)
-    if (trajectory.loops) {
-      for (let c = 0; c < settings.lines; c++) readLoop(core, c, j, m, moving)
-      feed(core, j, m, moving)
-    }
-    const from = trajectory.loops ? core.written : core.input
-    for (let c = 0; c < settings.lines; c++) writeLine(core.lines[c]!, position + j, from[c]!, j, m, flush)
+  if (!trajectory.loops) {
+    for (let c = 0; c < settings.lines; c++) writeLine(core.lines[c]!, position, core.input[c]!, 0, n, flush)
+  } else if (canFuse(core, moving)) {
+    for (let c = 0; c < settings.lines; c++) fusedLoop(core, c)
+  } else {
+    writeByPieces(core, moving)
   }
 }
 
-/** Samples that can be read before the first of them is written: the newest point of the first read is then still older than the run. */
-function longestRun({ settings, trajectory }: Core, n: number): number {
-  const smallest = smallestLoopDelay(trajectory, settings.lines, n)
-  const newest = settings.loopRead === 'lagrange3' || settings.loopRead === 'hermite4' ? smallest - 1 : smallest - 0.5
-  return Math.max(1, Math.min(n, Math.floor(newest)))
+function writeByPieces(core: Core, moving: boolean): void {
+  const { settings, trajectory, position, flush, written } = core
+  const { count, starts } = trajectory.runs
+  const longest = longestPiece(core)
+  for (let k = 0; k < count; k++) {
+    const runEnd = starts[k + 1]!
+    for (let j = starts[k]!; j < runEnd; j += longest) {
+      const end = Math.min(j + longest, runEnd)
+      for (let c = 0; c < settings.lines; c++) readLoop(core, c, k, j, end, moving)
+      feed(core, j, end, moving)
+      for (let c = 0; c < settings.lines; c++) writeLine(core.lines[c]!, position + j, written[c]!, j, end - j, flush)
+    }
+  }
 }
 
-/** s of line c for a run from index j of the chunk. */
-function readLoop(core: Core, c: number, j: number, run: number, moving: boolean): void {
+/** Samples that can be read before the first of them is written: the newest point of the first read is then still older than the piece. */
+function longestPiece({ settings, trajectory }: Core): number {
+  let smallest = Number.POSITIVE_INFINITY
+  for (let c = 0; c < settings.lines; c++) smallest = Math.min(smallest, smallestLoopDelay(trajectory, c))
+  const cubic = settings.loopRead === 'lagrange3' || settings.loopRead === 'hermite4'
+  return Math.max(1, Math.floor(cubic ? smallest - 1 : smallest - 0.5))
+}
+
+/** s of line c for samples j to end, inside run k. */
+function readLoop(core: Core, c: number, k: number, j: number, end: number, moving: boolean): void {
   const { settings, ramps, states, read } = core
   const s = core.loop[c]!
+  const n = end - j
   const shaper = settings.shapers[LOOP]!
-  s.fill(0, j, j + run)
+  s.fill(0, j, end)
+  read.read = LOOPS + c
   read.line = core.lines[c]!
-  read.at = core.position + core.length + j
-  read.d = (LOOPS + c) * CHUNK + j
-  read.state = LOOPS + c
+  read.at = core.position + core.length
   read.out = s
-  read.o = j
-  addRead(settings.loopRead, read, run)
+  addPiece(settings.loopRead, read, k, j, end)
   if (moving) {
-    const k = ramps.elapsed + j
-    lowPassMoving(s, j, run, ramps, k, DAMPING, states.damping, c)
-    highPassMoving(s, j, run, ramps, k, LOW_CUT, states.lowCut, 2 * c)
-    shapeMoving(shaper, s, j, run, ramps, k, SHAPERS + LOOP * SHAPER_VALUES, states.shapers, 2 * LOOP + c)
+    const since = ramps.elapsed + j
+    lowPassMoving(s, j, n, ramps, since, DAMPING, states.damping, c)
+    highPassMoving(s, j, n, ramps, since, LOW_CUT, states.lowCut, 2 * c)
+    shapeMoving(shaper, s, j, n, ramps, since, SHAPERS + LOOP * SHAPER_VALUES, states.shapers, 2 * LOOP + c)
     return
   }
-  if (ramps.target[DAMPING + 1]) lowPass(s, j, run, ramps.target[DAMPING]!, states.damping, c)
-  if (ramps.target[LOW_CUT + 1]) highPass(s, j, run, ramps.target[LOW_CUT]!, states.lowCut, 2 * c)
-  shape(shaper, s, j, run, states.shapers, 2 * LOOP + c)
+  if (ramps.target[DAMPING + 1]) lowPass(s, j, n, ramps.target[DAMPING]!, states.damping, c)
+  if (ramps.target[LOW_CUT + 1]) highPass(s, j, n, ramps.target[LOW_CUT]!, states.lowCut, 2 * c)
+  shape(shaper, s, j, n, states.shapers, 2 * LOOP + c)
 }
 
-/** w = u + g X s over a run. */
-function feed({ settings, ramps, input, loop, written }: Core, at: number, run: number, moving: boolean): void {
+/** w = u + g X s for samples j to end. */
+function feed({ settings, ramps, input, loop, written }: Core, first: number, end: number, moving: boolean): void {
   const { target, start, slope, elapsed } = ramps
-  const [u0, u1] = input
-  const [s0, s1] = loop
-  const [w0, w1] = written
+  const u0 = input[0]
+  const u1 = input[1]
+  const s0 = loop[0]
+  const s1 = loop[1]
+  const w0 = written[0]
+  const w1 = written[1]
   let g = target[FEEDBACK]!
   let k = target[CROSS_FEED]!
-  for (let j = at; j < at + run; j++) {
+  for (let j = first; j < end; j++) {
     if (moving) {
       g = start[FEEDBACK]! + slope[FEEDBACK]! * (elapsed + j)
       k = start[CROSS_FEED]! + slope[CROSS_FEED]! * (elapsed + j)

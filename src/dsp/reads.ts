@@ -1,95 +1,158 @@
-// Reads of a line, a chunk at a time: for each of `n` samples the line is read at its own delay and added to `out`. One plain loop an
-// interpolator, because this is where the time goes. The divisions of D are those of splitDelay, the weights those of tapsOf in an
-// order that takes fewer operations.
+// Reads of a line, run by run: inside a run the delay is a straight line, and the read is added to `out`. One plain loop an
+// interpolator, because this is where the time goes. The divisions of D are those of splitDelay; the weights are those of tapsOf, in
+// forms that take fewer operations and give the same bits however a run is cut.
 //
-// `line` a line's memory, `at` the index of its sample n in the second half, `delays` D in samples from index `d`, held inside the
-// interpolator's and the line's limits before. Points are newest at the highest index.
+// A delay that stays between the same two samples for a whole run reads points that follow one another: then each is fetched once and
+// handed on. x0 is the newest point, at I − 1, x3 the oldest.
 import type { Interpolation } from '../set/types.ts'
+import { CHUNK } from './line.ts'
+import type { Runs } from './runs.ts'
 
 export interface Read {
+  readonly runs: Runs
+  /** Which read of the runs, and slot of `states`. */
+  read: number
+  /** A line's memory. */
   line: Float64Array
-  /** Index in `line` of the first sample's n. */
+  /** Index in `line` of n of the chunk's first sample; older samples stand below. */
   at: number
-  delays: Float64Array
-  /** Index in `delays` of the first sample's D. */
-  d: number
-  /** Memory of recursive reads, one slot a read. */
-  states: Float64Array
-  /** This read's slot. */
-  state: number
+  /** Memory of recursive reads. */
+  readonly states: Float64Array
   out: Float64Array
-  /** Index in `out` of the first sample. */
-  o: number
 }
 
-export function addRead(kind: Interpolation, r: Read, n: number): void {
-  if (kind === 'lagrange3') addLagrange3(r, n)
-  else if (kind === 'linear') addLinear(r, n)
-  else if (kind === 'hermite4') addHermite4(r, n)
-  else if (kind === 'nearest') addNearest(r, n)
-  else addAllpass1(r, n)
+/** Adds the whole chunk's read to `out`. */
+export function addRead(kind: Interpolation, r: Read): void {
+  const { count, starts } = r.runs
+  for (let k = 0; k < count; k++) addPiece(kind, r, k, starts[k]!, starts[k + 1]!)
 }
 
-function addNearest({ line, at, delays, d, out, o }: Read, n: number): void {
-  for (let j = 0; j < n; j++) {
-    out[o + j] = out[o + j]! + line[at + j - ((delays[d + j]! + 0.5) | 0)]!
+/** Adds the read of samples `first` to `end` of the chunk, inside run k, to `out`. Cubics and allpass: DESIGN 3. */
+export function addPiece(kind: Interpolation, r: Read, k: number, first: number, end: number): void {
+  if (kind === 'lagrange3') addLagrange3(r, k, first, end)
+  else if (kind === 'linear') addLinear(r, k, first, end)
+  else if (kind === 'hermite4') addHermite4(r, k, first, end)
+  else if (kind === 'nearest') addNearest(r, k, first, end)
+  else addAllpass1(r, k, first, end)
+}
+
+function addNearest({ runs, read, line, at, out }: Read, k: number, first: number, end: number): void {
+  const from = runs.from[read * CHUNK + k]!
+  const slope = runs.slope[read * CHUNK + k]!
+  const into = runs.into[k]! - runs.starts[k]!
+  for (let j = first; j < end; j++) {
+    const whole = (from + slope * (into + j) + 0.5) | 0
+    out[j] = out[j]! + line[at + j - whole]!
   }
 }
 
-function addLinear({ line, at, delays, d, out, o }: Read, n: number): void {
-  for (let j = 0; j < n; j++) {
-    const delay = delays[d + j]!
+function addLinear({ runs, read, line, at, out }: Read, k: number, first: number, end: number): void {
+  const from = runs.from[read * CHUNK + k]!
+  const slope = runs.slope[read * CHUNK + k]!
+  const into = runs.into[k]! - runs.starts[k]!
+  const whole = (from + slope * (into + first)) | 0
+  if (((from + slope * (into + end - 1)) | 0) === whole) {
+    let i = at + first - whole
+    let x2 = line[i - 1]!
+    for (let j = first; j < end; j++) {
+      const f = from + slope * (into + j) - whole
+      const x1 = line[i]!
+      i = (i + 1) | 0
+      out[j] = out[j]! + (x1 + f * (x2 - x1))
+      x2 = x1
+    }
+    return
+  }
+  for (let j = first; j < end; j++) {
+    const delay = from + slope * (into + j)
+    const I = delay | 0
+    const i = at + j - I
+    const x1 = line[i]!
+    out[j] = out[j]! + (x1 + (delay - I) * (line[i - 1]! - x1))
+  }
+}
+
+/** Newton's form: x1 + f (e + (f − 1)/2 (dd + (f + 1)/3 ddd)) with the first, second and third differences around x1 and x2. */
+function addLagrange3({ runs, read, line, at, out }: Read, k: number, first: number, end: number): void {
+  const from = runs.from[read * CHUNK + k]!
+  const slope = runs.slope[read * CHUNK + k]!
+  const into = runs.into[k]! - runs.starts[k]!
+  const whole = (from + slope * (into + first)) | 0
+  if (((from + slope * (into + end - 1)) | 0) !== whole) {
+    for (let j = first; j < end; j++) {
+      const delay = from + slope * (into + j)
+      const I = delay | 0
+      const f = delay - I
+      const i = at + j - I
+      const x1 = line[i]!
+      const x2 = line[i - 1]!
+      const e = x2 - x1
+      const dd = e - (x1 - line[i + 1]!)
+      const older = line[i - 2]! - x2 - e
+      out[j] = out[j]! + (x1 + f * (e + 0.5 * (f - 1) * (dd + (1 / 3) * (f + 1) * (older - dd))))
+    }
+    return
+  }
+  let i = at + first - whole
+  let x1 = line[i]!
+  const x2 = line[i - 1]!
+  let e = x2 - x1
+  let older = line[i - 2]! - x2 - e
+  // Two samples a turn, so that the points need not be moved along.
+  let j = first
+  for (; j < end - 1; j += 2) {
+    let f = from + slope * (into + j) - whole
+    const x0 = line[i + 1]!
+    const newer = x1 - x0
+    const dd = e - newer
+    out[j] = out[j]! + (x1 + f * (e + 0.5 * (f - 1) * (dd + (1 / 3) * (f + 1) * (older - dd))))
+    f = from + slope * (into + j + 1) - whole
+    i = (i + 2) | 0
+    x1 = line[i]!
+    e = x0 - x1
+    older = newer - e
+    out[j + 1] = out[j + 1]! + (x0 + f * (newer + 0.5 * (f - 1) * (older + (1 / 3) * (f + 1) * (dd - older))))
+  }
+  if (j < end) {
+    const f = from + slope * (into + j) - whole
+    const dd = e - (x1 - line[i + 1]!)
+    out[j] = out[j]! + (x1 + f * (e + 0.5 * (f - 1) * (dd + (1 / 3) * (f + 1) * (older - dd))))
+  }
+}
+
+/** Catmull-Rom: x1 + f (m + f (c2 + f c3)), m the slope at x1, and c2 such that the curve reaches x2 at f = 1. */
+function addHermite4({ runs, read, line, at, out }: Read, k: number, first: number, end: number): void {
+  const from = runs.from[read * CHUNK + k]!
+  const slope = runs.slope[read * CHUNK + k]!
+  const into = runs.into[k]! - runs.starts[k]!
+  for (let j = first; j < end; j++) {
+    const delay = from + slope * (into + j)
     const whole = delay | 0
     const f = delay - whole
     const i = at + j - whole
-    const y0 = line[i]!
-    out[o + j] = out[o + j]! + (y0 + f * (line[i - 1]! - y0))
+    const x1 = line[i]!
+    const x2 = line[i - 1]!
+    const e = x2 - x1
+    const newer = x1 - line[i + 1]!
+    const m = 0.5 * (e + newer)
+    const c3 = 0.5 * (line[i - 2]! - x2 + newer) - e
+    out[j] = out[j]! + (x1 + f * (m + f * (e - m - c3 + f * c3)))
   }
 }
 
-function addLagrange3({ line, at, delays, d, out, o }: Read, n: number): void {
-  for (let j = 0; j < n; j++) {
-    const delay = delays[d + j]!
-    const whole = delay | 0
-    const f = delay - whole
-    const i = at + j - whole
-    const f1 = f - 1
-    const f2 = f - 2
-    const g1 = f + 1
-    // The four products of Lagrange's formula, paired by what they share: f(f−1) in the outer taps, (f+1)(f−2) in the inner.
-    const outer = f * f1 * (g1 * line[i - 2]! - f2 * line[i + 1]!)
-    const inner = g1 * f2 * (f1 * line[i]! - f * line[i - 1]!)
-    out[o + j] = out[o + j]! + (outer * (1 / 6) + inner * 0.5)
-  }
-}
-
-function addHermite4({ line, at, delays, d, out, o }: Read, n: number): void {
-  for (let j = 0; j < n; j++) {
-    const delay = delays[d + j]!
-    const whole = delay | 0
-    const f = delay - whole
-    const i = at + j - whole
-    const y0 = line[i + 1]!
-    const y1 = line[i]!
-    const y2 = line[i - 1]!
-    const y3 = line[i - 2]!
-    const c1 = 0.5 * (y2 - y0)
-    const c2 = y0 - 2.5 * y1 + 2 * y2 - 0.5 * y3
-    const c3 = 0.5 * (y3 - y0) + 1.5 * (y1 - y2)
-    out[o + j] = out[o + j]! + (((c3 * f + c2) * f + c1) * f + y1)
-  }
-}
-
-function addAllpass1({ line, at, delays, d, states, state, out, o }: Read, n: number): void {
-  let y = states[state]!
-  for (let j = 0; j < n; j++) {
-    const delay = delays[d + j]!
+function addAllpass1({ runs, read, line, at, states, out }: Read, k: number, first: number, end: number): void {
+  const from = runs.from[read * CHUNK + k]!
+  const slope = runs.slope[read * CHUNK + k]!
+  const into = runs.into[k]! - runs.starts[k]!
+  let y = states[read]!
+  for (let j = first; j < end; j++) {
+    const delay = from + slope * (into + j)
     const whole = (delay - 0.5) | 0
     const part = delay - whole
     const eta = (1 - part) / (1 + part)
     const i = at + j - whole
     y = eta * (line[i]! - y) + line[i - 1]!
-    out[o + j] = out[o + j]! + y
+    out[j] = out[j]! + y
   }
-  states[state] = y
+  states[read] = y
 }

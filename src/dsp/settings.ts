@@ -1,6 +1,6 @@
 // The core's own copy of a set, decoded from the flat form: what the passes ask for, with everything derived that does not change
 // from sample to sample. Written in place, so that a live edit allocates nothing.
-import { voiceOffsetMs } from '../set/delayRange.ts'
+import { smallestDelay, voiceOffsetMs } from '../set/delayRange.ts'
 import { flatIndex, flatPointsOffset } from '../set/flat.ts'
 import type { Curve, Interpolation, Layout, ParameterSet, SweepLaw, SweepShape } from '../set/types.ts'
 import { choicesOf } from './flatRules.ts'
@@ -16,6 +16,11 @@ export interface Settings {
   outputs: 1 | 2
   voiceRead: Interpolation
   loopRead: Interpolation
+  /** Smallest delay of voices and loop, samples. */
+  voiceLeast: number
+  loopLeast: number
+  /** Samples by which the loop is read sooner because its shaper delays by them: ½ with adaa1. */
+  loopLess: number
   readonly sweep: Mutable<ParameterSet['sweep']>
   baseMs: number
   readonly voices: Mutable<ParameterSet['voices']>
@@ -49,6 +54,9 @@ export function createSettings(): Settings {
     outputs: 1,
     voiceRead: 'linear',
     loopRead: 'linear',
+    voiceLeast: 0.5,
+    loopLeast: 0.5,
+    loopLess: 0.5,
     // Halves keep these fields in double representation, so that writing them later stays in place.
     sweep: {
       shape: 'sine',
@@ -136,7 +144,9 @@ export function takeStructure(s: Settings, flat: Float64Array): void {
   s.outputs = layout === 'mono' ? 1 : 2
   s.voiceRead = INTERPOLATIONS[flat[AT.voiceRead]!]!
   s.loopRead = INTERPOLATIONS[flat[AT.loopRead]!]!
-  s.voices.count = flat[AT.voices]!
+  s.voiceLeast = smallestDelay(s.voiceRead, 'voice')
+  s.loopLeast = smallestDelay(s.loopRead, 'loop')
+  s.voices.count = flat[AT.voices]! | 0
   s.voiceScale = 1 / Math.sqrt(s.voices.count)
   s.dryFromLine = flat[AT.dryTap] === FROM_LINE
   s.dryDelayMs = flat[AT.dryDelay]!
@@ -148,6 +158,7 @@ export function takeStructure(s: Settings, flat: Float64Array): void {
     shaper.mean = shaper.on && flat[ANTIALIAS_AT[i]!] === MEAN
     shaper.points = takePoints(s.shaperStores[i]!, flat, POINTS_AT[i]!)
   }
+  s.loopLess = s.shapers[LOOP]!.mean ? 0.5 : 0
   takeDelays(s, flat)
 }
 
@@ -164,7 +175,7 @@ export function takeDelays(s: Settings, flat: Float64Array): void {
   sweep.stereoPhase = flat[AT.stereoPhase]!
   sweep.edgeMs = flat[AT.edge]!
   sweep.seed = flat[AT.seed]!
-  sweep.updateEvery = flat[AT.updateEvery]!
+  sweep.updateEvery = flat[AT.updateEvery]! | 0
   sweep.between = BETWEEN[flat[AT.between]!]!
   sweep.points = takePoints(s.sweepStore, flat, SWEEP_POINTS_AT)
   s.loopMoves = flat[AT.loopDelay] !== FIXED

@@ -1,10 +1,10 @@
-// The delay of every read, sample by sample: the sweep evaluated every `updateEvery` samples of absolute time, straight lines or
-// steps between, plus what a glide still has to go, held inside the limits of interpolator and line.
+// Where the sweep stands and what delay it gives every read: evaluated every `updateEvery` samples of absolute time, straight lines or
+// steps between. delays.ts makes the single samples of it.
 //
 // Reads: voice v of channel c is c · MAX_VOICES + v; the loop of line c is LOOPS + c.
-import { CLOSE_TOLERANCE, smallestDelay } from '../set/delayRange.ts'
 import { flatIndex } from '../set/flat.ts'
 import { CHUNK } from './line.ts'
+import { createRuns, type Runs } from './runs.ts'
 import { MAX_VOICES, type Settings } from './settings.ts'
 import { frozenShapeValue, sweepShapeValue, wrapPhase } from './sweep.ts'
 
@@ -16,11 +16,12 @@ const START_PHASE = flatIndex('sweep.startPhase')
 
 export interface Trajectory {
   readonly fs: number
-  /** D of each read for the chunk at hand, CHUNK a read. */
-  readonly delays: Float64Array
-  /** D of each read at the start of the update interval, and at its end. */
+  /** D of each read at the last two times it was evaluated: the ends of the update interval, or where nothing ramps between, `to` alone. */
   readonly from: Float64Array
   readonly to: Float64Array
+  /** Whether all of them are inside their limits. */
+  fromInside: boolean
+  toInside: boolean
   /** Sample at which the interval starts; −1: nothing evaluated yet. */
   interval: number
   /** What a glide still adds to each read's delay, samples. */
@@ -33,19 +34,24 @@ export interface Trajectory {
   since: number
   held: boolean
   /** Largest delay the line can give, samples. */
-  longest: number
-  /** Whether the loops are read at all. */
+  readonly longest: number
+  /** Whether the loops are read; their limits count only then. */
   loops: boolean
   /** Samples for which some read was held at a limit. */
   heldDelays: number
+  /** The chunk at hand in straight runs. */
+  readonly runs: Runs
+  /** Scratch: D of one read for each sample of the chunk. */
+  readonly delays: Float64Array
 }
 
 export function createTrajectory(fs: number, longest: number): Trajectory {
   return {
     fs,
-    delays: new Float64Array(READS * CHUNK),
     from: new Float64Array(READS),
     to: new Float64Array(READS),
+    fromInside: true,
+    toInside: true,
     interval: -1,
     offset: new Float64Array(READS),
     gliding: false,
@@ -56,6 +62,8 @@ export function createTrajectory(fs: number, longest: number): Trajectory {
     longest,
     loops: false,
     heldDelays: 0,
+    runs: createRuns(READS),
+    delays: new Float64Array(CHUNK),
   }
 }
 
@@ -89,22 +97,32 @@ export function startPhase(t: Trajectory, s: Settings): void {
   t.since = 0
 }
 
-/** D of every read at sample n, before glide and limits. Order of operations: sweepPhase. */
-function evaluate(t: Trajectory, s: Settings, n: number, into: Float64Array): void {
-  const { sweep, outputs, lines } = s
-  const { count } = s.voices
+/** Evaluates D of every read at sample n, before glide and limits, into `to`, after moving that to `from`. Order of operations: sweepPhase. */
+function evaluate(t: Trajectory, s: Settings, n: number): void {
+  const { sweep, voices, outputs, lines, centreMs, voicePhase, channelPhase } = s
+  const { from, to } = t
+  const { count } = voices
   const phase = phaseAt(t, s, n)
+  let inside = true
   for (let c = 0; c < outputs; c++) {
     for (let v = 0; v < count; v++) {
-      const at = phase + s.voicePhase[v]! + s.channelPhase[c]!
+      const at = phase + voicePhase[v]! + channelPhase[c]!
       const shape = t.held ? frozenShapeValue(sweep, at) : sweepShapeValue(sweep, at, v)
-      into[c * MAX_VOICES + v] = toSamples(t, s, s.centreMs[v]!, shape)
+      const r = c * MAX_VOICES + v
+      const delay = toSamples(t, s, centreMs[v]!, shape)
+      from[r] = to[r]!
+      to[r] = delay
+      if (!(delay >= s.voiceLeast && delay <= t.longest)) inside = false
       if (v === 0 && c < lines) {
-        const loop = s.loopMoves ? toSamples(t, s, s.baseMs, shape) : (s.baseMs * t.fs) / 1000
-        into[LOOPS + c] = s.shapers[1]!.mean ? loop - 0.5 : loop
+        const loop = (s.loopMoves ? toSamples(t, s, s.baseMs, shape) : (s.baseMs * t.fs) / 1000) - s.loopLess
+        from[LOOPS + c] = to[LOOPS + c]!
+        to[LOOPS + c] = loop
+        if (t.loops && !(loop >= s.loopLeast && loop <= t.longest)) inside = false
       }
     }
   }
+  t.fromInside = t.toInside
+  t.toInside = inside
 }
 
 function toSamples(t: Trajectory, s: Settings, centreMs: number, shape: number): number {
@@ -113,23 +131,35 @@ function toSamples(t: Trajectory, s: Settings, centreMs: number, shape: number):
   return (ms * t.fs) / 1000
 }
 
-const rampsBetween = ({ sweep }: Settings): boolean => sweep.between === 'ramp' && sweep.updateEvery > 1
+export const rampsBetween = ({ sweep }: Settings): boolean => sweep.between === 'ramp' && sweep.updateEvery > 1
 
-/** Makes `from` and `to` those of the update interval that holds sample n. */
-function enterInterval(t: Trajectory, s: Settings, n: number): void {
+/** Evaluates what the update interval that holds sample n needs. */
+export function enterInterval(t: Trajectory, s: Settings, n: number): void {
   const every = s.sweep.updateEvery
   const start = n - (n % every)
   if (t.interval === start) return
-  if (rampsBetween(s) && t.interval >= 0 && t.interval + every === start) t.from.set(t.to)
-  else evaluate(t, s, start, t.from)
-  if (rampsBetween(s)) evaluate(t, s, start + every, t.to)
+  if (!rampsBetween(s)) {
+    evaluate(t, s, start)
+    t.fromInside = t.toInside
+  } else {
+    if (t.interval < 0 || t.interval + every !== start) evaluate(t, s, start)
+    evaluate(t, s, start + every)
+  }
   t.interval = start
+}
+
+/** Whether the loops are read from the next chunk on. */
+export function switchLoops(t: Trajectory, on: boolean): void {
+  if (on === t.loops) return
+  t.loops = on
+  // What was evaluated did not heed the loops' limits.
+  t.interval = -1
 }
 
 /** D of read r at sample n of the interval entered, before glide and limits. */
 function between(t: Trajectory, s: Settings, r: number, n: number): number {
-  const from = t.from[r]!
-  return rampsBetween(s) ? from + ((t.to[r]! - from) / s.sweep.updateEvery) * (n - t.interval) : from
+  if (!rampsBetween(s)) return t.to[r]!
+  return t.from[r]! + ((t.to[r]! - t.from[r]!) / s.sweep.updateEvery) * (n - t.interval)
 }
 
 /** Notes where every read in use stands at sample n, glide included: what a change that follows is to glide from. */
@@ -160,76 +190,4 @@ export function jump(t: Trajectory): void {
 function inUse(s: Settings, r: number): boolean {
   if (r >= LOOPS) return r - LOOPS < s.lines
   return r % MAX_VOICES < s.voices.count && (r < MAX_VOICES || s.outputs === 2)
-}
-
-/** Fills `delays` for the `n` samples from absolute sample `first` on. */
-export function fillDelays(t: Trajectory, s: Settings, first: number, n: number): void {
-  const every = s.sweep.updateEvery
-  for (let j = 0; j < n; ) {
-    enterInterval(t, s, first + j)
-    const into = first + j - t.interval
-    const run = Math.min(every - into, n - j)
-    for (let c = 0; c < s.outputs; c++) {
-      for (let v = 0; v < s.voices.count; v++) fillRun(t, s, c * MAX_VOICES + v, j, into, run)
-    }
-    if (t.loops) for (let c = 0; c < s.lines; c++) fillRun(t, s, LOOPS + c, j, into, run)
-    j += run
-  }
-  if (t.gliding) t.gliding = t.offset.some(isLeft)
-}
-
-const isLeft = (offset: number): boolean => offset !== 0
-
-/** `run` samples of read r from index j of the chunk, `into` samples into the update interval. */
-function fillRun(t: Trajectory, s: Settings, r: number, j: number, into: number, run: number): void {
-  const { delays } = t
-  const at = r * CHUNK + j
-  const start = t.from[r]!
-  const slope = rampsBetween(s) ? (t.to[r]! - start) / s.sweep.updateEvery : 0
-  for (let i = 0; i < run; i++) delays[at + i] = start + slope * (into + i)
-  if (t.gliding) addGlide(t, r, at, run)
-  const least = r < LOOPS ? smallestDelay(s.voiceRead, 'voice') : smallestDelay(s.loopRead, 'loop')
-  // Straight lines stay between their ends; a glide's sum with one need not.
-  const first = delays[at]!
-  const last = delays[at + run - 1]!
-  if (t.gliding || first < least || last < least || first > t.longest || last > t.longest) hold(t, at, run, least)
-}
-
-/** Part of the way that a glide goes in one sample, and the most it goes, samples a sample: half, so pitch bends by a fifth up or an octave down at most. */
-const GLIDE_SECONDS = 0.05
-const FASTEST_GLIDE = 0.5
-/** What is left of a glide when it is over, samples. */
-const GLIDE_END = 1e-7
-
-function addGlide(t: Trajectory, r: number, at: number, run: number): void {
-  const { delays, offset } = t
-  const part = 1 / (GLIDE_SECONDS * t.fs)
-  let left = offset[r]!
-  for (let i = at; i < at + run; i++) {
-    delays[i] = delays[i]! + left
-    left -= Math.min(FASTEST_GLIDE, Math.max(-FASTEST_GLIDE, left * part))
-    if (Math.abs(left) < GLIDE_END) left = 0
-  }
-  offset[r] = left
-}
-
-function hold(t: Trajectory, at: number, run: number, least: number): void {
-  const { delays, longest } = t
-  for (let i = at; i < at + run; i++) {
-    const delay = delays[i]!
-    if (delay >= least && delay <= longest) continue
-    if (delay < least - CLOSE_TOLERANCE || delay > longest + CLOSE_TOLERANCE) t.heldDelays++
-    delays[i] = delay < least ? least : longest
-  }
-}
-
-/** Smallest delay of the loop reads among the first n of the chunk, samples; Infinity when no loop is read. */
-export function smallestLoopDelay(t: Trajectory, lines: number, n: number): number {
-  let smallest = Number.POSITIVE_INFINITY
-  if (!t.loops) return smallest
-  for (let c = 0; c < lines; c++) {
-    const at = (LOOPS + c) * CHUNK
-    for (let i = at; i < at + n; i++) if (t.delays[i]! < smallest) smallest = t.delays[i]!
-  }
-  return smallest
 }
