@@ -73,8 +73,8 @@ function chordsMs(set: ParameterSet, seconds: number): { rise: number; fall: num
     // A hair inside as well: at a jump the value on a corner is that of one side only.
     const hair = Math.min(1e-12, (to - from) / 4)
     for (const [low, high] of [[from, to] as const, [from + hair, to - hair] as const]) {
-      rise = Math.max(rise, largestBetween(chord, low, high).value)
-      fall = Math.max(fall, largestBetween((phi) => -chord(phi), low, high).value)
+      rise = Math.max(rise, largestBetween(chord, low, high))
+      fall = Math.max(fall, largestBetween((phi) => -chord(phi), low, high))
     }
   })
   return { rise, fall }

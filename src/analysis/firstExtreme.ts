@@ -33,7 +33,7 @@ export function firstOfFrozen(frozen: Frozen, kind: ExtremeKind): Extreme | null
 }
 
 /** The first channel alone, with the line it reads; with both lines where they feed each other. */
-function firstChannel(frozen: Frozen): Frozen {
+export function firstChannel(frozen: Frozen): Frozen {
   const channels = frozen.channels.slice(0, 1)
   if (frozen.loop.crossFeed !== 0 && frozen.loop.gain !== 0) return { ...frozen, channels }
   return { ...frozen, channels, lines: 1, loop: { ...frozen.loop, crossFeed: 0, reads: frozen.loop.reads.slice(0, 1) } }

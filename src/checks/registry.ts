@@ -5,9 +5,22 @@ import { loopMargin } from './loopMargin.ts'
 import { loopPoles } from './loopPoles.ts'
 import { loopRing } from './loopRing.ts'
 import { loopStability } from './loopStability.ts'
+import { responseExtremes } from './responseExtremes.ts'
+import { sweepDetune } from './sweepDetune.ts'
+import { sweepFusion } from './sweepFusion.ts'
+import { sweepRange } from './sweepRange.ts'
 import type { Check, CheckFunction, CheckInput, Verdict } from './types.ts'
 
-const CHECKS: readonly CheckFunction[] = [loopStability, loopMargin, loopPoles, loopRing]
+const CHECKS: readonly CheckFunction[] = [
+  loopStability,
+  loopMargin,
+  loopPoles,
+  loopRing,
+  responseExtremes,
+  sweepRange,
+  sweepDetune,
+  sweepFusion,
+]
 
 /** All checks of a valid set, in the table's order. sampleRate in Hz, 8000 to 192000; the set's own when absent. */
 export function runChecks(set: ParameterSet, options: { readonly sampleRate?: number } = {}): Check[] {
