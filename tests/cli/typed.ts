@@ -8,8 +8,8 @@ import { build } from 'vite'
 
 const top = fileURLToPath(new URL('../../', import.meta.url))
 const source = path.join(top, 'src', 'cli', 'main.ts')
-/** As npm runs it from a checkout. */
-const FROM_SOURCE = [path.join(top, '.ci', 'with-packages.mjs'), source]
+// Through tsx itself and not the script that npm starts: that one may install packages, which a test must not.
+const FROM_SOURCE = [path.join(top, 'node_modules', 'tsx', 'dist', 'cli.mjs'), source]
 
 export const demoSet = (id: string): string => path.join(top, 'public', 'sets', `${id}.set.json`)
 
