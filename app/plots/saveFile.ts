@@ -21,7 +21,7 @@ export function csvText({ head, columns }: PlotNumbers): string {
 }
 
 function csvNumber(value: number): string {
-  return Number.isFinite(value) ? String(Number(value.toPrecision(9))) : ''
+  return Number.isFinite(value) ? String(Number(value.toPrecision(12))) : ''
 }
 
 /** "narrow-resonant-sweep-response.csv" */

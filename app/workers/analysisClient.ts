@@ -31,8 +31,6 @@ interface Sent {
 
 export interface AnalysisClient {
   openFeed<K extends JobKind>(kind: K, onReply: (reply: JobReply<K>, request: JobRequest<K>) => void, onFailure?: OnFailure): Feed<K>
-  /** One answer. Rejects with the job's message; an aborted signal rejects with its reason. */
-  runOnce<K extends JobKind>(kind: K, request: JobRequest<K>, signal?: AbortSignal): Promise<JobReply<K>>
 }
 
 export type OnFailure = (message: string) => void
@@ -94,27 +92,7 @@ export function createAnalysisClient(makeWorker: (lane: Lane) => WorkerLike): An
     }
   }
 
-  function runOnce<K extends JobKind>(kind: K, request: JobRequest<K>, signal?: AbortSignal): Promise<JobReply<K>> {
-    const lane = lanes[LANE[kind]]
-    return new Promise((resolve, reject) => {
-      if (signal?.aborted) {
-        reject(signal.reason)
-        return
-      }
-      const abort = () => {
-        lane.cancel(id)
-        reject(signal?.reason)
-      }
-      const id = lane.send(kind, request, (reply) => {
-        signal?.removeEventListener('abort', abort)
-        if (reply.ok) resolve(reply.value as JobReply<K>)
-        else reject(new Error(reply.message))
-      })
-      signal?.addEventListener('abort', abort, { once: true })
-    })
-  }
-
-  return { openFeed, runOnce }
+  return { openFeed }
 }
 
 interface LaneOfWork {

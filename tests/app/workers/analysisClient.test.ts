@@ -145,25 +145,3 @@ describe('lanes', () => {
     expect(made).toHaveLength(2)
   })
 })
-
-describe('runOnce', () => {
-  it('resolves with the value and rejects with the message of the job', async () => {
-    const { client: c, made } = client()
-    const good = c.runOnce('checks', { set })
-    const bad = c.runOnce('checks', { set })
-    const ids = made[0]?.runs.map(({ id }) => id) ?? []
-    made[0]?.answer({ id: ids[0] ?? 0, ok: true, value: 'value' })
-    made[0]?.answer({ id: ids[1] ?? 0, ok: false, message: 'no' })
-    await expect(good).resolves.toBe('value')
-    await expect(bad).rejects.toThrow('no')
-  })
-
-  it('is cancelled by its signal', async () => {
-    const { client: c, made } = client()
-    const abort = new AbortController()
-    const answer = c.runOnce('checks', { set }, abort.signal)
-    abort.abort(new Error('closed'))
-    await expect(answer).rejects.toThrow('closed')
-    expect(made[0]?.heard.at(-1)?.type).toBe('cancel')
-  })
-})

@@ -1,0 +1,30 @@
+// What the specs of plots and checks share: panes, their readings and canvases, numbers in readings.
+import type { Locator, Page } from '@playwright/test'
+
+/** A plot's pane: 0 the upper, 1 the lower. */
+export const pane = (page: Page, index: 0 | 1): Locator => page.getByRole('region', { name: 'Plots' }).locator('.cw-plot-pane').nth(index)
+
+export const reading = (of: Locator): Locator => of.locator('.cw-plot-reading')
+
+/** What is drawn now, as one string. */
+export const drawn = (of: Locator): Promise<string> => of.locator('canvas').evaluate((canvas: HTMLCanvasElement) => canvas.toDataURL())
+
+/** How many of the picture's pixels are not empty. */
+export const inked = (of: Locator): Promise<number> =>
+  of.locator('canvas').evaluate((canvas: HTMLCanvasElement) => {
+    const { data } = canvas.getContext('2d')?.getImageData(0, 0, canvas.width, canvas.height) ?? { data: [] }
+    let count = 0
+    for (let i = 3; i < data.length; i += 4) if ((data[i] ?? 0) > 0) count += 1
+    return count
+  })
+
+/** The first number in a text, as the page writes it: real minus sign, thin spaces. */
+export function numberIn(text: string): number {
+  const found = /[−+]?\d[\d\u2009]*(\.\d+)?/.exec(text)?.[0] ?? 'NaN'
+  return Number(found.replace('−', '-').replace('+', '').replaceAll('\u2009', ''))
+}
+
+/** Shows a plot in a pane. */
+export async function show(of: Locator, name: string): Promise<void> {
+  await of.getByRole('tab', { name }).click()
+}
