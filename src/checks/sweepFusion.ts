@@ -20,7 +20,7 @@ export const sweepFusion: CheckFunction = ({ set, sampleRate }): Check => {
     label: labelOf('sweep.fusion'),
     text:
       status === 'holds'
-        ? `The longest delay is ${figure}: the ear takes it with the dry sound.`
+        ? `The longest delay is ${figure}${set.mix.dry === 0 ? '' : ': the ear takes it with the dry sound'}.`
         : `The longest delay is ${figure}: past about ${bound} it is heard as a sound of its own.`,
     working: [
       {

@@ -28,7 +28,7 @@ export const sweepRange: CheckFunction = ({ set, sampleRate }): Check => {
     limit: ms(tightest.limit),
     unit: 'ms',
     label: labelOf('sweep.range'),
-    text: `The delay runs from ${quantity(smallestMs, 'ms')} to ${quantity(largestMs, 'ms')}; ${roomText(tightest)}.`,
+    text: `The delay ${spanText(smallestMs, largestMs)}; ${roomText(tightest)}.`,
     working: [
       ...reads.map((read): WorkingStep => stepOf(set, read, sampleRate)),
       {
@@ -73,6 +73,11 @@ function statusOf(room: number, margin: number): Status {
 }
 
 const whose = (read: Read) => (read.name === 'voices' ? 'the voices’' : 'the loop’s')
+
+const spanText = (smallestMs: number, largestMs: number) =>
+  smallestMs === largestMs
+    ? `stands at ${quantity(smallestMs, 'ms')}`
+    : `runs from ${quantity(smallestMs, 'ms')} to ${quantity(largestMs, 'ms')}`
 
 function roomText(read: Read): string {
   const reader = `${whose(read)} ${read.interpolation} read`
