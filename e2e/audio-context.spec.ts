@@ -1,5 +1,17 @@
 import { expect, test } from '@playwright/test'
-import { button, contextStates, dropSet, dropTone, expectLevel, type Heard, level, recordAudio, STILL, start } from './audioPage.ts'
+import {
+  button,
+  contextStates,
+  dropSet,
+  dropTone,
+  expectLevel,
+  expectSound,
+  type Heard,
+  level,
+  recordAudio,
+  STILL,
+  start,
+} from './audioPage.ts'
 
 test('a device that refuses the set’s rate is used at its own, and the page says so', async ({ page }) => {
   await recordAudio(page, { onlyRate: 44_100 })
@@ -9,7 +21,7 @@ test('a device that refuses the set’s rate is used at its own, and the page sa
   // The set's times run at the device's rate: 0.5 ms nulls 1 kHz at 44.1 kHz as well.
   await dropTone(page, { fs: 44_100, peak: 0.25 })
   await dropSet(page, { ...STILL, 'mix.dry': 0.5, 'mix.wet': 0.5, 'line.baseMs': 0.5, 'line.interpolation': 'lagrange3' })
-  await expect.poll(() => level(page, 'out'), { timeout: 12_000 }).toBeLessThan(-60)
+  await expect.poll(() => level(page, 'out'), { timeout: PATIENCE_MS }).toBeLessThan(-60)
 })
 
 test('a changed sample rate makes a new context, closes the old one and goes on sounding', async ({ page }) => {
@@ -29,14 +41,14 @@ test('a clock that stands still is said within two seconds, and Restart brings t
   await recordAudio(page)
   await page.goto('./')
   await start(page)
-  await expect.poll(() => level(page, 'out')).toBeGreaterThan(-40)
+  await expectSound(page, 'out')
   await page.evaluate(() => (window as unknown as { heard: Heard }).heard.contexts[0]?.suspend())
   const notice = page.getByRole('alert').filter({ hasText: 'the audio clock stands still' })
   await expect(notice).toBeVisible({ timeout: 3000 })
   await notice.getByRole('button', { name: 'Restart' }).click()
   await expect(notice).toBeHidden()
   await expect.poll(() => contextStates(page)).toEqual(['closed', 'running'])
-  await expect.poll(() => level(page, 'out')).toBeGreaterThan(-40)
+  await expectSound(page, 'out')
 })
 
 test('a processor that fails is said, and Restart brings the sound back', async ({ page }) => {
@@ -47,7 +59,7 @@ test('a processor that fails is said, and Restart brings the sound back', async 
   const notice = page.getByRole('alert').filter({ hasText: 'the audio part of the page failed' })
   await notice.getByRole('button', { name: 'Restart' }).click()
   await expect(notice).toBeHidden()
-  await expect.poll(() => level(page, 'out')).toBeGreaterThan(-40)
+  await expectSound(page, 'out')
 })
 
 test('page and processor of different builds refuse each other', async ({ page }) => {

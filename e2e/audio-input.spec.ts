@@ -1,5 +1,5 @@
 import { expect, test } from '@playwright/test'
-import { button, dropSet, expectLevel, type Heard, level, recordAudio, STILL, source, start } from './audioPage.ts'
+import { button, dropSet, expectLevel, expectSound, type Heard, level, recordAudio, STILL, source, start } from './audioPage.ts'
 
 test('the microphone path: voice processing off, silent until headphones are confirmed, tracks stopped with the source', async ({
   page,
@@ -20,7 +20,7 @@ test('the microphone path: voice processing off, silent until headphones are con
 
   await panel.getByRole('button', { name: 'I wear headphones' }).click()
   // The fake device beeps once a second.
-  await expect.poll(() => level(page, 'in'), { timeout: 8000 }).toBeGreaterThan(-40)
+  await expectSound(page, 'in')
   await expect.poll(async () => Math.abs((await level(page, 'in')) - (await level(page, 'out')))).toBeLessThan(1)
 
   await panel.getByRole('radio', { name: 'Held chord' }).check()
@@ -39,7 +39,7 @@ test('an input that goes away is said and falls silent', async ({ page }) => {
   const panel = page.getByRole('dialog', { name: 'Source' })
   await panel.getByRole('button', { name: 'Live input…' }).click()
   await panel.getByRole('button', { name: 'I wear headphones' }).click()
-  await expect.poll(() => level(page, 'in'), { timeout: 8000 }).toBeGreaterThan(-40)
+  await expectSound(page, 'in')
   // What the browser does when a device is unplugged.
   await page.evaluate(() => {
     for (const track of (window as unknown as { heard: Heard }).heard.streams[0]?.getTracks() ?? []) track.dispatchEvent(new Event('ended'))

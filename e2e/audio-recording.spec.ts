@@ -22,7 +22,7 @@ test('a comb’s notch and peak are where the textbook puts them: 1 kHz is nulle
   // FACTS 1: notches of y = x + x[n − M] at (2k+1)/(2τ), peaks at k/τ; both gains ½, so 0 dB at the peak.
   const comb = { ...STILL, 'mix.dry': 0.5, 'mix.wet': 0.5 }
   await dropSet(page, { ...comb, 'line.baseMs': 0.5 })
-  await expect.poll(() => level(page, 'out'), { timeout: 12_000 }).toBeLessThan(-90)
+  await expect.poll(() => level(page, 'out'), { timeout: PATIENCE_MS }).toBeLessThan(-90)
   await dropSet(page, { ...comb, 'line.baseMs': 1 })
   await expectLevel(page, 'out', -12.04)
 })
@@ -63,7 +63,7 @@ test('a WAV at another rate says that it was resampled, and sounds at its own pi
   await start(page)
   // Played at the wrong rate, 1 kHz would be 1088 Hz and miss the notch.
   await dropSet(page, { ...STILL, 'mix.dry': 0.5, 'mix.wet': 0.5, 'line.baseMs': 0.5 })
-  await expect.poll(() => level(page, 'out'), { timeout: 12_000 }).toBeLessThan(-70)
+  await expect.poll(() => level(page, 'out'), { timeout: PATIENCE_MS }).toBeLessThan(-70)
 })
 
 test('files that cannot be played are refused with a reason, and what was open stays', async ({ page }) => {

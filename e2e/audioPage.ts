@@ -61,10 +61,21 @@ export async function level(page: Page, side: 'in' | 'out'): Promise<number> {
   return text?.includes('∞') ? Number.NEGATIVE_INFINITY : Number((text ?? 'NaN').replace('−', '-').replace('+', ''))
 }
 
+/** Sound is real time: what waits for it waits this long on a busy machine. */
+export const PATIENCE_MS = 15_000
+
+/** Waits until the effect is fed or sounds. */
+export async function expectSound(page: Page, side: 'in' | 'out'): Promise<void> {
+  await expect.poll(() => level(page, side), { timeout: PATIENCE_MS, message: `${side} sounds` }).toBeGreaterThan(-40)
+}
+
+/** Silence is as far from silence as nothing is: −∞ − −∞ is no number. */
+const isWithin = (value: number, wanted: number, tolerance: number) => value === wanted || Math.abs(value - wanted) <= tolerance
+
 /** Waits until a meter's number stands within `tolerance` dB of `db`. The meters hold peaks for 1.5 s and then fall. */
 export async function expectLevel(page: Page, side: 'in' | 'out', db: number, tolerance = 0.15): Promise<void> {
   await expect
-    .poll(async () => Math.abs((await level(page, side)) - db) <= tolerance, { timeout: 12_000, message: `${side} at ${db} dBFS` })
+    .poll(async () => isWithin(await level(page, side), db, tolerance), { timeout: PATIENCE_MS, message: `${side} at ${db} dBFS` })
     .toBe(true)
 }
 

@@ -1,5 +1,6 @@
 // Choosing what is heard: built-in phrases, the user's recording, live input; what goes with each stands beneath.
 import { Popover } from '@base-ui/react/popover'
+import { useState } from 'react'
 import { PHRASES } from '../../../src/material/phrases.ts'
 import { chooseAudioFile, chooseSource } from '../../audio/audition.ts'
 import { ensureMaterial, TONE_ID } from '../../audio/material.ts'
@@ -50,18 +51,19 @@ export function SourcePanel({ children }: { readonly children?: React.ReactNode 
 
 function Phrases() {
   const chosen = useSession((s) => (s.source.kind === 'phrase' ? s.source.id : null))
+  // Shown at once; the sound follows when it has been made.
+  const [wanted, setWanted] = useState<string | null>(null)
+  async function choose(id: string) {
+    setWanted(id)
+    await chooseSource({ kind: 'phrase', id })
+    setWanted((now) => (now === id ? null : now))
+  }
   return (
     <fieldset className="cw-choices">
       <legend className="cw-quiet">Built-in phrases</legend>
       {PHRASES.map(({ id, label, about }) => (
         <label key={id} className="cw-choice" title={about}>
-          <input
-            type="radio"
-            name="cw-phrase"
-            value={id}
-            checked={chosen === id}
-            onChange={() => void chooseSource({ kind: 'phrase', id })}
-          />
+          <input type="radio" name="cw-phrase" value={id} checked={(wanted ?? chosen) === id} onChange={() => void choose(id)} />
           {label}
         </label>
       ))}
