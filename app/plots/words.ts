@@ -45,3 +45,9 @@ export function duration(seconds: number): string {
   if (seconds < 0.1) return `${decimal(seconds * 1000, seconds < 0.01 ? 1 : 0)} ms`
   return `${decimal(seconds, seconds < 10 ? 2 : 1)} s`
 }
+
+/** A pole's radius with two digits of its distance from 1, which is what counts: "0.9981", "0.999983". */
+export function radius(value: number): string {
+  const digits = value === 1 ? 3 : Math.max(3, Math.min(7, 1 - Math.floor(Math.log10(Math.abs(1 - value)))))
+  return decimal(value, digits)
+}

@@ -2,15 +2,9 @@
 import type { LoopReach, LoopTrace } from '../../workers/analysisJobs/loop.ts'
 import { type Columns, columnPoints, partOf } from '../columns.ts'
 import type { PlotNumbers, PlotTable } from '../plotTypes.ts'
-import { decibel, decimal, duration, hertz, noteWords } from '../words.ts'
+import { decibel, decimal, duration, hertz, noteWords, radius } from '../words.ts'
 
 export const NO_LOOP = 'No feedback: nothing comes back into the line,\nso nothing can ring or run away.'
-
-/** A radius with two digits of its distance from 1, which is what counts. */
-export function radiusWords(radius: number): string {
-  const digits = radius === 1 ? 3 : Math.max(3, Math.min(7, 1 - Math.floor(Math.log10(Math.abs(1 - radius)))))
-  return decimal(radius, digits)
-}
 
 export const ringWords = (seconds: number | null): string => (seconds === null ? 'does not die away' : `rings ${duration(seconds)}`)
 
@@ -24,7 +18,7 @@ export function marginWords({ high }: LoopReach): string {
 export function loopRestWords({ largest }: LoopTrace, reach: LoopReach | null): string {
   if (largest === null) return 'no feedback'
   const margin = reach && reach.high.length > 0 ? ` · ${marginWords(reach)}` : ''
-  return `largest pole ${radiusWords(largest.radius)} · ${ringWords(largest.ringSeconds)}${margin}`
+  return `largest pole ${radius(largest.radius)} · ${ringWords(largest.ringSeconds)}${margin}`
 }
 
 export function loopSummary(trace: LoopTrace, reach: LoopReach | null): string {
@@ -42,10 +36,10 @@ export function loopTable(trace: LoopTrace, reach: LoopReach | null): PlotTable 
   return {
     caption: trace.largest === null ? 'No feedback: no loop gain' : `Poles of the loop at sweep position ${decimal(trace.position, 2)}`,
     head: ['Frequency', 'Note', 'Radius', '60 dB decay', 'Loop gain', 'Least over the sweep', 'Most over the sweep'],
-    rows: trace.poles.map(({ frequencyHz, radius, ringSeconds, db }) => [
+    rows: trace.poles.map(({ frequencyHz, radius: size, ringSeconds, db }) => [
       `${hertz(frequencyHz)} Hz`,
       noteWords(Math.max(1, frequencyHz)),
-      radiusWords(radius),
+      radius(size),
       ringSeconds === null ? 'none' : duration(ringSeconds),
       decibel(db),
       ...between(reach, columnOf(trace.columns, frequencyHz)),

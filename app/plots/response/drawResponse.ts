@@ -46,9 +46,10 @@ export function drawResponse(surface: Surface, trace: Trace): void {
   drawMarks(surface, trace.columns, trace.marks)
 }
 
-function cornerWords({ differs, smallSignal }: Trace): string {
+function cornerWords({ differs, smallSignal, unstable }: Trace): string {
   const parts = ['shaded: everywhere the sweep reaches']
   if (differs) parts.unshift('dashed: second channel')
+  if (unstable) parts.unshift('the loop builds up here')
   if (smallSignal) parts.unshift('for small signals')
   return parts.join(' · ')
 }

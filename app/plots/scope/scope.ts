@@ -33,7 +33,7 @@ export function mountScope({ element, reading }: PlotPlace): MountedPlot {
   const rate = () => useSession.getState().contextRate ?? currentSet().sampleRate
   const spanMs = () => (SHOWN / rate()) * 1000
   const plot = createPlot(element, {
-    scales: { x: { time: false, range: () => [0, spanMs()] }, level: { auto: false, range: () => [-range, range] } },
+    scales: { x: { time: false, range: () => [0, spanMs()] }, level: { range: () => [-range, range] } },
     axes: [
       axis({
         scale: 'x',

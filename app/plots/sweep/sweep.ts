@@ -46,8 +46,8 @@ export function mountSweep({ element, reading }: PlotPlace): MountedPlot {
   const plot = createPlot(element, {
     scales: {
       x: { time: false, range: [0, 1] },
-      delay: { auto: false, range: () => delayAxis(curves) },
-      cents: { auto: false, range: centsAxis },
+      delay: { range: () => delayAxis(curves) },
+      cents: { range: centsAxis },
     },
     axes: [
       axis({

@@ -2,6 +2,7 @@
 // largest level inside each column (every notch and peak counted, so nothing aliases), marks, tooth spacing.
 import { type Extreme, frozenExtremes } from '../../../src/analysis/extremes.ts'
 import { type Frozen, freeze } from '../../../src/analysis/frozen.ts'
+import { largestPole } from '../../../src/analysis/poles.ts'
 import { transferAt, transferOf } from '../../../src/analysis/transfer.ts'
 import type { ParameterSet } from '../../../src/set/types.ts'
 import { type Columns, columnPoints, partOf, sameColumns } from '../../plots/columns.ts'
@@ -46,6 +47,8 @@ export interface Trace {
   readonly bands: readonly DenseBand[]
   /** Shapers count by their slope at 0. */
   readonly smallSignal: boolean
+  /** Held here the loop builds up: no steady sound has these levels. */
+  readonly unstable: boolean
 }
 
 let points = { columns: { lowHz: 0, highHz: 0, count: 0 } as Columns, hz: new Float64Array() as Float64Array }
@@ -79,7 +82,14 @@ export function traceJob({ set, position, columns }: TraceRequest): Trace {
       high: outline(high.subarray(dense), Math.max),
     })),
     smallSignal: frozen.smallSignal,
+    unstable: buildsUp(frozen),
   }
+}
+
+/** No read and no filter of the loop gives back more than it gets: below 1, the gain alone decides. */
+function buildsUp(frozen: Frozen): boolean {
+  const { gain, slope } = frozen.loop
+  return Math.abs(gain * slope.slope) >= 1 && (largestPole(frozen)?.radius ?? 0) >= 1
 }
 
 /** dB at the columns' points, every channel. */

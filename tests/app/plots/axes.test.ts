@@ -48,6 +48,10 @@ describe('the level axis', () => {
     expect(levelRange(-400, 3)).toEqual({ minDb: -30, maxDb: 12 })
     expect(levelRange(-1, 1)).toEqual({ minDb: -18, maxDb: 6 })
   })
+
+  it('cuts off what a loop at its limit makes of its peaks, so that 0 dB stays in sight', () => {
+    expect(levelRange(-6, 400)).toEqual({ minDb: -12, maxDb: 36 })
+  })
 })
 
 describe('a slider’s keys', () => {

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { cents, decibel, decimal, duration, hertz, milliseconds, noteWords } from '../../../app/plots/words.ts'
+import { cents, decibel, decimal, duration, hertz, milliseconds, noteWords, radius } from '../../../app/plots/words.ts'
 
 describe('numbers on plots', () => {
   it.each([
@@ -31,5 +31,15 @@ describe('numbers on plots', () => {
     expect([milliseconds(5.2149), milliseconds(0.0521), milliseconds(140.24)]).toEqual(['5.21 ms', '0.052 ms', '140.2 ms'])
     expect([duration(0.0083), duration(0.42), duration(12.34)]).toEqual(['8.3 ms', '0.42 s', '12.3 s'])
     expect([cents(4.52), cents(-171.4)]).toEqual(['+4.5 cents', '\u2212171 cents'])
+  })
+
+  it('a pole radius shows how far it is from 1', () => {
+    expect([radius(0.9980895), radius(0.99998345), radius(0.5), radius(1), radius(1.000412)]).toEqual([
+      '0.9981',
+      '0.999983',
+      '0.500',
+      '1.000',
+      '1.00041',
+    ])
   })
 })

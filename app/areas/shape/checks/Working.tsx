@@ -14,7 +14,7 @@ export function Working({ id, label, steps }: WorkingProps) {
         {steps.map(({ formula, numbers, result, source }) => (
           <li key={`${formula} ${numbers}`}>
             <p className="cw-working-formula">{formula}</p>
-            {numbers === '' ? null : <p>= {numbers}</p>}
+            {numbers === '' ? null : <p>{numbers}</p>}
             <p className="cw-working-result">= {result}</p>
             {source === '' ? null : <p className="cw-working-source">{source}</p>}
           </li>

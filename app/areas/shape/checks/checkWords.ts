@@ -1,20 +1,32 @@
 // A check's figure and limit as they stand in its row.
 import type { Check, CheckValue } from '../../../../src/checks/types.ts'
 import { formatQuantity } from '../../../../src/set/units.ts'
+import { duration, hertz, milliseconds, radius } from '../../../plots/words.ts'
 
-/** "4.2 dB", "proven", "1 – 6 ms"; empty where the value is a list to be read in the working. */
-export function checkFigure({ value, unit }: Pick<Check, 'value' | 'unit'>): string {
-  if (value === null) return 'none'
-  if (typeof value === 'number') return withUnit(value, unit)
-  if (typeof value === 'string') return value
-  if (typeof value === 'boolean') return value ? 'yes' : 'no'
-  return spanOf(value, unit)
+type Group = { readonly [key: string]: CheckValue }
+
+/** Figures that need more than number and unit: by check id. */
+const FIGURES: Readonly<Record<string, (value: CheckValue) => string | null>> = {
+  'loop.poles': (value) => (typeof value === 'number' ? radius(value) : null),
+  'loop.ring': (value) => (typeof value === 'number' ? duration(value) : null),
+  'response.extremes': (value) => span(part(value, 'firstNotchHz'), hertz, 'Hz'),
+  'sweep.range': (value) => span([part(value, 'smallestMs'), part(value, 'largestMs')], (ms) => milliseconds(ms).replace(' ms', ''), 'ms'),
 }
 
-/** "limit 3 s"; empty where nothing is judged. */
+/** "4.2 dB", "proven", "1.00 – 6.00 ms"; "none" where there is no figure. */
+export function checkFigure({ id, value, unit }: Pick<Check, 'id' | 'value' | 'unit'>): string {
+  const own = FIGURES[id]?.(value)
+  if (own) return own
+  if (typeof value === 'number') return withUnit(value, unit)
+  if (typeof value === 'string') return value
+  return 'none'
+}
+
+/** "limit 3 s"; "at least computed" where words are ranked; empty where nothing is judged. */
 export function checkLimit({ limit, unit }: Pick<Check, 'limit' | 'unit'>): string {
   if (limit === null) return ''
-  return `limit ${typeof limit === 'number' ? withUnit(limit, unit) : limit}`
+  if (typeof limit === 'string') return `at least ${limit}`
+  return `limit ${unit === 'ms' ? milliseconds(limit) : withUnit(limit, unit)}`
 }
 
 function withUnit(value: number, unit: string): string {
@@ -22,10 +34,12 @@ function withUnit(value: number, unit: string): string {
   return unit === '' ? number : `${number} ${unit}`
 }
 
-/** A value with a smallest and a largest figure reads as their span. */
-function spanOf(value: Exclude<CheckValue, number | string | boolean | null>, unit: string): string {
-  const numbers = Object.values(value).filter((part) => typeof part === 'number')
-  if (Array.isArray(value) || numbers.length !== 2) return ''
-  const [low, high] = numbers as [number, number]
-  return `${formatQuantity(low, unit).number} – ${withUnit(high, unit)}`
+const part = (value: CheckValue, key: string): CheckValue =>
+  value !== null && typeof value === 'object' && !Array.isArray(value) ? ((value as Group)[key] ?? null) : null
+
+/** Two figures as their span, one where they read the same. */
+function span(value: CheckValue, write: (figure: number) => string, unit: string): string | null {
+  if (!Array.isArray(value)) return null
+  const ends = value.filter((end) => typeof end === 'number').map(write)
+  return ends.length === 0 ? null : `${[...new Set(ends)].join(' – ')} ${unit}`
 }

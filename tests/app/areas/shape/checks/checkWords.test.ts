@@ -1,0 +1,41 @@
+import { describe, expect, it } from 'vitest'
+import { checkFigure, checkLimit } from '../../../../../app/areas/shape/checks/checkWords.ts'
+import { verdictWords } from '../../../../../app/areas/shape/checks/verdictWords.ts'
+import type { CheckId } from '../../../../../src/checks/limits.ts'
+import type { CheckValue } from '../../../../../src/checks/types.ts'
+
+const figure = (id: CheckId, value: CheckValue, unit = '') => checkFigure({ id, value, unit })
+
+describe('the figure of a check', () => {
+  it.each([
+    [figure('loop.stability', 'proven'), 'proven'],
+    [figure('loop.margin', 1.3606777, 'dB'), '1.36 dB'],
+    [figure('loop.margin', null, 'dB'), 'none'],
+    [figure('loop.poles', 0.99772307), '0.9977'],
+    [figure('loop.ring', 0.0631, 's'), '63 ms'],
+    [figure('sweep.detune', 171.4, 'cents'), '171.4 cents'],
+    [figure('sweep.range', { smallestMs: 1, largestMs: 6, roomSamples: 47 }, 'ms'), '1.00 – 6.00 ms'],
+    [figure('sweep.range', { smallestMs: 5, largestMs: 5, roomSamples: 47 }, 'ms'), '5.00 ms'],
+    [figure('response.extremes', { firstNotchHz: [96.8, 558.6] }, 'Hz'), '96.8 – 559 Hz'],
+    [figure('response.extremes', { firstNotchHz: [null, null] }, 'Hz'), 'none'],
+  ])('reads %s', (text, wanted) => {
+    expect(text).toBe(wanted)
+  })
+})
+
+describe('the limit of a check', () => {
+  it('is a figure, the weakest word that holds, or nothing', () => {
+    expect(checkLimit({ limit: 3, unit: 's' })).toBe('limit 3 s')
+    expect(checkLimit({ limit: 0.0208333, unit: 'ms' })).toBe('limit 0.021 ms')
+    expect(checkLimit({ limit: 'computed', unit: '' })).toBe('at least computed')
+    expect(checkLimit({ limit: null, unit: '' })).toBe('')
+  })
+})
+
+describe('the heading of the checks', () => {
+  it('counts what fails, is near, is noted and holds', () => {
+    expect(verdictWords({ verdict: 'fails', fails: 1, near: 1, notes: 0, holds: 6 })).toBe('Checks · 1 fails, 1 near, 6 hold')
+    expect(verdictWords({ verdict: 'fails', fails: 2, near: 0, notes: 1, holds: 1 })).toBe('Checks · 2 fail, 1 note, 1 holds')
+    expect(verdictWords({ verdict: null, fails: 0, near: 0, notes: 0, holds: 0 })).toBe('Checks · being computed')
+  })
+})
