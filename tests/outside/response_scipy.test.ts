@@ -61,11 +61,12 @@ describe.each(made.cases.map((c, i) => [i, c] as const))('comb %i', (_, { case: 
     })
   })
 
-  it('has the group delay of group_delay within 1e-6 samples', () => {
-    hz.forEach((at, i) => {
-      // Next to a null scipy gives up and says 0. At 1 Hz its polynomials lose ten digits to two low cuts.
-      if (Math.hypot(re[i]!, im[i]!) < 1e-6 || (at === 1 && comb.lowCut !== null)) return
-      expect(Math.abs(response.groupDelaySamples[i]! - groupDelay[i]!)).toBeLessThan(1e-6 * Math.max(1, Math.abs(groupDelay[i]!)))
+  // scipy multiplies numerator and denominator out, which costs it five digits with two low cuts (numpy's long double agrees with ours there).
+  it('has the group delay of group_delay within 3e-5 of it', () => {
+    hz.forEach((_, i) => {
+      // Next to a null scipy gives up and says 0.
+      if (Math.hypot(re[i]!, im[i]!) < 1e-6) return
+      expect(Math.abs(response.groupDelaySamples[i]! - groupDelay[i]!)).toBeLessThan(3e-5 * Math.max(1, Math.abs(groupDelay[i]!)))
     })
   })
 })
