@@ -1,5 +1,6 @@
 import { readdirSync, readFileSync } from 'node:fs'
 import { describe, expect, it } from 'vitest'
+import { runChecks, verdictOf } from '../../src/checks/registry.ts'
 import { DEMO_SETS } from '../../src/set/demoSets.ts'
 import { startingSet } from '../../src/set/intents.ts'
 import { knobDisagreements, steppedPosition, turnKnob } from '../../src/set/panel.ts'
@@ -52,6 +53,14 @@ describe('demo sets', () => {
     const all = corners(demo(file))
     expect(all.length).toBeGreaterThanOrEqual(4)
     for (const set of all) expect(setProblems(set)).toEqual([])
+  })
+
+  it.each(DEMO_SETS)('$name: every check holds where the knobs stand, and none fails at any corner of the panel', ({ file }) => {
+    expect(verdictOf(runChecks(demo(file)))).toBe('holds')
+    for (const set of corners(demo(file))) {
+      const failing = runChecks(set).filter((check) => check.status === 'fails')
+      expect(failing.map((check) => `${check.id} at ${set.panel.map((knob) => knob.position).join(' ')}`)).toEqual([])
+    }
   })
 
   it('cover the two-, four- and six-knob units and every intent they show', () => {
