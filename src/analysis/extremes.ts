@@ -44,11 +44,12 @@ export function frozenExtremes(frozen: Frozen, options: { readonly maxHz?: numbe
   const maxHz = options.maxHz ?? nyquist
   if (!(maxHz > 0 && maxHz <= nyquist)) throw new RangeError(`maxHz must be in (0, ${nyquist}] Hz, got ${maxHz}`)
   const transfer = transferOf(frozen)
-  const grid = sampleGrid(transfer, (2 * Math.PI * maxHz) / frozen.sampleRate, lowestCorner(frozen))
   const tolerance = (2 * Math.PI * (options.withinHz ?? ROOT_HZ)) / frozen.sampleRate
+  // What stands at maxHz itself turns within the tolerance of it.
+  const grid = sampleGrid(transfer, Math.min(Math.PI, (2 * Math.PI * maxHz) / frozen.sampleRate + tolerance), lowestCorner(frozen))
   return frozen.channels.flatMap((_, channel) => {
     const search: Search = { transfer, channel, tolerance, out: new Float64Array(4 * transfer.channels), found: [] }
-    return channelExtremes(search, grid, maxHz === nyquist)
+    return channelExtremes(search, grid, maxHz)
   })
 }
 
@@ -100,7 +101,7 @@ function sampleGrid(t: Transfer, maxOmega: number, corner: number): Grid {
   return grid
 }
 
-function channelExtremes(search: Search, grid: Grid, toNyquist: boolean): Extreme[] {
+function channelExtremes(search: Search, grid: Grid, maxHz: number): Extreme[] {
   const { channel, transfer } = search
   const { omegas } = grid
   const powers = grid.powers[channel] as Float64Array
@@ -121,11 +122,11 @@ function channelExtremes(search: Search, grid: Grid, toNyquist: boolean): Extrem
   for (const power of powers) largest = Math.max(largest, power)
   for (const { power } of search.found) largest = Math.max(largest, power)
   const found = significant(search.found, largest)
-  if (toNyquist) found.push(...atNyquist(search, a, found.at(-1), largest))
+  if (maxHz === transfer.sampleRate / 2) found.push(...atNyquist(search, a, found.at(-1), largest))
   return found.map(({ kind, omega, power }) => ({
     channel,
     kind,
-    frequencyHz: (omega * transfer.sampleRate) / (2 * Math.PI),
+    frequencyHz: Math.min(maxHz, (omega * transfer.sampleRate) / (2 * Math.PI)),
     db: decibels(power),
   }))
 }
@@ -151,7 +152,7 @@ function significant(found: readonly FoundExtreme[], largest: number): FoundExtr
 function atNyquist(search: Search, last: PowerSample, before: FoundExtreme | undefined, largest: number): FoundExtreme[] {
   const { power } = samplePower(search, Math.PI)
   const kind: ExtremeKind = last.slope > 0 ? 'peak' : 'notch'
-  const isNull = kind === 'notch' && power <= 1e-20 * largest
+  const isNull = kind === 'notch' && power < 1e-20 * largest
   if (before ? before.kind === kind : !isNull) return []
   const here = { kind, omega: Math.PI, power }
   return before && significant([before, here], largest).length === 0 ? [] : [here]
