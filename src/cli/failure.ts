@@ -36,7 +36,7 @@ export function problemFaults(file: string, problems: readonly Problem[]): reado
   return more > 0 ? [...shown, { error: `${file}: ${more} more problems`, hint: 'mend the first ones and run it again' }] : shown
 }
 
-/** Prints what went wrong. Anything that is no CommandFailure is a mistake of ours and is said to be one. */
+/** Prints what went wrong. Anything that is no CommandFailure is a lack of memory or a mistake of ours, and is said to be one. */
 export function printFailure(error: unknown): void {
   const faults = error instanceof CommandFailure ? error.faults : [ownMistake(error)]
   process.stderr.write(faults.map((fault) => `error: ${oneLine(fault.error)}\nhint: ${oneLine(fault.hint)}\n`).join(''))
@@ -44,6 +44,8 @@ export function printFailure(error: unknown): void {
 
 function ownMistake(error: unknown): Fault {
   const message = error instanceof Error ? error.message : String(error)
+  if (/allocation failed|Invalid typed array length/.test(message))
+    return { error: 'there is not enough memory for this', hint: 'cut the sound, or its tail, shorter' }
   return { error: `this should not happen: ${message}`, hint: 'please report it with the command as typed and the files it read' }
 }
 

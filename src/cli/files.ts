@@ -132,7 +132,8 @@ const REASONS: Readonly<Record<string, string>> = {
   ERR_INVALID_ARG_VALUE: 'its path holds a zero byte',
 }
 
-function reasonOf(error: unknown): string {
+/** A system's error in words. */
+export function reasonOf(error: unknown): string {
   const { code = 'unknown reason' } = error as { code?: string }
   return REASONS[code] ?? code
 }

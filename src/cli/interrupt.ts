@@ -2,8 +2,8 @@
 
 const SIGNALS = ['SIGINT', 'SIGTERM', 'SIGHUP'] as const
 
-/** Runs `work` with a signal that a user's interruption aborts; work must look at it wherever it may take long. */
-export async function interruptible(work: (signal: AbortSignal) => Promise<void>): Promise<void> {
+/** Runs `work` with a signal that a user's interruption aborts; work must look at it wherever it may take long. Does not return when interrupted. */
+export async function interruptible<T>(work: (signal: AbortSignal) => Promise<T>): Promise<T> {
   const controller = new AbortController()
   let received: NodeJS.Signals | undefined
   const listener = (name: NodeJS.Signals) => {
@@ -12,13 +12,11 @@ export async function interruptible(work: (signal: AbortSignal) => Promise<void>
   }
   for (const name of SIGNALS) process.on(name, listener)
   try {
-    await work(controller.signal)
-  } catch (error) {
-    if (!received) throw error
+    return await work(controller.signal)
   } finally {
     for (const name of SIGNALS) process.off(name, listener)
+    if (received) await endBy(received)
   }
-  if (received) await endBy(received)
 }
 
 async function endBy(name: NodeJS.Signals): Promise<never> {

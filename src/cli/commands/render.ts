@@ -4,7 +4,7 @@ import { inputChannels } from '../../dsp/engine.ts'
 import type { WavAudio } from '../../media/wav.ts'
 import { writeWav } from '../../media/wav.ts'
 import type { ParameterSet } from '../../set/types.ts'
-import { MAX_RESAMPLE_RATE, MIN_RESAMPLE_RATE, resampledLength, resampleTo } from '../../signal/resample.ts'
+import { MAX_RESAMPLE_RATE, MAX_RESAMPLED_FRAMES, MIN_RESAMPLE_RATE, resampledLength, resampleTo } from '../../signal/resample.ts'
 import { readChoice, readNumberOption } from '../arguments.ts'
 import { fail } from '../failure.ts'
 import { checkOutput, readSetFile, readWavFile, writeWhole } from '../files.ts'
@@ -33,9 +33,7 @@ export function addRender(program: Command): void {
     .option('--tail <seconds>', `go on so long after the input, 0 to ${MAX_TAIL_S} s, or "ring": until the loop has died away`, '0')
     .option('--json', 'print what was written as JSON')
     .addHelpText('after', RENDER_NOTES)
-    .action((set: string, input: string, output: string, options: RenderOptions) =>
-      interruptible((signal) => render({ set, input, output }, options, signal)),
-    )
+    .action((set: string, input: string, output: string, options: RenderOptions) => render({ set, input, output }, options))
 }
 
 const RENDER_NOTES = `
@@ -49,7 +47,7 @@ interface Files {
   readonly output: string
 }
 
-async function render(files: Files, options: RenderOptions, signal: AbortSignal): Promise<void> {
+async function render(files: Files, options: RenderOptions): Promise<void> {
   readFormat(options.format)
   const typedTail = options.tail === 'ring' ? null : readNumberOption(options.tail, { name: '--tail', unit: 's', min: 0, max: MAX_TAIL_S })
   checkOutput(files.output, { inputs: [files.set, files.input] })
@@ -57,10 +55,13 @@ async function render(files: Files, options: RenderOptions, signal: AbortSignal)
   const wav = readWavFile(files.input)
   const input = atSetRate(wav, set, files.input)
   const tail = Math.round((typedTail ?? ringSeconds(set)) * set.sampleRate)
-  const output = await play(set, input, tail, { files, signal })
   const rate = Math.round(set.sampleRate)
   if (rate !== set.sampleRate) talk(`${files.output} says ${rate} Hz, as WAV knows whole rates only; the set runs at ${set.sampleRate} Hz`)
-  await writeWhole(files.output, writeWav(output, rate, 'float32'), signal)
+  const output = await interruptible(async (signal) => {
+    const channels = await play(set, input, tail, { files, signal })
+    await writeWhole(files.output, writeWav(channels, rate, 'float32'), signal)
+    return channels
+  })
   report(files, set, { wav, output, tail, json: options.json ?? false })
 }
 
@@ -88,7 +89,13 @@ function atSetRate(wav: WavAudio, set: ParameterSet, name: string): readonly Flo
       `${name} is at ${wav.sampleRate} Hz, and ${MIN_RESAMPLE_RATE} to ${MAX_RESAMPLE_RATE} Hz can be resampled`,
       `export it at ${set.sampleRate} Hz`,
     )
-  refuseTooLong(name, resampledLength(wav.totalFrames, wav.sampleRate, set.sampleRate), set)
+  const frames = resampledLength(wav.totalFrames, wav.sampleRate, set.sampleRate)
+  refuseTooLong(name, frames, set)
+  if (frames > MAX_RESAMPLED_FRAMES)
+    fail(
+      `${name} would have ${frames} samples a channel at ${set.sampleRate} Hz, and at most ${MAX_RESAMPLED_FRAMES} are made`,
+      'cut the file shorter',
+    )
   talk(`${name}: resampled from ${wav.sampleRate} Hz to the set's ${set.sampleRate} Hz`)
   return resampleTo(wav.channels, wav.sampleRate, set.sampleRate)
 }
