@@ -39,7 +39,7 @@ export function sweepDetune(set: ParameterSet, sampleRate = set.sampleRate): Swe
   const updateSeconds = set.sweep.updateEvery / sampleRate
   const { rise, fall } = chordsMs(set, updateSeconds)
   const maxSlope = rise / 1000 / updateSeconds
-  const minSlope = -fall / 1000 / updateSeconds
+  const minSlope = 0 - fall / 1000 / updateSeconds
   const motion = maxSlope > 1 + STALL_TOLERANCE ? 'reversed' : maxSlope >= 1 - STALL_TOLERANCE ? 'stalls' : 'plays'
   const upCents = centsOfSlope(minSlope) ?? 0
   const downCents = motion === 'plays' ? centsOfSlope(maxSlope) : null
@@ -74,7 +74,10 @@ function chordsMs(set: ParameterSet, seconds: number): { rise: number; fall: num
     const hair = Math.min(1e-12, (to - from) / 4)
     for (const [low, high] of [[from, to] as const, [from + hair, to - hair] as const]) {
       rise = Math.max(rise, largestBetween(chord, low, high))
-      fall = Math.max(fall, largestBetween((phi) => -chord(phi), low, high))
+      fall = Math.max(
+        fall,
+        largestBetween((phi) => -chord(phi), low, high),
+      )
     }
   })
   return { rise, fall }
