@@ -1,5 +1,6 @@
 // What the specs of plots and checks share: panes, their readings and canvases, numbers in readings.
-import type { Locator, Page } from '@playwright/test'
+import { expect, type Locator, type Page } from '@playwright/test'
+import { dropSet } from './audioPage.ts'
 
 /** A plot's pane: 0 the upper, 1 the lower. */
 export const pane = (page: Page, index: 0 | 1): Locator => page.getByRole('region', { name: 'Plots' }).locator('.cw-plot-pane').nth(index)
@@ -28,3 +29,13 @@ export function numberIn(text: string): number {
 export async function show(of: Locator, name: string): Promise<void> {
   await of.getByRole('tab', { name }).click()
 }
+
+/** Drops a set on the page once the page listens, and waits until it is the one shown. */
+export async function openSet(page: Page, fields: Readonly<Record<string, unknown>>): Promise<void> {
+  await expect(page.getByRole('button', { name: 'Play' })).toBeVisible()
+  const name = `Set ${++opened}`
+  await dropSet(page, { ...fields, name })
+  await expect(page.getByRole('heading', { level: 1 })).toContainText(name)
+}
+
+let opened = 0
