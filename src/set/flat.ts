@@ -25,7 +25,7 @@ export function flatIndex(path: string): number {
 }
 
 /** Writes `set` into `out` (made when absent) and returns it. */
-export function flatten(set: ParameterSet, out = new Float64Array(FLAT_LENGTH)): Float64Array {
+export function flatten(set: ParameterSet, out: Float64Array = new Float64Array(FLAT_LENGTH)): Float64Array {
   if (out.length !== FLAT_LENGTH) throw new RangeError(`flat set must have ${FLAT_LENGTH} slots, got ${out.length}`)
   FLAT_PARAMETERS.forEach((p, i) => {
     out[i] = toSlot(p, getAt(set, p.path))

@@ -28,13 +28,18 @@ export function valueProblem(p: Parameter, value: unknown, path = p.path): Probl
   const range = rangeText(p)
   const wanted = p.kind === 'choice' ? `one of ${range}` : range
   const message = value === undefined ? `${path} is missing, and must be ${wanted}` : `${path} must be ${wanted}, got ${valueText(value)}`
-  const hint = choiceHint(p, value)
+  const hint = choiceHint(p, value) ?? quotedHint(p, value)
   return { path, message, value, range, ...(hint && { hint }) }
 }
 
 function choiceHint(p: Parameter, value: unknown): string | undefined {
   if (p.kind !== 'choice' || typeof value !== 'string') return undefined
   return nearestHint(value, p.options.map(optionValue))
+}
+
+function quotedHint(p: Parameter, value: unknown): string | undefined {
+  if (typeof value !== 'string' || p.kind === 'choice' || p.kind === 'text') return undefined
+  return `write it without quotes${p.kind === 'boolean' ? '' : ' and without its unit'}`
 }
 
 const optionValue = (option: { readonly value: string }): string => option.value

@@ -57,7 +57,7 @@ const cases: readonly (readonly [what: string, words: readonly string[], error: 
   ],
   ['an empty set file', ['check', 'empty.set.json'], /the text is empty/, /strict JSON/],
   ['an unknown key', ['check', 'unknown.set.json'], /sweep\.rate is an unknown key/, /did you mean "rateHz"\?/],
-  ['a wrong type', ['response', 'type.set.json'], /sweep\.rateHz must be 0 to 100 Hz, got "1"/, /combwright new --help/],
+  ['a wrong type', ['response', 'type.set.json'], /sweep\.rateHz must be 0 to 100 Hz, got "1"/, /without quotes/],
   ['a value out of range', ['sweep', 'range.set.json'], /loop\.feedback must be -2 to 2, got 3/, /combwright new --help/],
   ['a future version', ['check', 'future.set.json'], /version 7 is newer than this reader, which knows 1/, /later one/],
   [

@@ -86,6 +86,11 @@ describe('judging one value', () => {
     expect(valueProblem(parameter(path), value)).toBeNull()
   })
 
+  it('hints at quotes around what is no text', () => {
+    expect(valueProblem(parameter('sweep.rateHz'), '2 Hz')?.hint).toBe('write it without quotes and without its unit')
+    expect(valueProblem(parameter('mix.invertRight'), 'true')?.hint).toBe('write it without quotes')
+  })
+
   it('hints at the nearest word, and at none when none is near', () => {
     expect(nearestHint('depthMS', ['depthMs', 'depthOctaves'])).toBe('did you mean "depthMs"?')
     expect(nearestHint('rate', ['rateHz', 'range'])).toBe('did you mean "rateHz"?')

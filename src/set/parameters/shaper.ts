@@ -1,5 +1,6 @@
 // The fields every shaper has, wherever in the path it stands.
 import type { Parameter } from './kinds.ts'
+import { options } from './options.ts'
 
 /** Table rows of one shaper. `path` "loop.shaper", `label` "Loop shaper", `cName` prefix "loop_shaper". */
 export function shaperParameters(path: string, label: string, cName: string): readonly Parameter[] {
@@ -12,15 +13,15 @@ export function shaperParameters(path: string, label: string, cName: string): re
       default: null,
       nullable: true,
       help: 'Curve of the shaper; off leaves it out of the path.',
-      options: [
-        { value: 'hardClip', label: 'hard clip' },
-        { value: 'arctan', label: 'arctangent' },
-        { value: 'tanh', label: 'tanh' },
-        { value: 'cubic', label: 'cubic' },
-        { value: 'diode', label: 'diode' },
-        { value: 'deadZone', label: 'dead zone' },
-        { value: 'drawn', label: 'drawn' },
-      ],
+      options: options(
+        ['hardClip', 'hard clip'],
+        ['arctan', 'arctangent'],
+        ['tanh', 'tanh'],
+        ['cubic', 'cubic'],
+        ['diode', 'diode'],
+        ['deadZone', 'dead zone'],
+        ['drawn', 'drawn'],
+      ),
     },
     {
       kind: 'number',
@@ -122,7 +123,7 @@ export function shaperParameters(path: string, label: string, cName: string): re
       label: 'Table reading',
       help: 'How the table is read between its points.',
       cName: `${cName}_table_interpolation`,
-      options: [{ value: 'linear', label: 'linear' }],
+      options: options(['linear', 'linear']),
       default: 'linear',
     },
     {
@@ -131,10 +132,7 @@ export function shaperParameters(path: string, label: string, cName: string): re
       label: 'Anti-aliasing',
       help: 'First-order antiderivative anti-aliasing folds less and delays half a sample.',
       cName: `${cName}_antialias`,
-      options: [
-        { value: 'none', label: 'none' },
-        { value: 'adaa1', label: 'antiderivative' },
-      ],
+      options: options(['none', 'none'], ['adaa1', 'antiderivative']),
       default: 'none',
     },
   ]
