@@ -20,10 +20,11 @@ const CLASS_RATIO = 1.5
 
 /**
  * Envelope of |H| over every position the sweep reaches, dB within ±400, one a channel. frequenciesHz: each in
- * [0, sampleRate/2] (throws RangeError). Every level given is reached; what is given falls short of the true largest by less than 0.5 dB for
- * loops up to |g| = 0.9, and of the true smallest by less than 1 dB down to −20 dB below the largest (tests/analysis/envelope.test.ts measures
- * both against 20,000 positions): a deeper null of several voices is met at one instant of the cycle only. `drift` moves as
- * the sine; at rate 0 it is the response itself.
+ * [0, sampleRate/2] (throws RangeError). Every level given is reached. What is given falls short of the true largest by less than
+ * 0.5 dB for loops up to |g| = 0.9, and of the true smallest by less than 1 dB down to 20 dB below the largest, while a cycle turns a
+ * frequency's phase less than about 250 times; beyond that positions thin out and 2 dB may be lost (tests/analysis/envelope.test.ts
+ * measures all three). A deeper null of several voices is met at one instant of the cycle only. `drift` moves as the sine; at rate 0 the
+ * envelope is the response itself.
  */
 export function sweepEnvelope(
   set: ParameterSet,
