@@ -8,6 +8,7 @@ import {
   expectSound,
   type Heard,
   level,
+  PATIENCE_MS,
   recordAudio,
   STILL,
   start,
@@ -19,7 +20,7 @@ test('a device that refuses the set’s rate is used at its own, and the page sa
   await start(page)
   await expect(page.getByText('Heard at 44.1 kHz, set at 48.')).toBeVisible()
   // The set's times run at the device's rate: 0.5 ms nulls 1 kHz at 44.1 kHz as well.
-  await dropTone(page, { fs: 44_100, peak: 0.25 })
+  await dropTone(page, { fs: 44_100, peak: 0.25, seconds: 30 })
   await dropSet(page, { ...STILL, 'mix.dry': 0.5, 'mix.wet': 0.5, 'line.baseMs': 0.5, 'line.interpolation': 'lagrange3' })
   await expect.poll(() => level(page, 'out'), { timeout: PATIENCE_MS }).toBeLessThan(-60)
 })
@@ -55,6 +56,7 @@ test('a processor that fails is said, and Restart brings the sound back', async 
   await recordAudio(page)
   await page.goto('./')
   await start(page)
+  await expectSound(page, 'out')
   await page.evaluate(() => (window as unknown as { heard: Heard }).heard.nodes.at(-1)?.dispatchEvent(new ErrorEvent('processorerror')))
   const notice = page.getByRole('alert').filter({ hasText: 'the audio part of the page failed' })
   await notice.getByRole('button', { name: 'Restart' }).click()

@@ -1,6 +1,6 @@
 import { expect, test } from '@playwright/test'
 import { writeWav } from '../src/media/wav.ts'
-import { button, drop, dropSet, dropTone, expectLevel, level, STILL, sine, source, start } from './audioPage.ts'
+import { button, drop, dropSet, dropTone, expectLevel, level, PATIENCE_MS, STILL, sine, source, start } from './audioPage.ts'
 
 test('a dropped WAV plays, and a changed set is heard: measured at the effect’s output', async ({ page }) => {
   await page.goto('./')
@@ -17,7 +17,7 @@ test('a dropped WAV plays, and a changed set is heard: measured at the effect’
 
 test('a comb’s notch and peak are where the textbook puts them: 1 kHz is nulled at 0.5 ms and doubled at 1 ms', async ({ page }) => {
   await page.goto('./')
-  await dropTone(page, { peak: 0.25 })
+  await dropTone(page, { peak: 0.25, seconds: 30 })
   await start(page)
   // FACTS 1: notches of y = x + x[n − M] at (2k+1)/(2τ), peaks at k/τ; both gains ½, so 0 dB at the peak.
   const comb = { ...STILL, 'mix.dry': 0.5, 'mix.wet': 0.5 }
@@ -56,7 +56,7 @@ test('the output passing full scale says “over”', async ({ page }) => {
 
 test('a WAV at another rate says that it was resampled, and sounds at its own pitch', async ({ page }) => {
   await page.goto('./')
-  await dropTone(page, { fs: 44_100, hz: 1000, peak: 0.25 })
+  await dropTone(page, { fs: 44_100, hz: 1000, peak: 0.25, seconds: 30 })
   await source(page).click()
   await expect(page.getByText('read as WAV, resampled from 44.1 kHz')).toBeVisible()
   await page.keyboard.press('Escape')
