@@ -64,6 +64,8 @@ function atTheEdge(set: ParameterSet): ParameterSet {
   return withAt(set, 'loop.feedback', Math.max(-2, Math.min(2, (0.999 * set.loop.feedback) / gain)))
 }
 
+const peak = (x: Float64Array, from = 0, to = x.length): number => x.subarray(from, to).reduce((most, v) => Math.max(most, Math.abs(v)), 0)
+
 function playImpulse(set: ParameterSet): Float64Array[] {
   const input = new Float64Array(1)
   input[0] = 1
@@ -91,15 +93,17 @@ describe('random sets and sweeps', () => {
       const label = JSON.stringify({ gamma, proof: found.proof, loop: set.loop, sweep: set.sweep })
       const total = lines.reduce((sum, line) => sum + energy(line), 0)
       expect(Number.isFinite(total), label).toBe(true)
-      if (found.certified?.name === 'γ∞') {
-        for (const line of lines)
-          expect(
-            line.reduce((peak, x) => Math.max(peak, Math.abs(x)), 0),
-            label,
-          ).toBeLessThanOrEqual((1 + 1e-9) / (1 - gamma))
-      } else expect(Math.sqrt(total), label).toBeLessThanOrEqual((input * (1 + 1e-9)) / (1 - gamma))
-      // The last third against the first: a loop that grows does so every time round.
       const third = Math.floor((lines[0] as Float64Array).length / 3)
+      if (found.certified?.name === 'γ∞') {
+        // Peaks are what is proven: a read that moves away repeats samples, so energy may rise for a while before it dies away.
+        for (const line of lines) {
+          expect(peak(line), label).toBeLessThanOrEqual((1 + 1e-9) / (1 - gamma))
+          expect(peak(line, 2 * third), label).toBeLessThanOrEqual(peak(line, 1, third) * (1 + 1e-9))
+        }
+        continue
+      }
+      expect(Math.sqrt(total), label).toBeLessThanOrEqual((input * (1 + 1e-9)) / (1 - gamma))
+      // The last third against the first: a loop that grows does so every time round.
       for (const line of lines) expect(energy(line, 2 * third), label).toBeLessThanOrEqual(energy(line, 0, third) * (1 + 1e-9))
     }
   })
@@ -107,8 +111,7 @@ describe('random sets and sweeps', () => {
   it('bounded, the line stays below the level stated, for an impulse of full scale', () => {
     for (const { set, found } of cases) {
       if (found.level === null) continue
-      for (const line of playImpulse(set))
-        expect(line.reduce((peak, x) => Math.max(peak, Math.abs(x)), 0)).toBeLessThanOrEqual(found.level * (1 + 1e-9))
+      for (const line of playImpulse(set)) expect(peak(line)).toBeLessThanOrEqual(found.level * (1 + 1e-9))
     }
   })
 
