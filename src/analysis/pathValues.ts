@@ -1,7 +1,8 @@
 // H at one frequency and many positions of a sweep path: the delays' phasors e^{−jωn} stand in one table for every n.
+import { dual } from './dual.ts'
+import { chainAt, loopChain, outerChain, wetChain } from './filterChain.ts'
 import type { Frozen } from './frozen.ts'
 import { type PathTable, TABLE_TAPS } from './pathTable.ts'
-import { chain } from './transfer.ts'
 
 export interface Tuning {
   /** Gains and filters of the set; its reads are not used. */
@@ -22,7 +23,6 @@ export interface Tuning {
 }
 
 export function createTuning(frozen: Frozen, lowest: number, highest: number): Tuning {
-  const dual = () => new Float64Array(4)
   const phasors = () => new Float64Array(highest - lowest + 1)
   const shared = { loop: dual(), wet: dual(), outer: dual(), sum: dual(), loops: dual(), lines: dual() }
   return { frozen, lowest, re: phasors(), im: phasors(), ...shared, dryRe: 1, dryIm: 0 }
@@ -42,11 +42,9 @@ export function tune(tuning: Tuning, omega: number): void {
     zi = zr * ei + zi * er
     zr = next
   }
-  const { loop, input, output } = frozen
-  chain(tuning.loop, er, ei, loop.gain * loop.slope.slope, loop.tone, loop.slope.averaged, false)
-  chain(tuning.wet, er, ei, 1, frozen.wetTone, false, false)
-  const gain = frozen.inputGain * input.slope * frozen.outputGain * output.slope
-  chain(tuning.outer, er, ei, gain, { lowPass: null, highPass: null }, input.averaged, output.averaged)
+  chainAt(loopChain(frozen), er, ei, tuning.loop)
+  chainAt(wetChain(frozen), er, ei, tuning.wet)
+  chainAt(outerChain(frozen), er, ei, tuning.outer)
   tuning.dryRe = Math.cos(omega * frozen.dryDelay)
   tuning.dryIm = -Math.sin(omega * frozen.dryDelay)
 }

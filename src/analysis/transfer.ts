@@ -1,10 +1,12 @@
 // The frozen transfer function H_c(ω) and its derivative by ω, exactly and fast: what response, group delay and
-// extremes are computed from. A value is kept with its derivative, [re, im, d re/dω, d im/dω] ("dual").
+// extremes are computed from. Values are kept with their derivatives (dual.ts).
 //
 // Every delay is a phasor e^{−jω·whole} times a short polynomial in E = e^{−jω}. On a uniform grid the phasors are
 // stepped by one rotation each, elsewhere they come from sine and cosine.
 // Slots: [ E | dry delay | loop reads, one a line | voices of channel 0 | voices of channel 1 ]
-import type { Frozen, FrozenTone } from './frozen.ts'
+import { dual, invert, multiply, setOne } from './dual.ts'
+import { chainAt, type FilterChain, loopChain, outerChain, wetChain } from './filterChain.ts'
+import type { Frozen } from './frozen.ts'
 import type { FrozenRead } from './frozenRead.ts'
 
 const DRY = 1
@@ -21,6 +23,7 @@ export interface Transfer {
   readonly pole: Float64Array
   readonly voiceFrom: readonly number[]
   readonly frozen: Frozen
+  readonly chains: { readonly loop: FilterChain; readonly wet: FilterChain; readonly outer: FilterChain }
   readonly phasors: Float64Array
   readonly rotations: Float64Array
   readonly scratch: {
@@ -33,8 +36,6 @@ export interface Transfer {
     readonly dry: Float64Array
   }
 }
-
-const dual = (): Float64Array => new Float64Array(4)
 
 /** Prepares the transfer function of a frozen set. It owns scratch memory: not to be shared between callers that interleave. */
 export function transferOf(frozen: Frozen): Transfer {
@@ -65,6 +66,7 @@ export function transferOf(frozen: Frozen): Transfer {
     pole,
     voiceFrom,
     frozen,
+    chains: { loop: loopChain(frozen), wet: wetChain(frozen), outer: outerChain(frozen) },
     phasors: new Float64Array(2 * slots),
     rotations: new Float64Array(2 * slots),
     scratch: {
@@ -127,9 +129,8 @@ function evaluate(t: Transfer, out: Float64Array, only: number): void {
   const ei = phasors[1] as number
   const { lines, wet, dry } = scratch
   solveLines(t, er, ei)
-  chain(scratch.wetChain, er, ei, 1, frozen.wetTone, false, false)
-  const outerGain = frozen.inputGain * frozen.input.slope * frozen.outputGain * frozen.output.slope
-  chain(scratch.outer, er, ei, outerGain, NO_TONE, frozen.input.averaged, frozen.output.averaged)
+  chainAt(t.chains.wet, er, ei, scratch.wetChain)
+  chainAt(t.chains.outer, er, ei, scratch.outer)
   for (let c = 0; c < t.channels; c++) {
     if (only >= 0 && c !== only) continue
     const channel = frozen.channels[c]
@@ -154,16 +155,16 @@ function evaluate(t: Transfer, out: Float64Array, only: number): void {
 /** w of each line for u = 1: (I − g F X diag(A))⁻¹ (1, 1). */
 function solveLines(t: Transfer, er: number, ei: number): void {
   const { loop, lines: count } = t.frozen
-  const { loops, lines, loopChain } = t.scratch
+  const { loops, lines, loopChain: around } = t.scratch
   if (loop.gain === 0) {
     for (const w of lines) setOne(w)
     return
   }
-  chain(loopChain, er, ei, loop.gain * loop.slope.slope, loop.tone, loop.slope.averaged, false)
+  chainAt(t.chains.loop, er, ei, around)
   for (let l = 0; l < count; l++) {
     const own = loops[l] as Float64Array
     sumReads(t, LOOPS + l, LOOPS + l + 1, er, ei, own)
-    multiply(own, own, loopChain)
+    multiply(own, own, around)
   }
   const k = loop.crossFeed
   if (count === 1 || k === 0) {
@@ -179,7 +180,7 @@ function solveLines(t: Transfer, er: number, ei: number): void {
   // Cramer on two lines: det = 1 − (1−k)(G0 + G1) + (1 − 2k) G0 G1, w0 = (1 − (1−2k) G1)/det, w1 likewise.
   const [g0, g1] = loops
   const [w0, w1] = lines
-  const det = loopChain
+  const det = around
   multiply(det, g0, g1)
   for (let i = 0; i < 4; i++) {
     const one = i === 0 ? 1 : 0
@@ -245,82 +246,4 @@ function sumReads(t: Transfer, from: number, to: number, er: number, ei: number,
   out[1] = si
   out[2] = dr
   out[3] = di
-}
-
-const NO_TONE: FrozenTone = { lowPass: null, highPass: null }
-
-/** gain · (1−a)/(1−aE) · (1+b)/2 (1−E)/(1−bE) · ((1+E)/2)^averages, with its derivative. */
-export function chain(out: Float64Array, er: number, ei: number, gain: number, tone: FrozenTone, averaged: boolean, twice: boolean): void {
-  out[0] = gain
-  out[1] = 0
-  out[2] = 0
-  out[3] = 0
-  const a = tone.lowPass
-  if (a !== null) section(out, er, ei, 1 - a, 0, a)
-  const b = tone.highPass
-  if (b !== null) section(out, er, ei, (1 + b) / 2, -(1 + b) / 2, b)
-  if (averaged) section(out, er, ei, 0.5, 0.5, 0)
-  if (twice) section(out, er, ei, 0.5, 0.5, 0)
-}
-
-const stage = dual()
-
-/** out ← out · (n0 + n1 E)/(1 − p E). */
-function section(out: Float64Array, er: number, ei: number, n0: number, n1: number, p: number): void {
-  const qr = 1 - p * er
-  const qi = -p * ei
-  const q2 = qr * qr + qi * qi
-  const nr = n0 + n1 * er
-  const ni = n1 * ei
-  const hr = (nr * qr + ni * qi) / q2
-  const hi = (ni * qr - nr * qi) / q2
-  // d/dE = (n1 + p H)/(1 − p E), then times −jE.
-  const mr = n1 + p * hr
-  const mi = p * hi
-  const gr = (mr * qr + mi * qi) / q2
-  const gi = (mi * qr - mr * qi) / q2
-  stage[0] = hr
-  stage[1] = hi
-  stage[2] = er * gi + ei * gr
-  stage[3] = ei * gi - er * gr
-  multiply(out, out, stage)
-}
-
-function setOne(d: Float64Array): void {
-  d[0] = 1
-  d[1] = 0
-  d[2] = 0
-  d[3] = 0
-}
-
-/** out ← a · b; out may be a or b. */
-function multiply(out: Float64Array, a: Float64Array, b: Float64Array): void {
-  const ar = a[0] as number
-  const ai = a[1] as number
-  const br = b[0] as number
-  const bi = b[1] as number
-  const dr = ar * (b[2] as number) - ai * (b[3] as number) + (a[2] as number) * br - (a[3] as number) * bi
-  const di = ar * (b[3] as number) + ai * (b[2] as number) + (a[2] as number) * bi + (a[3] as number) * br
-  out[0] = ar * br - ai * bi
-  out[1] = ar * bi + ai * br
-  out[2] = dr
-  out[3] = di
-}
-
-/** d ← 1/d. */
-function invert(d: Float64Array): void {
-  const re = d[0] as number
-  const im = d[1] as number
-  const size = re * re + im * im
-  const ir = re / size
-  const ii = -im / size
-  // (1/d)' = −d' / d²
-  const sr = ir * ir - ii * ii
-  const si = 2 * ir * ii
-  const dr = d[2] as number
-  const di = d[3] as number
-  d[0] = ir
-  d[1] = ii
-  d[2] = -(dr * sr - di * si)
-  d[3] = -(dr * si + di * sr)
 }
