@@ -41,12 +41,12 @@ export function pathIsSilent({ mode, ramps }: Bypass): boolean {
   return mode === 'hard' && !rampsMove(ramps)
 }
 
-/** y = path · y + straight · x over n samples, in place. */
+/** y = path · y + straight · x over n samples, in place; behind a silent path y is not looked at. */
 export function blendStraight({ ramps }: Bypass, y: Float64Array, x: Float64Array, n: number): void {
   const { start, slope, elapsed, target } = ramps
   if (!rampsMove(ramps)) {
-    if (target[STRAIGHT] === 0 && target[PATH] === 1) return
-    for (let j = 0; j < n; j++) y[j] = target[PATH]! * y[j]! + target[STRAIGHT]! * x[j]!
+    const wet = target[PATH] === 1
+    for (let j = 0; j < n; j++) y[j] = wet ? y[j]! + x[j]! : x[j]!
     return
   }
   for (let j = 0; j < n; j++) {

@@ -2,12 +2,16 @@
 // copy of the other's memory, and both run while one fades into the other.
 
 import { setTargets } from './gains.ts'
-import { CHUNK, createLine, lineLength } from './line.ts'
+import { CHUNK, createLine, flushLine, lineLength } from './line.ts'
 import { CORE_RAMPS, copyRamps, createRamps, type Ramps, SHAPER_VALUES, SHAPERS, settleRamps } from './ramps.ts'
 import type { Read } from './reads.ts'
-import { createSettings, MAX_VOICES, type Settings, takeStructure } from './settings.ts'
+import { MAX_VOICES, READS } from './runs.ts'
+import { createSettings, type Settings, takeStructure } from './settings.ts'
 import { takeShaperValues } from './shaperPass.ts'
-import { createTrajectory, jump, READS, type Trajectory } from './trajectory.ts'
+import { createTrajectory, jump, type Trajectory } from './trajectory.ts'
+
+/** A channel of audio in or out; samples are taken and given as they are, ±1 meaning full scale. */
+export type Channel = Float32Array | Float64Array
 
 type Pair = readonly [Float64Array, Float64Array]
 
@@ -38,8 +42,9 @@ export interface Core {
   /** Whether dryLines are written; without, they have no memory. */
   readonly keepsDry: boolean
   readonly states: States
-  /** Line values below this are written as 0. */
-  readonly flush: number
+  /** x of each line: sample j of the chunk is source[c][sourceAt + j]. */
+  readonly source: [Channel, Channel]
+  sourceAt: number
   /** A chunk each: u, s, w, wet and output by channel. */
   readonly input: Pair
   readonly loop: Pair
@@ -56,10 +61,9 @@ export interface CoreOptions {
   /** Longest delay any read may have, samples. */
   readonly maxDelay: number
   readonly keepsDry: boolean
-  readonly flush: number
 }
 
-export function createCore({ fs, maxDelay, keepsDry, flush }: CoreOptions): Core {
+export function createCore({ fs, maxDelay, keepsDry }: CoreOptions): Core {
   const length = lineLength(maxDelay)
   const trajectory = createTrajectory(fs, maxDelay)
   const states: States = {
@@ -74,7 +78,7 @@ export function createCore({ fs, maxDelay, keepsDry, flush }: CoreOptions): Core
   const wet = pair(CHUNK)
   return {
     fs,
-    settings: createSettings(),
+    settings: createSettings(fs),
     ramps: createRamps(fs, CORE_RAMPS),
     trajectory,
     length,
@@ -83,7 +87,8 @@ export function createCore({ fs, maxDelay, keepsDry, flush }: CoreOptions): Core
     dryLines: keepsDry ? [createLine(length), createLine(length)] : pair(0),
     keepsDry,
     states,
-    flush,
+    source: [wet[0], wet[1]],
+    sourceAt: 0,
     input: pair(CHUNK),
     loop: pair(CHUNK),
     written: pair(CHUNK),
@@ -93,17 +98,24 @@ export function createCore({ fs, maxDelay, keepsDry, flush }: CoreOptions): Core
   }
 }
 
-/** Sets what recursive parts have nearly forgotten to 0: below `flush` they only head for denormal numbers. */
-export function flushStates({ states, flush }: Core): void {
-  flushSlots(states.damping, flush)
-  flushSlots(states.lowCut, flush)
-  flushSlots(states.wetHighCut, flush)
-  flushSlots(states.wetLowCut, flush)
-  flushSlots(states.reads, flush)
+/** Below this the live engine takes a value of line or filters for 0: −600 dB; denormal numbers, which are slow, begin at −6150 dB. */
+const LEAST = 1e-30
+
+/**
+ * Sets the last CHUNK samples of the lines and the recursive parts' memory to 0 where they have nearly died. Called every CHUNK samples,
+ * whatever the cuts; even a fast decay does not come near denormal numbers in between.
+ */
+export function flushCore({ lines, position, settings, states }: Core): void {
+  for (let c = 0; c < settings.lines; c++) flushLine(lines[c]!, position, LEAST)
+  flushSlots(states.damping)
+  flushSlots(states.lowCut)
+  flushSlots(states.wetHighCut)
+  flushSlots(states.wetLowCut)
+  flushSlots(states.reads)
 }
 
-function flushSlots(states: Float64Array, flush: number): void {
-  for (let i = 0; i < states.length; i++) if (Math.abs(states[i]!) < flush) states[i] = 0
+function flushSlots(states: Float64Array): void {
+  for (let i = 0; i < states.length; i++) if (Math.abs(states[i]!) < LEAST) states[i] = 0
 }
 
 /** Silence: lines and filters empty. Settings, ramps and phase stay. */
@@ -125,7 +137,7 @@ export function loadCore(core: Core, flat: Float64Array, inputOpen: number, dryO
   takeStructure(core.settings, flat)
   setTargets(core.ramps, flat, core.fs, inputOpen, dryOpen)
   settleCore(core)
-  jump(core.trajectory)
+  jump(core.trajectory, core.settings)
 }
 
 /** Ends all ramps at their targets. */

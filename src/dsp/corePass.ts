@@ -1,10 +1,10 @@
 // One chunk through one core: u, the lines, the voices, the mix.
-import type { Core } from './core.ts'
-import { settleCore } from './core.ts'
+import { type Channel, type Core, settleCore } from './core.ts'
 import { planRuns } from './delays.ts'
 import { highPass, highPassMoving, lowPass, lowPassMoving } from './filterPasses.ts'
 import { CHUNK, writeLine } from './line.ts'
-import { writeLines } from './loop.ts'
+import { isLinearLoop, linearLoop } from './linearLoop.ts'
+import { writeByPieces } from './loop.ts'
 import {
   advanceRamps,
   DRY,
@@ -21,9 +21,10 @@ import {
   WET_LOW_CUT,
 } from './ramps.ts'
 import { addRead } from './reads.ts'
-import { INPUT, LOOP, MAX_VOICES, OUTPUT } from './settings.ts'
+import { LOOPS, MAX_VOICES } from './runs.ts'
+import { INPUT, LOOP, OUTPUT, type Settings } from './settings.ts'
 import { shape, shapeMoving } from './shaperPass.ts'
-import { LOOPS, switchLoops } from './trajectory.ts'
+import { switchLoops } from './trajectory.ts'
 
 /** Samples that a chunk may have: to the end of the lines' first half and of the ramps. */
 export function chunkRoom({ length, position, ramps }: Core): number {
@@ -31,29 +32,39 @@ export function chunkRoom({ length, position, ramps }: Core): number {
   return rampsMove(ramps) ? Math.min(room, ramps.length - ramps.elapsed) : room
 }
 
-/** Runs n samples, at most chunkRoom, from absolute sample `first` on. Reads x of each line from `input`, leaves y of each channel in `output`. */
+/**
+ * Runs n samples, at most chunkRoom, from absolute sample `first` on: from `source` to the lines and to the wet of each channel. The mix
+ * follows, then endChunk.
+ */
 export function runCore(core: Core, first: number, n: number): void {
   const { settings, ramps, trajectory } = core
   const moving = rampsMove(ramps)
   takeLoopOnOrOff(core, moving)
   planRuns(trajectory, settings, first, n)
-  for (let c = 0; c < settings.lines; c++) takeInput(core, c, n, moving)
-  writeLines(core, n, moving)
+  if (isLinearLoop(core, moving)) {
+    for (let c = 0; c < settings.lines; c++) linearLoop(core, c)
+  } else {
+    for (let c = 0; c < settings.lines; c++) takeInput(core, c, n, moving)
+    if (trajectory.loops) writeByPieces(core, moving)
+    else for (let c = 0; c < settings.lines; c++) writeLine(core.lines[c]!, core.position, core.input[c]!, 0, n)
+  }
+  if (core.keepsDry) for (let c = 0; c < settings.lines; c++) writeLine(core.dryLines[c]!, core.position, core.input[c]!, 0, n)
   for (let c = 0; c < settings.outputs; c++) {
     readVoices(core, c, n)
     toneWet(core, c, n, moving)
-    mix(core, c, n, moving)
-  }
-  if (settings.outputs === 1) core.output[1].set(core.output[0])
-  core.position = (core.position + n) % core.length
-  if (moving) {
-    advanceRamps(ramps, n)
-    if (!rampsMove(ramps)) settleCore(core)
   }
 }
 
+/** Moves on by the n samples of the chunk. */
+export function endChunk(core: Core, n: number): void {
+  core.position = (core.position + n) % core.length
+  if (!rampsMove(core.ramps)) return
+  advanceRamps(core.ramps, n)
+  if (!rampsMove(core.ramps)) settleCore(core)
+}
+
 /** A loop without feedback is not run; when it starts again its filters start from rest. */
-function takeLoopOnOrOff({ ramps, trajectory, states }: Core, moving: boolean): void {
+function takeLoopOnOrOff({ settings, ramps, trajectory, states }: Core, moving: boolean): void {
   const on = ramps.target[FEEDBACK] !== 0 || (moving && ramps.start[FEEDBACK] !== 0)
   if (trajectory.loops && !on) {
     states.damping.fill(0)
@@ -61,18 +72,20 @@ function takeLoopOnOrOff({ ramps, trajectory, states }: Core, moving: boolean): 
     states.shapers.fill(0, 2 * LOOP, 2 * LOOP + 2)
     states.reads.fill(0, LOOPS)
   }
-  switchLoops(trajectory, on)
+  switchLoops(trajectory, settings, on)
 }
 
-/** u of line c from its x, in place. */
-function takeInput({ settings, ramps, states, input, dryLines, keepsDry, position }: Core, c: number, n: number, moving: boolean): void {
-  const u = input[c]!
+/** u of line c from its source. */
+function takeInput(core: Core, c: number, n: number, moving: boolean): void {
+  const { settings, ramps, states, sourceAt } = core
+  const x = core.source[c]!
+  const u = core.input[c]!
+  for (let j = 0; j < n; j++) u[j] = x[sourceAt + j]!
   const shaper = settings.shapers[INPUT]!
   scale(u, n, ramps, INPUT_GAIN, moving)
   if (moving) shapeMoving(shaper, u, 0, n, ramps, ramps.elapsed, SHAPERS + INPUT * SHAPER_VALUES, states.shapers, 2 * INPUT + c)
   else shape(shaper, u, 0, n, states.shapers, 2 * INPUT + c)
   scale(u, n, ramps, INPUT_OPEN, moving)
-  if (keepsDry) writeLine(dryLines[c]!, position, u, 0, n, 0)
 }
 
 /** x · the value at slot `i`, in place. */
@@ -85,7 +98,7 @@ function scale(x: Float64Array, n: number, { target, start, slope, elapsed }: Ra
   }
 }
 
-/** m of channel c before its tone: V^(−1/2) Σ read. */
+/** Σ read of channel c. */
 function readVoices({ settings, lines, position, length, read, wet }: Core, c: number, n: number): void {
   const m = wet[c]!
   m.fill(0, 0, n)
@@ -96,12 +109,9 @@ function readVoices({ settings, lines, position, length, read, wet }: Core, c: n
     read.read = c * MAX_VOICES + v
     addRead(settings.voiceRead, read)
   }
-  if (settings.voices.count > 1) {
-    const gain = settings.voiceScale
-    for (let j = 0; j < n; j++) m[j] = m[j]! * gain
-  }
 }
 
+/** m of channel c, but for V^(−1/2), which the mix brings in. */
 function toneWet({ ramps, states, wet }: Core, c: number, n: number, moving: boolean): void {
   const m = wet[c]!
   if (moving) {
@@ -113,33 +123,66 @@ function toneWet({ ramps, states, wet }: Core, c: number, n: number, moving: boo
   if (ramps.target[WET_LOW_CUT + 1]) highPass(m, 0, n, ramps.target[WET_LOW_CUT]!, states.wetLowCut, 2 * c)
 }
 
-/** y of channel c: outputGain · outputShaper(dry · d ± wet · m). */
-function mix(core: Core, c: number, n: number, moving: boolean): void {
-  const { settings, ramps, states, wet, output } = core
-  const { target, start, slope, elapsed } = ramps
-  const line = settings.lines === 2 ? c : 0
-  const delay = dryDelay(core)
-  const now = !settings.dryFromLine && delay === 0
-  const d = now ? core.input[line]! : (settings.dryFromLine ? core.lines : core.dryLines)[line]!
-  const at = now ? 0 : core.position + core.length - delay
-  const m = wet[c]!
-  const y = output[c]!
-  let dryGain = target[DRY]!
-  let wetGain = target[WET + c]!
-  for (let j = 0; j < n; j++) {
-    if (moving) {
-      dryGain = start[DRY]! + slope[DRY]! * (elapsed + j)
-      wetGain = start[WET + c]! + slope[WET + c]! * (elapsed + j)
-    }
-    y[j] = dryGain * d[at + j]! + wetGain * m[j]!
-  }
+/** y of channel c, outputGain · outputShaper(dry · d ± wet · m), into `output`. */
+export function mix(core: Core, c: number, n: number): void {
+  const { settings, ramps, states } = core
+  const { start, slope, elapsed } = ramps
+  const y = core.output[c]!
   const shaper = settings.shapers[OUTPUT]!
-  if (moving) shapeMoving(shaper, y, 0, n, ramps, elapsed, SHAPERS + OUTPUT * SHAPER_VALUES, states.shapers, 2 * OUTPUT + c)
-  else shape(shaper, y, 0, n, states.shapers, 2 * OUTPUT + c)
+  const moving = rampsMove(ramps)
+  if (moving) {
+    const d = dryOf(core, c)
+    const at = dryAt(core)
+    const m = core.wet[c]!
+    for (let j = 0; j < n; j++) {
+      const dry = start[DRY]! + slope[DRY]! * (elapsed + j)
+      const wet = start[WET + c]! + slope[WET + c]! * (elapsed + j)
+      y[j] = dry * d[at + j]! + wet * (settings.voiceScale * m[j]!)
+    }
+    shapeMoving(shaper, y, 0, n, ramps, elapsed, SHAPERS + OUTPUT * SHAPER_VALUES, states.shapers, 2 * OUTPUT + c)
+  } else {
+    mixTo(core, c, y, 0, n, false)
+    shape(shaper, y, 0, n, states.shapers, 2 * OUTPUT + c)
+  }
   scale(y, n, ramps, OUTPUT_GAIN, moving)
 }
 
-/** Dry delay in whole samples, rounded half up, at most as long as the line. */
-function dryDelay({ settings, fs, trajectory }: Core): number {
-  return Math.min(Math.floor((settings.dryDelayMs * fs) / 1000 + 0.5), Math.floor(trajectory.longest))
+/** Whether mixTo gives y as it is to be heard. */
+export function mixesPlainly({ settings, ramps }: Core): boolean {
+  return !rampsMove(ramps) && !settings.shapers[OUTPUT]!.on
+}
+
+/** dry · d ± wet · m of channel c, times outputGain if `gained`, while no ramp moves. Returns how many samples are not finite. */
+export function mixTo(core: Core, c: number, y: Channel, yAt: number, n: number, gained: boolean): number {
+  const { settings, ramps } = core
+  const d = dryOf(core, c)
+  const at = dryAt(core)
+  const m = core.wet[c]!
+  const gain = gained ? ramps.target[OUTPUT_GAIN]! : 1
+  const dry = gain * ramps.target[DRY]!
+  const wet = gain * ramps.target[WET + c]! * settings.voiceScale
+  let bad = 0
+  for (let j = 0; j < n; j++) {
+    const v = dry * d[at + j]! + wet * m[j]!
+    if (!(Math.abs(v) < Number.POSITIVE_INFINITY)) bad++
+    y[yAt + j] = v
+  }
+  return bad
+}
+
+/** Where the dry signal of channel c stands, and the index there of the chunk's first sample. */
+function dryOf({ settings, lines, dryLines, input, trajectory }: Core, c: number): Float64Array {
+  const line = settings.lines === 2 ? c : 0
+  if (settings.dryFromLine) return lines[line]!
+  return dryDelay(settings, trajectory.longest) === 0 ? input[line]! : dryLines[line]!
+}
+
+function dryAt({ settings, position, length, trajectory }: Core): number {
+  const delay = dryDelay(settings, trajectory.longest)
+  return delay === 0 && !settings.dryFromLine ? 0 : position + length - delay
+}
+
+/** Dry delay in whole samples, rounded half up, at most `longest`. */
+function dryDelay({ dryDelayMs, fs }: Settings, longest: number): number {
+  return Math.min(Math.floor((dryDelayMs * fs) / 1000 + 0.5), Math.floor(longest)) | 0
 }

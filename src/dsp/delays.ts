@@ -1,51 +1,58 @@
 // From the sweep's evaluations to runs: straight pieces of delay, or, while a read glides or has to be held at a limit, runs of one sample.
 import { CLOSE_TOLERANCE } from '../set/delayRange.ts'
-import { CHUNK } from './line.ts'
-import { MAX_VOICES, type Settings } from './settings.ts'
-import { enterInterval, LOOPS, rampsBetween, type Trajectory } from './trajectory.ts'
+import { LOOPS, READS } from './runs.ts'
+import type { Settings } from './settings.ts'
+import { enterInterval, evaluate, rampsBetween, type Trajectory } from './trajectory.ts'
 
 /** Cuts the `n` samples from absolute sample `first` on into runs, glides and limits in them. */
 export function planRuns(t: Trajectory, s: Settings, first: number, n: number): void {
-  const { runs } = t
+  const { runs, from, to } = t
+  const { ends, starts } = runs
   const every = s.sweep.updateEvery
   const ramps = rampsBetween(s)
-  let inside = true
+  enterInterval(t, s, first)
+  copyUsed(t, ramps ? from : to, 0, ends, 0)
+  copyUsed(t, to, 0, ends, READS)
+  let inside = t.fromInside && t.toInside
+  let into = (first - t.interval) | 0
   let k = 0
-  for (let j = 0; j < n; k++) {
-    enterInterval(t, s, first + j)
-    if (!(t.fromInside && t.toInside)) inside = false
-    const into = first + j - t.interval
-    runs.starts[k] = j
+  for (let j = 0; ; ) {
+    starts[k] = j
     runs.into[k] = into
-    for (let c = 0; c < s.outputs; c++) for (let v = 0; v < s.voices.count; v++) takeRun(t, c * MAX_VOICES + v, k, ramps, every)
-    if (t.loops) for (let c = 0; c < s.lines; c++) takeRun(t, LOOPS + c, k, ramps, every)
-    j += Math.min(every - into, n - j)
+    j += every - into
+    into = 0
+    k++
+    if (j >= n) break
+    t.interval += every
+    evaluate(t, s, ramps ? t.interval + every : t.interval, ends, (ramps ? k + 1 : k) * READS)
+    if (!t.toInside) inside = false
   }
-  runs.starts[k] = n
+  if (ramps) copyUsed(t, ends, (k - 1) * READS, from, 0)
+  copyUsed(t, ends, (ramps ? k : k - 1) * READS, to, 0)
+  starts[k] = n
   runs.count = k
+  // The interval is a power of two: multiplying by its inverse is as exact as dividing.
+  runs.part = ramps ? 1 / every : 0
   if (t.gliding || !inside) breakRuns(t, s, n)
 }
 
-function takeRun({ runs, from, to }: Trajectory, r: number, k: number, ramps: boolean, every: number): void {
-  const at = r * CHUNK + k
-  const start = from[r]!
-  const end = to[r]!
-  runs.from[at] = ramps ? start : end
-  runs.slope[at] = ramps ? (end - start) / every : 0
+/** Copies the reads in use from one row of reads to another. */
+function copyUsed({ used, usedCount }: Trajectory, from: Float64Array, f: number, to: Float64Array, o: number): void {
+  for (let i = 0; i < usedCount; i++) to[o + used[i]!] = from[f + used[i]!]!
 }
 
 /** Makes every sample its own run, with what the glides add, held to the limits. */
 function breakRuns(t: Trajectory, s: Settings, n: number): void {
-  const { runs } = t
-  for (let c = 0; c < s.outputs; c++) for (let v = 0; v < s.voices.count; v++) breakRead(t, c * MAX_VOICES + v, s.voiceLeast, n)
-  if (t.loops) for (let c = 0; c < s.lines; c++) breakRead(t, LOOPS + c, s.loopLeast, n)
-  else t.offset.fill(0, LOOPS)
+  const { runs, used } = t
+  for (let i = 0; i < t.usedCount; i++) breakRead(t, used[i]!, used[i]! < LOOPS ? s.voiceLeast : s.loopLeast, n)
+  if (!t.loops) t.offset.fill(0, LOOPS)
   for (let j = 0; j < n; j++) {
     runs.starts[j] = j
     runs.into[j] = 0
   }
   runs.starts[n] = n
   runs.count = n
+  runs.part = 0
   t.gliding = t.offset.some(isLeft)
 }
 
@@ -53,19 +60,15 @@ const isLeft = (offset: number): boolean => offset !== 0
 
 function breakRead(t: Trajectory, r: number, least: number, n: number): void {
   const { runs, delays } = t
-  const at = r * CHUNK
   for (let k = 0; k < runs.count; k++) {
-    const from = runs.from[at + k]!
-    const slope = runs.slope[at + k]!
+    const from = runs.ends[k * READS + r]!
+    const slope = (runs.ends[(k + 1) * READS + r]! - from) * runs.part
     const into = runs.into[k]! - runs.starts[k]!
     for (let j = runs.starts[k]!; j < runs.starts[k + 1]!; j++) delays[j] = from + slope * (into + j)
   }
   addGlide(t, r, n)
   hold(t, n, least)
-  for (let j = 0; j < n; j++) {
-    runs.from[at + j] = delays[j]!
-    runs.slope[at + j] = 0
-  }
+  for (let j = 0; j < n; j++) runs.ends[j * READS + r] = delays[j]!
 }
 
 /** Part of the way that a glide goes in one sample, and the most it goes, samples a sample: half, so pitch bends by a fifth up or an octave down at most. */
@@ -97,11 +100,11 @@ function hold(t: Trajectory, n: number, least: number): void {
 
 /** Smallest delay at which the loop of line c reads in the chunk, samples: a run is smallest at one of its ends. */
 export function smallestLoopDelay({ runs }: Trajectory, c: number): number {
-  const at = (LOOPS + c) * CHUNK
+  const r = LOOPS + c
   let smallest = Number.POSITIVE_INFINITY
   for (let k = 0; k < runs.count; k++) {
-    const from = runs.from[at + k]!
-    const slope = runs.slope[at + k]!
+    const from = runs.ends[k * READS + r]!
+    const slope = (runs.ends[(k + 1) * READS + r]! - from) * runs.part
     const into = runs.into[k]!
     smallest = Math.min(smallest, from + slope * into, from + slope * (into + runs.starts[k + 1]! - runs.starts[k]! - 1))
   }

@@ -3,21 +3,19 @@
 
 import type { Layout } from '../set/types.ts'
 import { blendStraight, pathIsSilent, STRAIGHT } from './bypass.ts'
-import { type Core, clearCore, flushStates } from './core.ts'
-import { chunkRoom, runCore } from './corePass.ts'
+import { type Channel, type Core, clearCore, flushCore } from './core.ts'
+import { chunkRoom, endChunk, mix, mixesPlainly, mixTo, runCore } from './corePass.ts'
 import type { Engine, EngineCounters } from './engineState.ts'
 import { CHUNK } from './line.ts'
 import { endFade, loadAtOnce } from './liveChanges.ts'
 import { advanceRamps, rampsMove, settleRamps } from './ramps.ts'
 import { wrapPhase } from './sweep.ts'
-import { jump, phaseAt, startPhase } from './trajectory.ts'
+import { phaseAt, startPhase } from './trajectory.ts'
 
 export type { BypassMode } from './bypass.ts'
+export type { Channel } from './core.ts'
 export { createEngine, type DelayChange, type Engine, type EngineCounters, type EngineOptions } from './engineState.ts'
 export { holdPosition, retargetEngine, setBypass, setDelayChange } from './liveChanges.ts'
-
-/** A channel of audio in or out; samples are taken and given as they are, ±1 meaning full scale. */
-export type Channel = Float32Array | Float64Array
 
 /** Channels a layout takes in: one a line. */
 export const inputChannels = (layout: Layout): 1 | 2 => (layout === 'stereo' ? 2 : 1)
@@ -49,49 +47,78 @@ function room(engine: Engine): number {
 
 function run(engine: Engine, input: readonly Channel[], output: readonly Channel[], at: number, n: number): void {
   const { core, idle, bypass, straight } = engine
+  const { outputs, lines } = core.settings
   const straightHeard = rampsMove(bypass.ramps) || bypass.ramps.target[STRAIGHT] !== 0
-  const silent = pathIsSilent(bypass)
-  const y = core.output
-  if (straightHeard) for (let c = 0; c < 2; c++) route(input, core.settings.lines, c, straight[c]!, at, n)
-  if (silent) {
-    for (let c = 0; c < 2; c++) y[c]!.fill(0, 0, n)
-  } else {
-    runOne(core, input, at, engine.n, n)
+  // Before anything is written: input and output may be the same arrays.
+  if (straightHeard) for (let c = 0; c < 2; c++) takeStraight(engine, input, lines, c, at, n)
+  if (!pathIsSilent(bypass)) {
+    runOne(engine, core, input, at, n)
+    if (!straightHeard && !engine.fading && mixesPlainly(core)) {
+      for (let c = 0; c < output.length; c++) engine.counters.nonFinite += mixTo(core, Math.min(c, outputs - 1), output[c]!, at, n, true)
+      endChunk(core, n)
+      advance(engine, n)
+      return
+    }
+    mixAll(core, n)
     if (engine.fading && idle) {
-      runOne(idle, input, at, engine.n, n)
-      for (let c = 0; c < 2; c++) fadeInto(y[c]!, idle.output[c]!, engine.fadeElapsed, engine.fadeLength, n)
+      runOne(engine, idle, input, at, n)
+      mixAll(idle, n)
+      for (let c = 0; c < 2; c++) fadeInto(core.output[c]!, idle.output[c]!, engine.fadeElapsed, engine.fadeLength, n)
     }
   }
-  if (straightHeard) for (let c = 0; c < 2; c++) blendStraight(bypass, y[c]!, straight[c]!, n)
-  for (let c = 0; c < output.length; c++) engine.counters.nonFinite += give(y[Math.min(c, 1)]!, output[c]!, at, n)
+  if (straightHeard) for (let c = 0; c < 2; c++) blendStraight(bypass, core.output[c]!, straight[c]!, n)
+  for (let c = 0; c < output.length; c++) engine.counters.nonFinite += give(core.output[Math.min(c, 1)]!, output[c]!, at, n)
   advance(engine, n)
 }
 
-function runOne(core: Core, input: readonly Channel[], at: number, first: number, n: number): void {
-  for (let c = 0; c < core.settings.lines; c++) route(input, core.settings.lines, c, core.input[c]!, at, n)
-  runCore(core, first, n)
+/** Everything up to the mix. */
+function runOne(engine: Engine, core: Core, input: readonly Channel[], at: number, n: number): void {
+  route(engine, core.source, input, core.settings.lines, at, n)
+  core.sourceAt = input.length > 0 && input.length <= core.settings.lines ? at : 0
+  runCore(core, engine.n, n)
 }
 
-/** x of channel `c` of `channels`: the input's own, the last one again where it has fewer, the mean of all where it has more. */
-function route(input: readonly Channel[], channels: number, c: number, x: Float64Array, at: number, n: number): void {
+/** y of both channels into `output`, the second like the first where there is one, and the chunk's end. */
+function mixAll(core: Core, n: number): void {
+  for (let c = 0; c < core.settings.outputs; c++) mix(core, c, n)
+  if (core.settings.outputs === 1) core.output[1].set(core.output[0])
+  endChunk(core, n)
+}
+
+/** Sets x of each channel of `channels`: the input's own, the last one again where it has fewer, the mean of all where it has more. */
+function route({ mean }: Engine, source: [Channel, Channel], input: readonly Channel[], channels: number, at: number, n: number): void {
   const count = input.length
-  if (count === 0) {
-    x.fill(0, 0, n)
+  if (count > 0 && count <= channels) {
+    for (let c = 0; c < channels; c++) source[c] = input[Math.min(c, count - 1)]!
     return
   }
-  const mean = count > channels
-  take(input[mean ? 0 : Math.min(c, count - 1)]!, at, x, n)
-  if (!mean) return
-  for (let i = 1; i < count; i++) add(input[i]!, at, x, n)
-  for (let j = 0; j < n; j++) x[j] = x[j]! / count
+  takeMean(input, mean, at, n)
+  source[0] = mean
+  source[1] = mean
 }
 
-function take(from: Channel, at: number, x: Float64Array, n: number): void {
-  for (let j = 0; j < n; j++) x[j] = from[at + j]!
+/** Mean of all input channels, 0 without any. */
+function takeMean(input: readonly Channel[], mean: Float64Array, at: number, n: number): void {
+  const count = input.length
+  mean.fill(0, 0, n)
+  for (let i = 0; i < count; i++) add(input[i]!, at, mean, n)
+  if (count > 1) for (let j = 0; j < n; j++) mean[j] = mean[j]! / count
 }
 
 function add(from: Channel, at: number, x: Float64Array, n: number): void {
   for (let j = 0; j < n; j++) x[j] = x[j]! + from[at + j]!
+}
+
+/** The input as it goes straight to output channel c, for layouts of one line (mean) or two. */
+function takeStraight({ straight }: Engine, input: readonly Channel[], lines: number, c: number, at: number, n: number): void {
+  const x = straight[c]!
+  const count = input.length
+  if (count === 0 || count > lines) {
+    takeMean(input, x, at, n)
+    return
+  }
+  x.fill(0, 0, n)
+  add(input[Math.min(c, count - 1)]!, at, x, n)
 }
 
 /** y = old + (y − old) t, t from 0 to 1 over the fade. The two are alike enough for equal gain. */
@@ -117,8 +144,8 @@ function advance(engine: Engine, n: number): void {
   const { bypass, core, live } = engine
   engine.n += n
   if (live && engine.n % CHUNK === 0) {
-    flushStates(core)
-    if (engine.fading && engine.idle) flushStates(engine.idle)
+    flushCore(core)
+    if (engine.fading && engine.idle) flushCore(engine.idle)
   }
   if (rampsMove(bypass.ramps)) {
     advanceRamps(bypass.ramps, n)
@@ -158,7 +185,6 @@ export function resetEngine(engine: Engine): void {
   engine.n = 0
   stop(engine)
   if (!core.trajectory.held) startPhase(core.trajectory, core.settings)
-  jump(core.trajectory)
   settleRamps(bypass.ramps)
   core.trajectory.heldDelays = 0
   if (idle) idle.trajectory.heldDelays = 0

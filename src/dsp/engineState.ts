@@ -56,13 +56,12 @@ export interface Engine {
   readonly bypass: Bypass
   /** The input by output channel, for a bypass that passes it. */
   readonly straight: readonly [Float64Array, Float64Array]
+  /** Scratch: the mean of all input channels. */
+  readonly mean: Float64Array
   /** Absolute index of the next sample. */
   n: number
   readonly counters: EngineCounters
 }
-
-/** Below this the live engine takes a value of line or filters for 0. −600 dB; denormal numbers begin at −6150 dB. */
-const FLUSH = 1e-30
 
 /**
  * An engine at the start of a set. Throws RangeError when the set has a value outside its range, or an option is. Reads that come too
@@ -77,7 +76,6 @@ export function createEngine(set: ParameterSet, { sampleRate = set.sampleRate, m
     fs: sampleRate,
     maxDelay: Math.max(4, Math.ceil((longestMs * sampleRate) / 1000)),
     keepsDry: live || (set.mix.dryTap === 'input' && set.mix.dryDelayMs > 0),
-    flush: live ? FLUSH : 0,
   }
   const engine: Engine = {
     fs: sampleRate,
@@ -93,6 +91,7 @@ export function createEngine(set: ParameterSet, { sampleRate = set.sampleRate, m
     delayChange: 'glide',
     bypass: createBypass(sampleRate),
     straight: [new Float64Array(CHUNK), new Float64Array(CHUNK)],
+    mean: new Float64Array(CHUNK),
     n: 0,
     counters: { heldDelays: 0, nonFinite: 0, refusedValues: 0 },
   }

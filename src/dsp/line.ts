@@ -17,16 +17,22 @@ export function lineLength(maxDelay: number): number {
 /** Most samples processed between two looks at what moves. Cuts never change a result; this only sizes the scratch memory. */
 export const CHUNK = 128
 
-/**
- * Writes from[j … j + n) at `position` of the line, which must not pass the end of its first half. What is smaller than `flush` becomes 0,
- * so that a dying tail does not end in denormal numbers, which are slow; flush 0 changes nothing.
- */
-export function writeLine(line: Float64Array, position: number, from: Float64Array, j: number, n: number, flush: number): void {
+/** Writes from[j … j + n) at `position` of the line, which must not pass the end of its first half. */
+export function writeLine(line: Float64Array, position: number, from: Float64Array, j: number, n: number): void {
   const again = position + (line.length >> 1)
   for (let i = 0; i < n; i++) {
-    let w = from[j + i]!
-    if (Math.abs(w) < flush) w = 0
+    const w = from[j + i]!
     line[position + i] = w
     line[again + i] = w
+  }
+}
+
+/** Sets the last CHUNK samples before `position` to 0 where they are smaller than `least`. */
+export function flushLine(line: Float64Array, position: number, least: number): void {
+  const length = line.length >> 1
+  for (let i = position + length - CHUNK; i < position + length; i++) {
+    if (line[i] === 0 || Math.abs(line[i]!) >= least) continue
+    line[i] = 0
+    line[i >= length ? i - length : i + length] = 0
   }
 }

@@ -1,57 +1,72 @@
-// The commonest loop in one go: read linearly, filtered, not shaped, not crossed. The same operations in the same order as loop.ts, so
-// the same bits, but sample after sample, with everything kept at hand.
+// The commonest loop in one go: read linearly, filtered, not shaped, not crossed, fed by an input that is only scaled. The same operations
+// in the same order as corePass.ts and loop.ts, so the same bits, but sample after sample, with everything kept at hand.
 import type { Core } from './core.ts'
-import { CHUNK } from './line.ts'
-import { CROSS_FEED, DAMPING, FEEDBACK, LOW_CUT } from './ramps.ts'
-import { LOOP } from './settings.ts'
-import { LOOPS } from './trajectory.ts'
+import { CROSS_FEED, DAMPING, FEEDBACK, INPUT_GAIN, INPUT_OPEN, LOW_CUT } from './ramps.ts'
+import { LOOPS, READS } from './runs.ts'
+import { INPUT, LOOP } from './settings.ts'
 
-/** Whether the loop is one that fusedLoop plays. */
-export function canFuse({ settings, ramps }: Core, moving: boolean): boolean {
-  if (moving || settings.loopRead !== 'linear' || settings.shapers[LOOP]!.on) return false
+/** Whether input and loop are those that linearLoop plays. */
+export function isLinearLoop({ settings, ramps, trajectory }: Core, moving: boolean): boolean {
+  if (moving || !trajectory.loops || settings.loopRead !== 'linear') return false
+  if (settings.shapers[LOOP]!.on || settings.shapers[INPUT]!.on || ramps.target[INPUT_OPEN] !== 1) return false
   return settings.lines === 1 || ramps.target[CROSS_FEED] === 0
 }
 
-/** Writes line c for the whole chunk. */
-export function fusedLoop({ ramps, trajectory, states, lines, position, length, input, flush }: Core, c: number): void {
-  const { from, slope, starts, into, count } = trajectory.runs
-  const line = lines[c]!
-  const u = input[c]!
+/** Takes u of line c from its source and writes the line, for the whole chunk. */
+export function linearLoop(core: Core, c: number): void {
+  const { ramps, trajectory, states, position, length, sourceAt } = core
+  const { ends, part, starts, into, count } = trajectory.runs
+  const x = core.source[c]!
+  const line = core.lines[c]!
+  const u = core.input[c]!
+  const gain = ramps.target[INPUT_GAIN]!
   const g = ramps.target[FEEDBACK]!
-  const damped = ramps.target[DAMPING + 1] !== 0
   const cut = ramps.target[LOW_CUT + 1] !== 0
-  const a = ramps.target[DAMPING]!
+  // Without damping its coefficient is 0: s · 1 + 0.
+  const a = ramps.target[DAMPING + 1] ? ramps.target[DAMPING]! : 0
   const b = ramps.target[LOW_CUT]!
-  const oneLessA = 1 - a
+  const lessA = 1 - a
   const half = (1 + b) / 2
   let low = states.damping[c]!
   let before = states.lowCut[2 * c]!
   let high = states.lowCut[2 * c + 1]!
   for (let k = 0; k < count; k++) {
-    const start = from[(LOOPS + c) * CHUNK + k]!
-    const step = slope[(LOOPS + c) * CHUNK + k]!
-    const since = into[k]! - starts[k]!
+    const from = ends[k * READS + LOOPS + c]!
+    const slope = (ends[(k + 1) * READS + LOOPS + c]! - from) * part
+    const first = starts[k]!
     const end = starts[k + 1]!
-    for (let j = starts[k]!; j < end; j++) {
-      const delay = start + step * (since + j)
-      const whole = delay | 0
-      const at = position + j
-      const i = at + length - whole
-      const x1 = line[i]!
-      let s = x1 + (delay - whole) * (line[i - 1]! - x1)
-      if (damped) {
-        low = oneLessA * s + a * low
+    const since = into[k]! - first
+    // Cut where the delay passes a whole sample, as in reads.ts.
+    for (let j = first; j < end; ) {
+      const whole = (from + slope * (since + j)) | 0
+      let stop = end
+      if (((from + slope * (since + end - 1)) | 0) !== whole) {
+        stop = j + 1
+        while (((from + slope * (since + stop)) | 0) === whole) stop++
+      }
+      let at = position + j
+      let i = at + length - whole
+      let x2 = line[i - 1]!
+      for (; j < stop; j++) {
+        const f = from + slope * (since + j) - whole
+        const x1 = line[i]!
+        i = (i + 1) | 0
+        let s = x1 + f * (x2 - x1)
+        x2 = x1
+        low = lessA * s + a * low
         s = low
+        if (cut) {
+          high = half * (s - before) + b * high
+          before = s
+          s = high
+        }
+        const v = x[sourceAt + j]! * gain
+        u[j] = v
+        const w = v + g * s
+        line[at] = w
+        line[at + length] = w
+        at = (at + 1) | 0
       }
-      if (cut) {
-        high = half * (s - before) + b * high
-        before = s
-        s = high
-      }
-      let w = u[j]! + g * s
-      if (Math.abs(w) < flush) w = 0
-      line[at] = w
-      line[at + length] = w
     }
   }
   states.damping[c] = low

@@ -56,7 +56,7 @@ export function holdPosition(engine: Engine, position: number | null): void {
 function holdCore({ n }: Engine, { trajectory, settings }: Core, position: number | null): void {
   noteDelays(trajectory, settings, n)
   holdPhase(trajectory, settings, n, position)
-  if (n === 0) jump(trajectory)
+  if (n === 0) jump(trajectory, settings)
   else glideFrom(trajectory, settings, n, trajectory.noted)
 }
 

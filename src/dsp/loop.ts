@@ -4,27 +4,15 @@ import type { Core } from './core.ts'
 import { smallestLoopDelay } from './delays.ts'
 import { highPass, highPassMoving, lowPass, lowPassMoving } from './filterPasses.ts'
 import { writeLine } from './line.ts'
-import { canFuse, fusedLoop } from './linearLoop.ts'
 import { CROSS_FEED, DAMPING, FEEDBACK, LOW_CUT, SHAPER_VALUES, SHAPERS } from './ramps.ts'
 import { addPiece } from './reads.ts'
+import { LOOPS } from './runs.ts'
 import { LOOP } from './settings.ts'
 import { shape, shapeMoving } from './shaperPass.ts'
-import { LOOPS } from './trajectory.ts'
 
-/** Writes the lines for u[0 … n); `moving` while the ramps move. */
-export function writeLines(core: Core, n: number, moving: boolean): void {
-  const { settings, trajectory, position, flush } = core
-  if (!trajectory.loops) {
-    for (let c = 0; c < settings.lines; c++) writeLine(core.lines[c]!, position, core.input[c]!, 0, n, flush)
-  } else if (canFuse(core, moving)) {
-    for (let c = 0; c < settings.lines; c++) fusedLoop(core, c)
-  } else {
-    writeByPieces(core, moving)
-  }
-}
-
-function writeByPieces(core: Core, moving: boolean): void {
-  const { settings, trajectory, position, flush, written } = core
+/** Writes the lines for u[0 … n) as the loops of the chunk need it; `moving` while the ramps move. */
+export function writeByPieces(core: Core, moving: boolean): void {
+  const { settings, trajectory, position, written } = core
   const { count, starts } = trajectory.runs
   const longest = longestPiece(core)
   for (let k = 0; k < count; k++) {
@@ -33,7 +21,7 @@ function writeByPieces(core: Core, moving: boolean): void {
       const end = Math.min(j + longest, runEnd)
       for (let c = 0; c < settings.lines; c++) readLoop(core, c, k, j, end, moving)
       feed(core, j, end, moving)
-      for (let c = 0; c < settings.lines; c++) writeLine(core.lines[c]!, position + j, written[c]!, j, end - j, flush)
+      for (let c = 0; c < settings.lines; c++) writeLine(core.lines[c]!, position + j, written[c]!, j, end - j)
     }
   }
 }

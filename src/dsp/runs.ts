@@ -1,5 +1,11 @@
 // A chunk cut at its update intervals: inside a run every read's delay is a straight line.
+//
+// Reads: voice v of channel c is c · MAX_VOICES + v; the loop of line c is LOOPS + c.
 import { CHUNK } from './line.ts'
+
+export const MAX_VOICES = 8
+export const LOOPS = 2 * MAX_VOICES
+export const READS = LOOPS + 2
 
 export interface Runs {
   count: number
@@ -7,17 +13,19 @@ export interface Runs {
   readonly starts: Int32Array
   /** How far into its update interval each run begins, samples. */
   readonly into: Int32Array
-  /** D of read r in run k at sample j of the chunk: from[r · CHUNK + k] + slope[r · CHUNK + k] · (into[k] + j − starts[k]). */
-  readonly from: Float64Array
-  readonly slope: Float64Array
+  /** D of read r where run k's interval begins, ends[k · READS + r], and where it ends, READS further on. */
+  readonly ends: Float64Array
+  /** 1 over the length of an interval, or 0 where delays stand still in it. With a = ends[k · READS + r] and b the next, D at sample j of the
+   * chunk is a + (b − a) · part · (into[k] + j − starts[k]). */
+  part: number
 }
 
-export function createRuns(reads: number): Runs {
+export function createRuns(): Runs {
   return {
     count: 0,
     starts: new Int32Array(CHUNK + 1),
     into: new Int32Array(CHUNK),
-    from: new Float64Array(reads * CHUNK),
-    slope: new Float64Array(reads * CHUNK),
+    ends: new Float64Array(READS * (CHUNK + 1)),
+    part: 0.5,
   }
 }

@@ -1,15 +1,10 @@
 // Where the sweep stands and what delay it gives every read: evaluated every `updateEvery` samples of absolute time, straight lines or
 // steps between. delays.ts makes the single samples of it.
-//
-// Reads: voice v of channel c is c · MAX_VOICES + v; the loop of line c is LOOPS + c.
 import { flatIndex } from '../set/flat.ts'
 import { CHUNK } from './line.ts'
-import { createRuns, type Runs } from './runs.ts'
-import { MAX_VOICES, type Settings } from './settings.ts'
+import { createRuns, LOOPS, MAX_VOICES, READS, type Runs } from './runs.ts'
+import type { Settings } from './settings.ts'
 import { frozenShapeValue, sweepShapeValue, wrapPhase } from './sweep.ts'
-
-export const LOOPS = 2 * MAX_VOICES
-export const READS = LOOPS + 2
 
 const RATE = flatIndex('sweep.rateHz')
 const START_PHASE = flatIndex('sweep.startPhase')
@@ -35,8 +30,11 @@ export interface Trajectory {
   held: boolean
   /** Largest delay the line can give, samples. */
   readonly longest: number
-  /** Whether the loops are read; their limits count only then. */
+  /** Whether the loops are read. */
   loops: boolean
+  /** The reads in use. */
+  readonly used: Int32Array
+  usedCount: number
   /** Samples for which some read was held at a limit. */
   heldDelays: number
   /** The chunk at hand in straight runs. */
@@ -61,8 +59,10 @@ export function createTrajectory(fs: number, longest: number): Trajectory {
     held: false,
     longest,
     loops: false,
+    used: new Int32Array(READS),
+    usedCount: 0,
     heldDelays: 0,
-    runs: createRuns(READS),
+    runs: createRuns(),
     delays: new Float64Array(CHUNK),
   }
 }
@@ -97,31 +97,59 @@ export function startPhase(t: Trajectory, s: Settings): void {
   t.since = 0
 }
 
-/** Evaluates D of every read at sample n, before glide and limits, into `to`, after moving that to `from`. Order of operations: sweepPhase. */
-function evaluate(t: Trajectory, s: Settings, n: number): void {
+/** Evaluates D of every read at sample n, before glide and limits, into a row of reads that begins at `row`; what was toInside becomes fromInside. */
+export function evaluate(t: Trajectory, s: Settings, n: number, into: Float64Array, row: number): void {
+  t.fromInside = t.toInside
+  t.toInside = true
+  if (s.plainSine) evaluateSine(t, s, n, into, row)
+  else evaluateShape(t, s, n, into, row)
+}
+
+/** Any shape. Order of operations: sweepPhase. */
+function evaluateShape(t: Trajectory, s: Settings, n: number, into: Float64Array, row: number): void {
   const { sweep, voices, outputs, lines, centreMs, voicePhase, channelPhase } = s
-  const { from, to } = t
-  const { count } = voices
   const phase = phaseAt(t, s, n)
-  let inside = true
   for (let c = 0; c < outputs; c++) {
-    for (let v = 0; v < count; v++) {
+    for (let v = 0; v < voices.count; v++) {
       const at = phase + voicePhase[v]! + channelPhase[c]!
       const shape = t.held ? frozenShapeValue(sweep, at) : sweepShapeValue(sweep, at, v)
-      const r = c * MAX_VOICES + v
       const delay = toSamples(t, s, centreMs[v]!, shape)
-      from[r] = to[r]!
-      to[r] = delay
-      if (!(delay >= s.voiceLeast && delay <= t.longest)) inside = false
-      if (v === 0 && c < lines) {
-        const loop = (s.loopMoves ? toSamples(t, s, s.baseMs, shape) : (s.baseMs * t.fs) / 1000) - s.loopLess
-        from[LOOPS + c] = to[LOOPS + c]!
-        to[LOOPS + c] = loop
-        if (t.loops && !(loop >= s.loopLeast && loop <= t.longest)) inside = false
-      }
+      into[row + c * MAX_VOICES + v] = delay
+      if (!(delay >= s.voiceLeast && delay <= t.longest)) t.toInside = false
+      if (v > 0 || c >= lines || !t.loops) continue
+      const loop = (s.loopMoves ? toSamples(t, s, s.baseMs, shape) : (s.baseMs * t.fs) / 1000) - s.loopLess
+      into[row + LOOPS + c] = loop
+      if (!(loop >= s.loopLeast && loop <= t.longest)) t.toInside = false
     }
   }
-  t.fromInside = t.toInside
+}
+
+/**
+ * The sine by the addition theorem: one sine and cosine for all voices, a few units in the last place from the direct formula. A read that
+ * jumps with its delay would need exactly the delay an independent model has; a continuous one does not.
+ */
+function evaluateSine(t: Trajectory, s: Settings, n: number, into: Float64Array, row: number): void {
+  const { voices, outputs, lines, centre, depth, phaseCos, phaseSin, voiceLeast } = s
+  const { longest } = t
+  const angle = 2 * Math.PI * wrapPhase(phaseAt(t, s, n))
+  const sine = Math.sin(angle)
+  const cosine = Math.cos(angle)
+  let inside = true
+  for (let c = 0; c < outputs; c++) {
+    for (let v = 0; v < voices.count; v++) {
+      const r = c * MAX_VOICES + v
+      const delay = centre[v]! + depth * (sine * phaseCos[r]! + cosine * phaseSin[r]!)
+      into[row + r] = delay
+      if (!(delay >= voiceLeast && delay <= longest)) inside = false
+    }
+  }
+  for (let c = 0; t.loops && c < lines; c++) {
+    const r = c * MAX_VOICES
+    const moved = s.loopMoves ? s.base + depth * (sine * phaseCos[r]! + cosine * phaseSin[r]!) : s.base
+    const delay = moved - s.loopLess
+    into[row + LOOPS + c] = delay
+    if (!(delay >= s.loopLeast && delay <= longest)) inside = false
+  }
   t.toInside = inside
 }
 
@@ -139,21 +167,31 @@ export function enterInterval(t: Trajectory, s: Settings, n: number): void {
   const start = n - (n % every)
   if (t.interval === start) return
   if (!rampsBetween(s)) {
-    evaluate(t, s, start)
+    evaluate(t, s, start, t.to, 0)
     t.fromInside = t.toInside
   } else {
-    if (t.interval < 0 || t.interval + every !== start) evaluate(t, s, start)
-    evaluate(t, s, start + every)
+    if (t.interval >= 0 && t.interval + every === start) t.from.set(t.to)
+    else evaluate(t, s, start, t.from, 0)
+    evaluate(t, s, start + every, t.to, 0)
   }
   t.interval = start
 }
 
 /** Whether the loops are read from the next chunk on. */
-export function switchLoops(t: Trajectory, on: boolean): void {
+export function switchLoops(t: Trajectory, s: Settings, on: boolean): void {
   if (on === t.loops) return
   t.loops = on
-  // What was evaluated did not heed the loops' limits.
+  listReads(t, s)
+  // The reads that come in were not evaluated.
   t.interval = -1
+}
+
+/** Lists the reads in use: voices of every channel, and the loops when they are on. */
+export function listReads(t: Trajectory, s: Settings): void {
+  let count = 0
+  for (let c = 0; c < s.outputs; c++) for (let v = 0; v < s.voices.count; v++) t.used[count++] = c * MAX_VOICES + v
+  if (t.loops) for (let c = 0; c < s.lines; c++) t.used[count++] = LOOPS + c
+  t.usedCount = count
 }
 
 /** D of read r at sample n of the interval entered, before glide and limits. */
@@ -166,28 +204,28 @@ function between(t: Trajectory, s: Settings, r: number, n: number): number {
 export function noteDelays(t: Trajectory, s: Settings, n: number): void {
   enterInterval(t, s, n)
   t.noted.fill(Number.NaN)
-  for (let r = 0; r < READS; r++) if (inUse(s, r)) t.noted[r] = between(t, s, r, n) + t.offset[r]!
+  for (let i = 0; i < t.usedCount; i++) {
+    const r = t.used[i]!
+    t.noted[r] = between(t, s, r, n) + t.offset[r]!
+  }
 }
 
 /** After a change of settings or phase at sample n: evaluates afresh, and lets every read glide there from `noted`, or jump where that has none. */
 export function glideFrom(t: Trajectory, s: Settings, n: number, noted: Float64Array): void {
-  jump(t)
+  jump(t, s)
   enterInterval(t, s, n)
-  for (let r = 0; r < READS; r++) {
-    if (!inUse(s, r) || Number.isNaN(noted[r])) continue
+  for (let i = 0; i < t.usedCount; i++) {
+    const r = t.used[i]!
+    if (Number.isNaN(noted[r])) continue
     t.offset[r] = noted[r]! - between(t, s, r, n)
     if (t.offset[r] !== 0) t.gliding = true
   }
 }
 
 /** After a change of settings or phase: evaluates afresh at the next chunk, every read at once where it belongs. */
-export function jump(t: Trajectory): void {
+export function jump(t: Trajectory, s: Settings): void {
+  listReads(t, s)
   t.interval = -1
   t.offset.fill(0)
   t.gliding = false
-}
-
-function inUse(s: Settings, r: number): boolean {
-  if (r >= LOOPS) return r - LOOPS < s.lines
-  return r % MAX_VOICES < s.voices.count && (r < MAX_VOICES || s.outputs === 2)
 }
