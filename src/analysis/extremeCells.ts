@@ -46,6 +46,11 @@ export function searchCell(search: Search, a: PowerSample, b: PowerSample, halve
 
 export function samplePower({ transfer, channel, out }: Search, omega: number): PowerSample {
   transferAt(transfer, omega, out, channel)
+  return powerSample(out, channel, omega)
+}
+
+/** |H|² and its slope from H and dH/dω of one channel. */
+export function powerSample(out: Float64Array, channel: number, omega: number): PowerSample {
   const re = out[4 * channel] as number
   const im = out[4 * channel + 1] as number
   return { omega, power: re * re + im * im, slope: 2 * (re * (out[4 * channel + 2] as number) + im * (out[4 * channel + 3] as number)) }

@@ -1,4 +1,4 @@
-// Every notch and peak of a frozen response: roots of d|H|²/dω, found by sign on a grid of ten points per period of the
+// Every notch and peak of a frozen response: roots of d|H|²/dω, found by sign on a grid of fourteen points per period of the
 // longest delay and refined in their cells. |H|² and not its logarithm: its derivative passes a null in a straight line.
 import {
   departsFromCubic,
@@ -6,6 +6,7 @@ import {
   type FoundExtreme,
   hidesPair,
   type PowerSample,
+  powerSample,
   type Search,
   samplePower,
   searchCell,
@@ -43,21 +44,34 @@ export function frozenExtremes(frozen: Frozen, options: { readonly maxHz?: numbe
   const nyquist = frozen.sampleRate / 2
   const maxHz = options.maxHz ?? nyquist
   if (!(maxHz > 0 && maxHz <= nyquist)) throw new RangeError(`maxHz must be in (0, ${nyquist}] Hz, got ${maxHz}`)
+  const perHz = (2 * Math.PI) / frozen.sampleRate
+  const tolerance = perHz * (options.withinHz ?? ROOT_HZ)
+  // The searches use a transfer of their own: the grid's is stepped from point to point.
   const transfer = transferOf(frozen)
-  const tolerance = (2 * Math.PI * (options.withinHz ?? ROOT_HZ)) / frozen.sampleRate
-  // What stands at maxHz itself turns within the tolerance of it.
-  const grid = sampleGrid(transfer, Math.min(Math.PI, (2 * Math.PI * maxHz) / frozen.sampleRate + tolerance), lowestCorner(frozen))
-  return frozen.channels.flatMap((_, channel) => {
+  const trails = frozen.channels.map((_, channel): Trail => {
     const search: Search = { transfer, channel, tolerance, out: new Float64Array(4 * transfer.channels), found: [] }
-    return channelExtremes(search, grid, maxHz)
+    return { search, a: null, b: null, bentBefore: false, largest: 0 }
   })
+  // What stands at maxHz itself turns within the tolerance of it.
+  walkGrid(transferOf(frozen), Math.min(Math.PI, perHz * maxHz + tolerance), lowestCorner(frozen), trails)
+  return trails.flatMap((trail) =>
+    ended(trail, maxHz === nyquist).map(({ kind, omega, power }) => ({
+      channel: trail.search.channel,
+      kind,
+      frequencyHz: Math.min(maxHz, omega / perHz),
+      db: decibels(power),
+    })),
+  )
 }
 
-interface Grid {
-  readonly omegas: Float64Array
-  /** Per channel. */
-  readonly powers: readonly Float64Array[]
-  readonly slopes: readonly Float64Array[]
+/** One channel on its way up the grid: its last two samples, and what was found below them. */
+interface Trail {
+  readonly search: Search
+  a: PowerSample | null
+  b: PowerSample | null
+  /** The cubic through the neighbours of a did not meet a. */
+  bentBefore: boolean
+  largest: number
 }
 
 /** ω below which a filter of the path shapes the response, where the delays alone would ask for no points. */
@@ -66,69 +80,54 @@ function lowestCorner({ loop, wetTone }: Frozen): number {
   return Math.min(1, ...poles.map((pole) => (pole === null ? 1 : -Math.log(pole))))
 }
 
-function sampleGrid(t: Transfer, maxOmega: number, corner: number): Grid {
+/** Every grid point of (0, maxOmega] in rising order to every trail. */
+function walkGrid(t: Transfer, maxOmega: number, corner: number, trails: readonly Trail[]): void {
   const cells = Math.max(8, Math.ceil((maxOmega * POINTS_PER_PERIOD * t.longest) / (2 * Math.PI)))
   const step = maxOmega / cells
+  const out = new Float64Array(4 * t.channels)
+  const visit = (omega: number) => {
+    for (const trail of trails) advance(trail, powerSample(out, trail.search.channel, omega))
+  }
   // Both 0 and π are level by symmetry: the grid stays a hair inside.
   const inside = step * 1e-3
-  const low: number[] = []
-  for (let omega = Math.min(inside, corner / 20); omega < step; omega *= 1.25) low.push(omega)
-  const total = low.length + cells
-  const perChannel = () => Array.from({ length: t.channels }, () => new Float64Array(total))
-  const grid = { omegas: new Float64Array(total), powers: perChannel(), slopes: perChannel() }
-  const out = new Float64Array(4 * t.channels)
-  const keep = (i: number, omega: number) => {
-    grid.omegas[i] = omega
-    for (let c = 0; c < t.channels; c++) {
-      const re = out[4 * c] as number
-      const im = out[4 * c + 1] as number
-      ;(grid.powers[c] as Float64Array)[i] = re * re + im * im
-      ;(grid.slopes[c] as Float64Array)[i] = 2 * (re * (out[4 * c + 2] as number) + im * (out[4 * c + 3] as number))
-    }
-  }
-  low.forEach((omega, i) => {
+  for (let omega = Math.min(inside, corner / 20); omega < step; omega *= 1.25) {
     transferAt(t, omega, out)
-    keep(i, omega)
-  })
+    visit(omega)
+  }
   for (let k = 1; k < cells; k++) {
     if (k % FRESH_EVERY === 1) transferGrid(t, k * step, step, out)
     else transferStep(t, out)
-    keep(low.length + k - 1, k * step)
+    visit(k * step)
   }
   const last = Math.min(maxOmega, Math.PI - inside)
   transferAt(t, last, out)
-  keep(total - 1, last)
-  return grid
+  visit(last)
 }
 
-function channelExtremes(search: Search, grid: Grid, maxHz: number): Extreme[] {
-  const { channel, transfer } = search
-  const { omegas } = grid
-  const powers = grid.powers[channel] as Float64Array
-  const slopes = grid.slopes[channel] as Float64Array
-  const at = (i: number): PowerSample => ({ omega: omegas[i] as number, power: powers[i] as number, slope: slopes[i] as number })
-  let a = at(0)
-  let bentBefore = false
-  for (let i = 1; i < omegas.length; i++) {
-    const b = at(i)
-    // The point between two cells against the cubic through their outer ends needs no evaluation of its own.
-    const bent = i + 1 < omegas.length && departsFromCubic(a, b, at(i + 1))
-    const halve = bent || bentBefore
-    if (!isFlat(a, b) && (halve || turns(a, b) || hidesPair(a, b))) searchCell(search, a, b, halve)
-    bentBefore = bent
-    a = b
-  }
-  let largest = 0
-  for (const power of powers) largest = Math.max(largest, power)
+function advance(trail: Trail, next: PowerSample): void {
+  const { a, b } = trail
+  trail.largest = Math.max(trail.largest, next.power)
+  // The point between two cells against the cubic through their outer ends needs no evaluation of its own.
+  if (a && b) settle(trail, a, b, departsFromCubic(a, b, next))
+  trail.a = b
+  trail.b = next
+}
+
+/** Looks into the cell from a to b, where `bent` says how the cubic met b. */
+function settle(trail: Trail, a: PowerSample, b: PowerSample, bent: boolean): void {
+  const halve = bent || trail.bentBefore
+  if (!isFlat(a, b) && (halve || turns(a, b) || hidesPair(a, b))) searchCell(trail.search, a, b, halve)
+  trail.bentBefore = bent
+}
+
+function ended(trail: Trail, toNyquist: boolean): FoundExtreme[] {
+  const { a, b, search } = trail
+  if (a && b) settle(trail, a, b, false)
+  let { largest } = trail
   for (const { power } of search.found) largest = Math.max(largest, power)
   const found = significant(search.found, largest)
-  if (maxHz === transfer.sampleRate / 2) found.push(...atNyquist(search, a, found.at(-1), largest))
-  return found.map(({ kind, omega, power }) => ({
-    channel,
-    kind,
-    frequencyHz: Math.min(maxHz, (omega * transfer.sampleRate) / (2 * Math.PI)),
-    db: decibels(power),
-  }))
+  if (toNyquist && b) found.push(...atNyquist(search, b, found.at(-1), largest))
+  return found
 }
 
 /** Nothing but rounding between a and b: an all-pass, or a voice alone read to the nearest sample. */
