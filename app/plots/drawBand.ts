@@ -8,33 +8,58 @@ export interface Band {
   readonly high: Float64Array
 }
 
-export interface BandEdges {
-  readonly fill: Path2D
-  readonly top: Path2D
-  readonly bottom: Path2D
-}
-
-/** Top, bottom and the closed band between them over the last `low.length` of `count` columns, joined at the columns' middles. */
-export function bandEdges(box: PlotBox, levels: Levels, { low, high }: Band, count: number): BandEdges {
-  const width = box.width / count
-  const start = box.left + box.width - low.length * width
-  const edge = (values: Float64Array): Point[] => {
-    const points = Array.from(values, (db, i): Point => [start + (i + 0.5) * width, levelY(box, levels, db)])
-    const [first] = points
-    const last = points.at(-1)
-    return first && last ? [[start, first[1]], ...points, [box.left + box.width, last[1]]] : []
-  }
-  const upper = edge(high)
-  const lower = edge(low)
-  return { fill: through([...upper, ...lower.toReversed()]), top: through(upper), bottom: through(lower) }
-}
-
-type Point = readonly [number, number]
-
-function through(points: readonly Point[]): Path2D {
+/** The band over the last `low.length` of `count` columns, its edges joined at the columns' middles. */
+export function bandFill(box: PlotBox, levels: Levels, { low, high }: Band, count: number): Path2D {
   const path = new Path2D()
-  for (const [x, y] of points) path.lineTo(x, y)
+  edge(path, box, levels, high, count, 1)
+  edge(path, box, levels, low, count, -1)
   return path
+}
+
+/** Its two edges as lines. */
+export function bandEdges(box: PlotBox, levels: Levels, { low, high }: Band, count: number, dash?: Dash): Path2D {
+  const path = new Path2D()
+  for (const values of [high, low]) {
+    if (dash) dashedEdge(path, box, levels, values, count, dash)
+    else edge(path, box, levels, values, count, 1, true)
+  }
+  return path
+}
+
+/** Columns drawn and left out, in turns: dashes that go by the axis, not by the length of a steep line. */
+export interface Dash {
+  readonly on: number
+  readonly off: number
+}
+
+export const DASH: Dash = { on: 5, off: 4 }
+
+export const isDrawn = ({ on, off }: Dash, column: number): boolean => column % (on + off) < on
+
+/** Adds an edge to a path, from left to right (direction 1) or back (−1); it reaches from the first column's start to the last one's end. */
+function edge(path: Path2D, box: PlotBox, levels: Levels, values: Float64Array, count: number, direction: 1 | -1, anew = false): void {
+  const length = values.length
+  if (length === 0) return
+  const width = box.width / count
+  const start = box.left + box.width - length * width
+  const ends = [start, box.left + box.width]
+  const [from, to] = direction === 1 ? [0, length - 1] : [length - 1, 0]
+  const first = levelY(box, levels, values[from] as number)
+  if (anew) path.moveTo(ends[direction === 1 ? 0 : 1] as number, first)
+  else path.lineTo(ends[direction === 1 ? 0 : 1] as number, first)
+  for (let i = from; i >= 0 && i < length; i += direction) path.lineTo(start + (i + 0.5) * width, levelY(box, levels, values[i] as number))
+  path.lineTo(ends[direction === 1 ? 1 : 0] as number, levelY(box, levels, values[to] as number))
+}
+
+function dashedEdge(path: Path2D, box: PlotBox, levels: Levels, values: Float64Array, count: number, dash: Dash): void {
+  const width = box.width / count
+  const before = count - values.length
+  for (let i = 0; i + 1 < values.length; i++) {
+    if (!isDrawn(dash, before + i)) continue
+    const x = box.left + (before + i + 0.5) * width
+    if (i === 0 || !isDrawn(dash, before + i - 1)) path.moveTo(x, levelY(box, levels, values[i] as number))
+    path.lineTo(x + width, levelY(box, levels, values[i + 1] as number))
+  }
 }
 
 const WASH = 0.12
@@ -43,15 +68,14 @@ const OUTLINE = 0.35
 /** Wash and outline of everything the sweep reaches, over all columns. */
 export function drawWash({ ctx, box, theme, levels }: Surface, band: Band): void {
   clipTo(ctx, box)
-  const { fill, top, bottom } = bandEdges(box, levels, band, band.low.length)
+  const count = band.low.length
   ctx.fillStyle = theme.now
   ctx.strokeStyle = theme.now
   ctx.globalAlpha = WASH
-  ctx.fill(fill)
+  ctx.fill(bandFill(box, levels, band, count))
   ctx.globalAlpha = OUTLINE
   ctx.lineWidth = box.ratio
-  ctx.stroke(top)
-  ctx.stroke(bottom)
+  ctx.stroke(bandEdges(box, levels, band, count))
 }
 
 export function clipTo(ctx: CanvasRenderingContext2D, { left, top, width, height }: PlotBox): void {

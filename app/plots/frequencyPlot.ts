@@ -8,7 +8,7 @@ import { analysis } from '../workers/analysisClient.ts'
 import type { JobReply } from '../workers/analysisProtocol.ts'
 import { axisColumns, type Columns, frequencyAt, sameColumns } from './columns.ts'
 import { axis, DECIBEL_STEPS, evenSplits, frequencyLabel, frequencySplits } from './host/axes.ts'
-import { middleText } from './host/corner.ts'
+import { cornerText, middleText } from './host/corner.ts'
 import { createPlot, type PlotBox } from './host/createPlot.ts'
 import { plotCursor } from './host/plotCursor.ts'
 import type { PlotTheme } from './host/theme.ts'
@@ -28,6 +28,8 @@ export interface FrequencyPlotSpec<L extends LiveKind, W extends WholeKind> {
   levels(live: JobReply<L> | null, whole: JobReply<W> | null): Levels
   drawWhole(on: Surface, whole: JobReply<W>): void
   drawLive(on: Surface, live: JobReply<L>): void
+  /** Words in the top right corner. */
+  corner(live: JobReply<L>): string
   /** What is read at a frequency. */
   cursorWords(at: Under<L>): string
   restWords(live: JobReply<L>, whole: JobReply<W> | null): string
@@ -61,6 +63,7 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
   let live: JobReply<L> | null = null
   let whole: JobReply<W> | null = null
   let problem = ''
+  let corner = ''
   let asked = { set: currentSet(), position: -1, columns }
   let dirty = false
   let unread = false
@@ -78,6 +81,9 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
       problem = ''
       dirty = true
       if (whole === null) fitLevels()
+      const words = spec.corner(reply)
+      if (words !== corner) plot.redraw()
+      corner = words
     },
     failed,
   )
@@ -85,8 +91,8 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
     spec.whole,
     (reply) => {
       whole = reply
-      dirty = true
       fitLevels()
+      plot.redraw()
     },
     failed,
   )
@@ -112,6 +118,10 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
       if (whole) spec.drawWhole({ ctx, box, theme, levels }, whole)
     },
     over: (ctx, box, theme) => {
+      cornerText(ctx, box, theme, 'topLeft', 'dB')
+      cornerText(ctx, box, theme, 'topRight', corner)
+    },
+    live: (ctx, box, theme) => {
       if (problem !== '') middleText(ctx, box, theme, problem)
       else if (live) spec.drawLive({ ctx, box, theme, levels }, live)
     },
@@ -151,16 +161,18 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
     reading(cursor === null ? rest : `${underCursor(cursor)}\u2003${rest}`)
   }
 
-  const stopFrames = onFrame((timeMs) => {
+  const stopDrawing = onFrame(() => {
     const set = currentSet()
     const position = shownPosition()
     if (set !== asked.set || position !== asked.position || columns !== asked.columns) {
       asked = { set, position, columns }
       lives.ask(asked)
     }
-    if (dirty) plot.redraw()
+    if (dirty) plot.drawLive()
     unread ||= dirty
     dirty = false
+  }, 'canvas')
+  const stopReading = onFrame((timeMs) => {
     if (!unread || timeMs - readAt < READING_MS) return
     unread = false
     readAt = timeMs
@@ -178,7 +190,8 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
     numbers: () => (live ? spec.numbers(live, whole) : { head: [], columns: [] }),
     picture: plot.picture,
     destroy() {
-      stopFrames()
+      stopDrawing()
+      stopReading()
       stopSet()
       lives.stop()
       wholes.stop()

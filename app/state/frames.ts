@@ -1,33 +1,26 @@
 // The one animation-frame loop. Plots, meters and moving values register here instead of asking for frames
-// themselves, so that a frame's work is one number that can be measured. It sleeps while nobody listens.
+// themselves, so that what a frame costs can be seen in one place. It sleeps while nobody listens.
 
 export type FrameTask = (timeMs: number) => void
 
-const tasks = new Set<FrameTask>()
+/** Canvases draw first: text on a canvas makes the browser lay out what the page has changed before it. */
+export type FramePhase = 'canvas' | 'page'
+
+const tasks: Readonly<Record<FramePhase, Set<FrameTask>>> = { canvas: new Set(), page: new Set() }
 let handle = 0
 
-/** Main-thread work of the last 1,024 frames, ms; ring, newest at (count − 1) % length. For the benchmark. */
-export const frameWork = { ms: new Float64Array(1024), count: 0 }
-
 function run(timeMs: number) {
-  handle = tasks.size > 0 ? requestAnimationFrame(run) : 0
-  const start = performance.now()
-  for (const task of tasks) task(timeMs)
-  // uPlot draws in a microtask that a task queued before this one: two turns later its drawing and hooks are done.
-  queueMicrotask(() => queueMicrotask(() => record(performance.now() - start)))
-}
-
-function record(ms: number) {
-  frameWork.ms[frameWork.count % frameWork.ms.length] = ms
-  frameWork.count += 1
+  handle = tasks.canvas.size + tasks.page.size > 0 ? requestAnimationFrame(run) : 0
+  for (const task of tasks.canvas) task(timeMs)
+  for (const task of tasks.page) task(timeMs)
 }
 
 /** Runs `task` once a frame until the returned function is called. */
-export function onFrame(task: FrameTask): () => void {
-  tasks.add(task)
+export function onFrame(task: FrameTask, phase: FramePhase = 'page'): () => void {
+  tasks[phase].add(task)
   if (handle === 0) handle = requestAnimationFrame(run)
   return () => {
-    tasks.delete(task)
+    tasks[phase].delete(task)
   }
 }
 

@@ -3,6 +3,7 @@
 import uPlot from 'uplot'
 import 'uplot/dist/uPlot.min.css'
 import './plot.css'
+import { canvasFont } from './corner.ts'
 import { onPlotTheme, type PlotTheme, plotTheme } from './theme.ts'
 
 /** The plotting area in canvas pixels; `ratio` canvas pixels make a CSS pixel. */
@@ -22,8 +23,11 @@ export interface PlotSpec {
   /** Without the x series. */
   readonly series?: uPlot.Series[]
   readonly data?: uPlot.AlignedData
+  /** Drawn with axes and series, when they are: what changes with the set. */
   readonly under?: Layer
   readonly over?: Layer
+  /** Drawn on a canvas of its own in front, as often as drawLive is called: what changes with the sound. The small text is set. */
+  readonly live?: Layer
   /** Part of the width where the cursor stands, 0 to 1; null when it left. */
   onCursor?(part: number | null): void
   /** CSS size of the plotting area after it changed. */
@@ -32,8 +36,10 @@ export interface PlotSpec {
 
 export interface HostedPlot {
   readonly u: uPlot
-  /** Draws again at the end of this turn; with `axes`, their ranges and labels too. */
-  redraw(axes?: boolean): void
+  /** Draws axes, series and layers again, at the end of this turn. */
+  redraw(): void
+  /** Draws the live layer again, at once. */
+  drawLive(): void
   /** Puts the cursor at a part of the width; null takes it away. */
   cursorAt(part: number | null): void
   picture(): HTMLCanvasElement
@@ -43,12 +49,33 @@ export interface HostedPlot {
 const SMALLEST_PX = 40
 
 export function createPlot(element: HTMLElement, spec: PlotSpec): HostedPlot {
-  const layer = (draw: Layer | undefined) => (u: uPlot) => {
+  const front = document.createElement('canvas')
+  front.className = 'cw-plot-front'
+  const frontCtx = front.getContext('2d')
+  if (!frontCtx) throw new TypeError('this browser gives no canvas to draw on')
+
+  let frontFont = ''
+  const layer = (draw: Layer | undefined, ctx: CanvasRenderingContext2D | null) => (u: uPlot) => {
     if (!draw) return
     const { left, top, width, height } = u.bbox
-    u.ctx.save()
-    draw(u.ctx, { left, top, width, height, ratio: uPlot.pxRatio }, plotTheme(), u)
-    u.ctx.restore()
+    const on = ctx ?? u.ctx
+    on.save()
+    draw(on, { left, top, width, height, ratio: uPlot.pxRatio }, plotTheme(), u)
+    on.restore()
+  }
+  const drawLive = (u: uPlot) => {
+    if (!spec.live) return
+    // Setting a size empties the canvas, and costs even when it stays.
+    if (front.width !== u.ctx.canvas.width || front.height !== u.ctx.canvas.height) {
+      front.width = u.ctx.canvas.width
+      front.height = u.ctx.canvas.height
+      frontFont = ''
+    } else frontCtx.clearRect(0, 0, front.width, front.height)
+    // Setting a font makes the browser lay the page out: once, not every frame.
+    const font = canvasFont(plotTheme(), uPlot.pxRatio)
+    if (font !== frontFont) frontCtx.font = font
+    frontFont = font
+    layer(spec.live, frontCtx)(u)
   }
   let over = false
   const size = sizeOf(element)
@@ -62,8 +89,8 @@ export function createPlot(element: HTMLElement, spec: PlotSpec): HostedPlot {
       padding: [6, 16, 0, 0],
       cursor: { y: false, points: { show: false }, drag: { x: false, y: false } },
       hooks: {
-        drawAxes: [layer(spec.under)],
-        draw: [layer(spec.over)],
+        drawAxes: [layer(spec.under, null)],
+        draw: [layer(spec.over, null), drawLive],
         setCursor: [
           (plot) => {
             const left = plot.cursor.left ?? -1
@@ -79,6 +106,8 @@ export function createPlot(element: HTMLElement, spec: PlotSpec): HostedPlot {
     element,
   )
 
+  if (spec.live) u.over.before(front)
+
   const observer = new ResizeObserver(() => {
     const next = sizeOf(element)
     if (next.width !== u.width || next.height !== u.height) u.setSize(next)
@@ -89,9 +118,10 @@ export function createPlot(element: HTMLElement, spec: PlotSpec): HostedPlot {
 
   return {
     u,
-    redraw: (axes = false) => u.redraw(axes, axes),
+    redraw: () => u.redraw(false, false),
+    drawLive: () => drawLive(u),
     cursorAt: (part) => u.setCursor({ left: part === null ? -10 : part * u.over.clientWidth, top: part === null ? -10 : 1 }),
-    picture: () => onPaper(u),
+    picture: () => onPaper([u.ctx.canvas, ...(spec.live ? [front] : [])]),
     destroy() {
       observer.disconnect()
       stopTheme()
@@ -120,14 +150,14 @@ function touchCursor(u: uPlot): () => void {
   }
 }
 
-function onPaper(u: uPlot): HTMLCanvasElement {
+function onPaper(layers: readonly HTMLCanvasElement[]): HTMLCanvasElement {
   const canvas = document.createElement('canvas')
-  canvas.width = u.ctx.canvas.width
-  canvas.height = u.ctx.canvas.height
+  canvas.width = layers[0]?.width ?? 0
+  canvas.height = layers[0]?.height ?? 0
   const ctx = canvas.getContext('2d')
   if (!ctx) throw new TypeError('this browser gives no canvas to draw the picture on')
   ctx.fillStyle = plotTheme().paper
   ctx.fillRect(0, 0, canvas.width, canvas.height)
-  ctx.drawImage(u.ctx.canvas, 0, 0)
+  for (const layer of layers) ctx.drawImage(layer, 0, 0)
   return canvas
 }

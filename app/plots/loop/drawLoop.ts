@@ -1,9 +1,9 @@
 // The open loop at this instant, the limit it must stay under, and the poles it makes.
 import type { LoopTrace, PoleMark } from '../../workers/analysisJobs/loop.ts'
 import { type Columns, partOf } from '../columns.ts'
-import { clipTo } from '../drawBand.ts'
+import { clipTo, DASH } from '../drawBand.ts'
 import type { Surface } from '../frequencyPlot.ts'
-import { canvasFont, cornerText, middleText } from '../host/corner.ts'
+import { middleText } from '../host/corner.ts'
 import { levelY } from '../levels.ts'
 import { hertz } from '../words.ts'
 import { NO_LOOP } from './loopWords.ts'
@@ -13,13 +13,11 @@ const DOT_PX = 3
 
 export function drawLoop(surface: Surface, trace: LoopTrace): void {
   const { ctx, box, theme } = surface
-  cornerText(ctx, box, theme, 'topLeft', 'dB')
   if (trace.largest === null) {
     middleText(ctx, box, theme, NO_LOOP)
     return
   }
   drawLimit(surface)
-  cornerText(ctx, box, theme, 'topRight', cornerWords(trace))
   ctx.save()
   clipTo(ctx, box)
   ctx.lineJoin = 'round'
@@ -30,14 +28,15 @@ export function drawLoop(surface: Surface, trace: LoopTrace): void {
   if (second && trace.differs) {
     ctx.strokeStyle = theme.second
     ctx.lineWidth = box.ratio
-    ctx.setLineDash([5 * box.ratio, 4 * box.ratio])
+    ctx.setLineDash([DASH.on * box.ratio, DASH.off * box.ratio])
     ctx.stroke(curve(surface, second))
   }
   ctx.restore()
   drawPoles(surface, trace.columns, trace.poles)
 }
 
-function cornerWords({ differs }: LoopTrace): string {
+export function loopCorner({ differs, largest }: LoopTrace): string {
+  if (largest === null) return ''
   const parts = ['dots: poles', 'shaded: wherever the sweep stands']
   if (differs) parts.unshift('dashed: second line')
   return parts.join(' · ')
@@ -52,7 +51,6 @@ function drawLimit({ ctx, box, theme, levels }: Surface): void {
   ctx.moveTo(box.left, y)
   ctx.lineTo(box.left + box.width, y)
   ctx.stroke()
-  ctx.font = canvasFont(theme, box.ratio)
   ctx.fillStyle = theme.ink
   ctx.textAlign = 'right'
   ctx.textBaseline = 'bottom'
@@ -70,7 +68,6 @@ function curve({ box, levels }: Surface, db: Float64Array): Path2D {
 
 function drawPoles({ ctx, box, theme, levels }: Surface, columns: Columns, poles: readonly PoleMark[]): void {
   const { ratio } = box
-  ctx.font = canvasFont(theme, ratio)
   ctx.textAlign = 'center'
   ctx.textBaseline = 'top'
   for (const { frequencyHz, db, labelled } of poles) {

@@ -2,7 +2,6 @@
 import type { Mark } from '../../workers/analysisJobs/teeth.ts'
 import { type Columns, partOf } from '../columns.ts'
 import type { Surface } from '../frequencyPlot.ts'
-import { canvasFont } from '../host/corner.ts'
 import { levelY } from '../levels.ts'
 import { hertz } from '../words.ts'
 
@@ -11,7 +10,6 @@ const AWAY_PX = 5
 
 export function drawMarks({ ctx, box, theme, levels }: Surface, columns: Columns, marks: readonly Mark[]): void {
   const { ratio } = box
-  ctx.font = canvasFont(theme, ratio)
   ctx.textAlign = 'center'
   // A rim of paper keeps numbers legible over the curve.
   ctx.strokeStyle = theme.paper
