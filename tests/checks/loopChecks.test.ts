@@ -1,0 +1,136 @@
+import { describe, expect, it } from 'vitest'
+import { runChecks } from '../../src/checks/registry.ts'
+import type { Check } from '../../src/checks/types.ts'
+import { withAt } from '../../src/set/path.ts'
+import type { ParameterSet } from '../../src/set/types.ts'
+import { loopSet, shaper } from '../analysis/loopSets.ts'
+
+function checkOf(set: ParameterSet, id: Check['id']): Check {
+  const found = runChecks(set).find((check) => check.id === id)
+  if (!found) throw new Error(`${id} did not run`)
+  return found
+}
+
+describe('loop.stability', () => {
+  it.each([
+    [{ 'loop.feedback': 0.97 }, 'proven', 'holds'],
+    [{ 'loop.feedback': 0.99, 'loop.lowCutHz': 80, 'sweep.rateHz': 2, 'sweep.depthMs': 1.2 }, 'computed', 'holds'],
+    [{ 'loop.feedback': 0.9, 'loop.interpolation': 'allpass1' }, 'frozen', 'near'],
+    [{ 'loop.feedback': 1.2, 'loop.shaper': shaper('tanh') }, 'bounded', 'near'],
+    [{ 'loop.feedback': 1 }, 'diverges', 'fails'],
+  ])('%j is %s and %s', (fields, word, status) => {
+    expect(checkOf(loopSet(fields), 'loop.stability')).toMatchObject({ value: word, status })
+  })
+
+  it('says what reaches proven, in the text and as buttons whose change does reach it', () => {
+    const set = loopSet({ 'loop.feedback': 0.9, 'loop.interpolation': 'allpass1' })
+    const check = checkOf(set, 'loop.stability')
+    expect(check.text).toMatch(/Proven with feedback 0\.499, the loop read linearly or the loop delay fixed\.$/)
+    const words = check.mend?.map(({ path, value }) => checkOf(withAt(set, path, value), 'loop.stability').value)
+    expect(words).toEqual(['proven', 'proven', 'proven', 'computed'])
+    expect(check.mend?.map(({ label }) => label)).toEqual([
+      'Feedback 0.499',
+      'Read the loop linearly',
+      'Fix the loop delay',
+      'Feedback 0.807 (for this sweep)',
+    ])
+  })
+
+  it('states the level of a bounded loop in text and working', () => {
+    const check = checkOf(loopSet({ 'loop.feedback': 1.2, 'loop.shaper': shaper('tanh') }), 'loop.stability')
+    expect(check.text).toContain('within 2.169 times full scale')
+    expect(check.working.at(-2)?.result).toBe('A = 2.169')
+  })
+
+  it('shows every gain it tried, with formula, numbers, result and source', () => {
+    const { working } = checkOf(
+      loopSet({ 'loop.feedback': 0.99, 'loop.lowCutHz': 80, 'sweep.rateHz': 2, 'sweep.depthMs': 1.2 }),
+      'loop.stability',
+    )
+    expect(working.map(({ formula }) => formula.split(' ')[0])).toEqual(
+      expect.arrayContaining(['γ∞', 'ε', 'γ2', 'N', 'γN', '|g|', 'largest']),
+    )
+    for (const step of working) for (const part of Object.values(step)) expect(part).not.toBe('')
+  })
+})
+
+describe('loop.margin', () => {
+  // The gains are closed forms: |g| σ ρ∞ ‖f‖₁, |g| √(1 + C ε), |g|.
+  it.each([
+    [{ 'loop.feedback': 0.5 }, -20 * Math.log10(0.5), 'holds'],
+    [{ 'loop.feedback': -0.97 }, -20 * Math.log10(0.97), 'near'],
+    [
+      { 'loop.feedback': 0.95, 'loop.interpolation': 'lagrange3' },
+      -20 * Math.log10(0.95 * Math.sqrt(1 + 2.25 * (2 * Math.PI * 0.4 * 0.0025))),
+      'near',
+    ],
+    [{ 'loop.feedback': 0.99, 'loop.interpolation': 'lagrange3', 'loop.delay': 'fixed' }, -20 * Math.log10(0.99), 'near'],
+    [{ 'loop.feedback': 1 }, 0, 'fails'],
+    [{ 'loop.feedback': 1.2 }, -20 * Math.log10(1.2), 'fails'],
+    [{ 'loop.feedback': 1.2, 'loop.shaper': shaper('tanh') }, -20 * Math.log10(1.2), 'near'],
+    [{ 'loop.feedback': 0.4, 'loop.interpolation': 'allpass1' }, -20 * Math.log10(0.8), 'holds'],
+  ])('%j: %d dB, %s', (fields, db, status) => {
+    const check = checkOf(loopSet(fields), 'loop.margin')
+    expect(check.status).toBe(status)
+    // ε of a sweep evaluated every 16 samples is a chord, not the slope itself: a part in 10⁶.
+    expect(Math.abs((check.value as number) - db)).toBeLessThan(1e-6)
+  })
+
+  it('its button leads inside the margin', () => {
+    for (const fields of [
+      { 'loop.feedback': -0.97 },
+      { 'loop.feedback': 0.99, 'loop.lowCutHz': 80, 'sweep.rateHz': 2 },
+      { 'loop.feedback': 1.3, 'loop.interpolation': 'nearest', 'loop.lowCutHz': 40 },
+    ]) {
+      const set = loopSet(fields)
+      const [mend] = checkOf(set, 'loop.margin').mend ?? []
+      expect(checkOf(withAt(set, mend?.path as string, mend?.value), 'loop.margin').status).toBe('holds')
+    }
+  })
+
+  it('a set’s own limit moves limit and margin', () => {
+    const set = loopSet({ 'loop.feedback': 0.9, limits: { 'loop.margin': 0.5 } })
+    expect(checkOf(set, 'loop.margin')).toMatchObject({ limit: 0.5, status: 'near' })
+    expect(checkOf(loopSet({ 'loop.feedback': 0.9, limits: { 'loop.margin': 3 } }), 'loop.margin').status).toBe('fails')
+  })
+})
+
+describe('loop.poles and loop.ring', () => {
+  it('are those of the longest whole delay: |g|^(1/D) and −3 D/(fs log10|g|)', () => {
+    const set = loopSet({ 'loop.feedback': 0.97 })
+    expect(checkOf(set, 'loop.poles').value).toBeCloseTo(0.97 ** (1 / 696), 14)
+    const ring = checkOf(set, 'loop.ring')
+    expect(ring.value).toBeCloseTo((-3 * 696) / 48000 / Math.log10(0.97), 9)
+    expect(ring.status).toBe('near')
+  })
+
+  it('the ring’s button leads to 3 s', () => {
+    const set = loopSet({ 'loop.feedback': -0.97, 'loop.dampingHz': 9000 })
+    const [mend] = checkOf(set, 'loop.ring').mend ?? []
+    const ring = checkOf(withAt(set, 'loop.feedback', mend?.value), 'loop.ring')
+    expect(ring.status).toBe('holds')
+    expect(ring.value).toBeGreaterThan(2.7)
+  })
+
+  it('a loop that does not die away has no ring time and is near', () => {
+    expect(checkOf(loopSet({ 'loop.feedback': 1.1 }), 'loop.ring')).toMatchObject({ value: null, status: 'near' })
+  })
+
+  it('crossed lines too long to search through give what was found and a bound', () => {
+    const fields = { layout: 'stereo', 'line.baseMs': 180, 'sweep.depthMs': 9, 'loop.feedback': -0.9, 'loop.crossFeed': 0.3 }
+    const { value, text } = checkOf(loopSet({ ...fields, 'sweep.stereoPhase': 50, 'sweep.rateHz': 0 }), 'loop.poles')
+    expect(Array.isArray(value) || typeof value === 'number').toBe(true)
+    if (Array.isArray(value)) {
+      expect(value[0]).toBeLessThan(value[1] as number)
+      expect(text).toContain('between')
+    }
+  })
+})
+
+it('without feedback all four hold and say so', () => {
+  for (const check of runChecks(loopSet({})).filter(({ id }) => id.startsWith('loop.'))) {
+    expect(check.status).toBe('holds')
+    expect(check.text).toContain('No loop')
+    if (check.id !== 'loop.stability') expect(check.value).toBeNull()
+  }
+})
