@@ -103,6 +103,33 @@ for (const [what, text, why] of refusals) {
   })
 }
 
+test('Save as writes to a chosen place, and Save writes there again', async ({ page }) => {
+  // A place in the browser's own file system stands for one on the disk: same interface, no dialog of the system.
+  await page.evaluate(() => {
+    const picker = async () => (await navigator.storage.getDirectory()).getFileHandle('kept.set.json', { create: true })
+    Object.assign(window, { showSaveFilePicker: picker })
+  })
+  const kept = () =>
+    page.evaluate(async () => (await (await (await navigator.storage.getDirectory()).getFileHandle('kept.set.json')).getFile()).text())
+  await setMenu(page).click()
+  await page.getByRole('menuitem', { name: 'Save as…' }).click()
+  await expect.poll(kept).toContain('"baseMs": 12')
+  await type(page, 'Base delay', '9')
+  await page.locator('h2').first().click()
+  await page.keyboard.press('Control+s')
+  await expect.poll(kept).toContain('"baseMs": 9')
+})
+
+test('Escape with nothing to close mutes', async ({ page }) => {
+  const mute = page.getByRole('button', { name: /^(Mute|Unmute|Sound on)/ })
+  await field(page, 'Base delay').fill('9')
+  await page.keyboard.press('Escape')
+  await expect(field(page, 'Base delay')).toHaveValue('12.00')
+  await expect(mute).toHaveAttribute('aria-pressed', 'false')
+  await page.keyboard.press('Escape')
+  await expect(mute).toHaveAttribute('aria-pressed', 'true')
+})
+
 test('name and notes are edited and can be undone', async ({ page }) => {
   await page.getByTitle('Name, notes, rate and layout').click()
   await page.getByLabel('Name', { exact: true }).fill('Wide and slow')

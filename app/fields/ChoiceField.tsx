@@ -33,10 +33,13 @@ export function ChoiceField({ spec, binding, notes = [] }: ChoiceFieldProps) {
           <span className="cw-choice-shown" aria-hidden="true">
             {chosen?.label ?? 'off'} <span className="cw-choice-arrow">▾</span>
           </span>
+          <span id={`${id}-help`} hidden>
+            {spec.help}
+          </span>
           <select
             id={id}
             className="cw-choice-select"
-            aria-describedby={`${id}-notes`}
+            aria-describedby={`${id}-help ${id}-notes`}
             value={value ?? OFF}
             onChange={(event) => setRefusal(binding.apply(event.target.value === OFF ? null : event.target.value))}
           >

@@ -59,7 +59,7 @@ export function NumberField({ spec, binding, context = noContext, usual = null, 
             aria-valuemax={spec.max}
             aria-valuetext={speakQuantity(value, spec)}
             aria-invalid={text.refusal ? true : undefined}
-            aria-describedby={`${id}-notes`}
+            aria-describedby={`${id}-help ${id}-notes`}
             data-edited={text.edited}
             value={text.text}
             onChange={text.onChange}
@@ -68,6 +68,9 @@ export function NumberField({ spec, binding, context = noContext, usual = null, 
             onKeyDown={text.onKeyDown}
             onKeyUp={text.onKeyUp}
           />
+          <span id={`${id}-help`} hidden>
+            {spec.help}
+          </span>
           {spec.unit && value !== null && <span className="cw-field-unit">{spec.unit}</span>}
         </span>
       </div>

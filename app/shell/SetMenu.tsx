@@ -8,6 +8,7 @@ import { useCurrent } from '../state/current.ts'
 import { useView } from '../state/view.ts'
 import { chooseFile } from './fileAccess.ts'
 import { newSet, openDemoSet, openSetFile, saveSet, saveSetAs } from './setFiles.ts'
+import { topBarElement } from './topBarElement.ts'
 
 const intents = parameter('intent')
 
@@ -27,7 +28,7 @@ export function SetMenu() {
           <span aria-hidden="true"> ▾</span>
         </Menu.Trigger>
       </h1>
-      <Menu.Portal>
+      <Menu.Portal container={topBarElement}>
         <Menu.Positioner className="cw-menu-positioner" align="start" sideOffset={6}>
           <Menu.Popup className="cw-menu">
             <NewMenu />
@@ -83,7 +84,7 @@ function Submenu({ label, children }: { readonly label: string; readonly childre
         {label}
         <span aria-hidden="true">›</span>
       </Menu.SubmenuTrigger>
-      <Menu.Portal>
+      <Menu.Portal container={topBarElement}>
         <Menu.Positioner className="cw-menu-positioner" sideOffset={-2} collisionPadding={8}>
           <Menu.Popup className="cw-menu">{children}</Menu.Popup>
         </Menu.Positioner>

@@ -8,13 +8,14 @@ import { AreaTabs } from './AreaTabs.tsx'
 import { HistoryButtons } from './HistoryButtons.tsx'
 import { useLayout } from './layout.ts'
 import { SetMenu } from './SetMenu.tsx'
+import { topBarElement } from './topBarElement.ts'
 import { Transport } from './transport/Transport.tsx'
 import { ViewMenu } from './ViewMenu.tsx'
 
 export function TopBar() {
   const layout = useLayout((s) => s.layout)
   return (
-    <header className="cw-topbar">
+    <header className="cw-topbar" ref={topBarElement}>
       <div className="cw-topbar-set">
         <SetMenu />
         <SetLine />

@@ -4,6 +4,7 @@ import { useState } from 'react'
 import { useView } from '../state/view.ts'
 import { KeyHelp } from './KeyHelp.tsx'
 import { chooseTheme, type Theme } from './theme.ts'
+import { topBarElement } from './topBarElement.ts'
 
 const THEMES: readonly { readonly value: Theme; readonly label: string }[] = [
   { value: 'system', label: 'As the system' },
@@ -21,7 +22,7 @@ export function ViewMenu() {
         <Menu.Trigger className="cw-button">
           View<span aria-hidden="true"> ▾</span>
         </Menu.Trigger>
-        <Menu.Portal>
+        <Menu.Portal container={topBarElement}>
           <Menu.Positioner className="cw-menu-positioner" align="start" sideOffset={6}>
             <Menu.Popup className="cw-menu">
               <Menu.RadioGroup value={theme} onValueChange={(value) => chooseTheme(value as Theme)}>

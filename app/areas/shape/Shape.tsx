@@ -39,18 +39,23 @@ function Wide() {
 }
 
 function Listed({ narrow }: { readonly narrow: boolean }) {
+  const path = (
+    <section key="path" className="cw-shape-fields" aria-label="Signal path and fields">
+      <Equation />
+      <PathList />
+    </section>
+  )
+  // Beside each other the path stands first; one below the other the plot stays near the top, where it is seen while fields change.
   return (
     <>
+      {!narrow && path}
       <div className="cw-shape-checks">
         <ChecksLine />
       </div>
       <div className="cw-shape-plots">
         <PlotColumn single={narrow} />
       </div>
-      <section className="cw-shape-fields" aria-label="Signal path and fields">
-        <Equation />
-        <PathList />
-      </section>
+      {narrow && path}
     </>
   )
 }

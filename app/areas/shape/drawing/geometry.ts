@@ -47,7 +47,7 @@ const SUM_R = 0.625
 const HEIGHT = 7.75
 
 const TIGHT = {
-  in: 1,
+  in: 1.75,
   gap: 0.75,
   tap: 0.75,
   shaper: 5.125,
@@ -63,7 +63,7 @@ const TIGHT = {
   cross: 1.75,
 }
 const ROOMY = {
-  in: 1.25,
+  in: 1.75,
   gap: 1.5,
   tap: 1.5,
   shaper: 6.75,
@@ -124,7 +124,7 @@ export function geometryOf(set: ParameterSet, width: number): Geometry {
   const points: Points = { inX: d.in, inputTap, sumX, lineTap, loopTapX, end, cross: stereo ? cross : null }
   const dryFrom = set.mix.dryTap === 'input' ? inputTap : lineTap
   return {
-    width: end + 1.25,
+    width: end + d.in,
     height: HEIGHT,
     boxes,
     sum: { x: sumX, y: MAIN_Y, r: SUM_R },

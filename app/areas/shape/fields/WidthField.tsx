@@ -1,5 +1,4 @@
 import { useMemo } from 'react'
-import { sweepDetune } from '../../../../src/analysis/detune.ts'
 import type { ParameterSet } from '../../../../src/set/types.ts'
 import { type Binding, type Refusal, refusal } from '../../../fields/binding.ts'
 import { NumberField } from '../../../fields/NumberField.tsx'
@@ -8,6 +7,7 @@ import { useCurrent } from '../../../state/current.ts'
 import { committedSet } from '../../../state/document.ts'
 import { dropGesture, endGesture } from '../../../state/draft.ts'
 import { commitField, tryField } from '../../../state/edit.ts'
+import { detuneOf } from './detuneOf.ts'
 import { widthText } from './notes.ts'
 import { depthPath, solveWidth } from './solveWidth.ts'
 
@@ -26,7 +26,7 @@ const WIDTH: NumberSpec = {
 /** Width in cents, the other face of depth at this rate and shape. */
 export function WidthField() {
   const set = useCurrent((s) => s.set)
-  const value = sweepDetune(set).maxCents
+  const value = detuneOf(set).maxCents
   const binding = useMemo((): Binding<number | null> => ({ value: value ?? WIDTH.max, ...ACTS }), [value])
   return <NumberField spec={WIDTH} binding={binding} notes={[widthText(set)]} />
 }

@@ -1,11 +1,11 @@
 // What follows from a field's value, in up to two lines beneath it. Pure: a set (and the tempo) in, sentences out.
-import { sweepDetune } from '../../../../src/analysis/detune.ts'
 import { highPassHalfPowerHz, lowPassHalfPowerHz } from '../../../../src/dsp/filters.ts'
 import { delayRange, voiceOffsetMs } from '../../../../src/set/delayRange.ts'
 import { getAt } from '../../../../src/set/path.ts'
 import type { ParameterSet } from '../../../../src/set/types.ts'
 import { usualRange } from '../../../../src/set/usualRanges.ts'
 import { showIn, showNumber } from '../../../fields/quantity.ts'
+import { detuneOf } from './detuneOf.ts'
 import { ringNote } from './ringNote.ts'
 
 export interface NoteContext {
@@ -65,7 +65,10 @@ const NOTES: Readonly<Record<string, Note>> = {
   'loop.crossFeed': ({ loop }) => [`${percent(loop.crossFeed)} of each loop goes to the other line`],
   'mix.dry': linearNote('mix.dry'),
   'mix.wet': linearNote('mix.wet'),
-  'mix.dryDelayMs': ({ mix, sampleRate }) => [`${Math.floor((mix.dryDelayMs * sampleRate) / 1000 + 0.5)} whole samples`],
+  'mix.dryDelayMs': ({ mix, sampleRate }) => {
+    const samples = Math.floor((mix.dryDelayMs * sampleRate) / 1000 + 0.5)
+    return [`${samples} whole ${samples === 1 ? 'sample' : 'samples'}`]
+  },
   'mix.wetLowCutHz': highPassNote('mix.wetLowCutHz'),
   'mix.wetHighCutHz': lowPassNote('mix.wetHighCutHz'),
   'mix.outputGainDb': gainNote('mix.outputGainDb'),
@@ -115,7 +118,7 @@ function sweptRange(set: ParameterSet): string {
 
 /** "−6.3 to +6.2 cents", of the delay as it is read, edges and update interval included. */
 export function widthText(set: ParameterSet): string {
-  const { upCents, downCents, motion } = sweepDetune(set)
+  const { upCents, downCents, motion } = detuneOf(set)
   if (motion !== 'plays' || downCents === null) return motion === 'stalls' ? 'the read stalls' : 'the read runs backwards'
   if (upCents === 0 && downCents === 0) return 'no change of pitch'
   return `${cents(downCents)} to ${cents(upCents)} cents`
