@@ -27,6 +27,7 @@ export function mountScope({ element, reading }: PlotPlace): MountedPlot {
   let range = 1
   let quietSince = 0
   let shown = -1
+  let unread = true
   let readAt = 0
   let cursor: number | null = null
 
@@ -87,11 +88,15 @@ export function mountScope({ element, reading }: PlotPlace): MountedPlot {
     plot.u.setData([time, into, out])
   }
 
-  const stopFrames = onFrame((timeMs) => {
+  const stopDrawing = onFrame((timeMs) => {
     if (live.scopeCount === shown) return
     shown = live.scopeCount
+    unread = true
     if (shown > 0) take(timeMs)
-    if (timeMs - readAt < READING_MS) return
+  }, 'canvas')
+  const stopReading = onFrame((timeMs) => {
+    if (!unread || timeMs - readAt < READING_MS) return
+    unread = false
     readAt = timeMs
     read()
   })
@@ -109,7 +114,8 @@ export function mountScope({ element, reading }: PlotPlace): MountedPlot {
     numbers: () => ({ head: ['time_ms', 'in', 'out'], columns: live.scopeCount === 0 ? [[], [], []] : [time, into, out] }),
     picture: plot.picture,
     destroy() {
-      stopFrames()
+      stopDrawing()
+      stopReading()
       keys.destroy()
       plot.destroy()
     },
