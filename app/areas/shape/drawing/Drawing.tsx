@@ -6,7 +6,7 @@ import { useView } from '../../../state/view.ts'
 import { Equation } from '../equation/Equation.tsx'
 import { BlockTab } from './BlockTab.tsx'
 import { interpolationName, LOOP_BLOCKS, MAIN_BLOCKS } from './blocks.ts'
-import { geometryOf, TIGHT_WIDTH } from './geometry.ts'
+import { geometryOf, right, TIGHT_WIDTH } from './geometry.ts'
 import { neighbour } from './roving.ts'
 import { Wires } from './Wires.tsx'
 
@@ -15,7 +15,7 @@ export function Drawing() {
   const chosen = useView((s) => s.block)
   const [frame, width] = useWidthRem()
   const geometry = geometryOf(set, width)
-  const besideRem = geometry.labels.loopReads.x + LOOP_WORDS_REM
+  const besideRem = geometry.labels.loopReads.x + (set.loop.delay === 'fixed' ? LONG_WORDS_REM : LOOP_WORDS_REM)
   const stop = chosen === 'set' ? 'line' : chosen
   const style = { width: `${geometry.width}rem`, height: `${geometry.height}rem` }
   return (
@@ -33,7 +33,7 @@ export function Drawing() {
           document.getElementById(`cw-block-${next}`)?.focus()
         }}
       >
-        <Wires geometry={geometry} crossIdle={set.loop.feedback === 0} />
+        <Wires geometry={geometry} crossFeed={set.loop.feedback === 0 ? 0 : set.loop.crossFeed} />
         <Labels set={set} geometry={geometry} />
         {[...MAIN_BLOCKS, ...LOOP_BLOCKS].map((id) => (
           <BlockTab key={id} id={id} set={set} box={geometry.boxes[id]} chosen={id === chosen} isStop={id === stop} />
@@ -47,6 +47,7 @@ export function Drawing() {
 /** Room the equation needs beside the loop, and the words at the loop's tap, rem. */
 const EQUATION_REM = 27
 const LOOP_WORDS_REM = 7.5
+const LONG_WORDS_REM = 10
 
 type LabelsProps = { readonly set: Parameters<typeof geometryOf>[0]; readonly geometry: ReturnType<typeof geometryOf> }
 
@@ -55,7 +56,7 @@ function Labels({ set, geometry }: LabelsProps) {
   const at = ({ x, y }: { readonly x: number; readonly y: number }) => ({ left: `${x}rem`, top: `${y}rem` })
   const { loop, mix } = set
   const dry = mix.dry === 0 ? 'no dry' : mix.dryDelayMs > 0 ? `dry, ${mix.dryDelayMs} ms late` : 'dry'
-  const reads = `loop reads ${interpolationName(loop.interpolation)}${loop.delay === 'fixed' ? ', fixed at base' : ''}`
+  const reads = `loop reads ${interpolationName(loop.interpolation)}${loop.delay === 'fixed' ? ' at base' : ''}`
   return (
     <div aria-hidden="true">
       <span className="cw-drawing-end" style={at(labels.in)}>
@@ -74,7 +75,7 @@ function Labels({ set, geometry }: LabelsProps) {
         +
       </span>
       {cross && loop.crossFeed > 0 && (
-        <span className="cw-drawing-label cw-drawing-label--centred" style={at({ x: cross.x + cross.width / 2, y: cross.y + 1.375 })}>
+        <span className="cw-drawing-label cw-drawing-label--left" style={at({ x: right(cross) + 0.25, y: cross.y + 1.375 })}>
           cross {Number(loop.crossFeed.toFixed(2))}
         </span>
       )}
