@@ -27,6 +27,8 @@ export interface SweepDetune {
   readonly hopSamples: number
 }
 
+/** Cycles: past the rounding of a phase, and nothing against the shortest chord. */
+const HAIR = 1e-15
 /** A slope this close to 1 stands still but for rounding. */
 const STALL_TOLERANCE = 1e-9
 
@@ -66,19 +68,21 @@ function chordsMs(set: ParameterSet, seconds: number): { rise: number; fall: num
   // Between these phases neither end of the chord meets a corner.
   const corners = shapeCorners(sweep).flatMap((corner) => [corner, corner - span])
   const stops = corners.map((phi) => phi - Math.floor(phi)).sort((a, b) => a - b)
+  // Straight pieces of a time sweep make straight chords: largest at an end.
+  const straight = sweep.law === 'time' && sweep.shape !== 'sine'
+  const largest = (f: (phi: number) => number, low: number, high: number) =>
+    straight ? Math.max(f(low), f(high)) : largestBetween(f, low, high)
   let rise = 0
   let fall = 0
   stops.forEach((from, i) => {
     const to = stops[i + 1] ?? (stops[0] as number) + 1
-    // A hair inside as well: at a jump the value on a corner is that of one side only.
-    const hair = Math.min(1e-12, (to - from) / 4)
-    for (const [low, high] of [[from, to] as const, [from + hair, to - hair] as const]) {
-      rise = Math.max(rise, largestBetween(chord, low, high))
-      fall = Math.max(
-        fall,
-        largestBetween((phi) => -chord(phi), low, high),
-      )
-    }
+    // A hair inside: at a jump the value on the corner is that of one side only.
+    const hair = Math.min(HAIR, (to - from) / 4)
+    rise = Math.max(rise, largest(chord, from + hair, to - hair))
+    fall = Math.max(
+      fall,
+      largest((phi) => -chord(phi), from + hair, to - hair),
+    )
   })
   return { rise, fall }
 }

@@ -7,12 +7,14 @@ import { type Frozen, freeze } from './frozen.ts'
 
 /** Part of 1/(longest delay) below which an extreme is a filter's doing, as the hump that a low cut leaves: its lead puts that at ¼ at most, combs turn from ½ on. */
 const FILTER_PART = 0.4
+/** Teeth of the longest delay within which a comb turns at the latest: two delays a thousandth apart make the widest. */
+const MOST_TEETH = 1000
 /** Root search of a first extreme, Hz: fine enough to take differences of. */
 const FIRST_WITHIN_HZ = 1e-6
 
 /**
  * Lowest notch or peak above 0 Hz of the first output channel with the sweep held at `position`, null when there is none up to
- * sampleRate/2. Turns below 0.4/(longest delay, low-pass filters’ own included), which only filters make, are passed over.
+ * sampleRate/2 or a thousand times 1/(longest delay). Turns below 0.4/(longest delay, low-pass filters’ own included), which only filters make, are passed over.
  */
 export function firstExtreme(set: ParameterSet, kind: ExtremeKind, position: number, sampleRate = set.sampleRate): Extreme | null {
   return firstOfFrozen(freeze(set, position, sampleRate), kind)
@@ -24,11 +26,12 @@ export function firstOfFrozen(frozen: Frozen, kind: ExtremeKind): Extreme | null
   const nyquist = frozen.sampleRate / 2
   const lag = lowPassDelay(frozen.loop.tone.lowPass) + lowPassDelay(frozen.wetTone.lowPass)
   const tooth = frozen.sampleRate / (longestOwnDelay(left) + lag)
+  const end = Math.min(nyquist, MOST_TEETH * tooth)
   for (let maxHz = 2 * tooth; ; maxHz *= 4) {
-    const found = frozenExtremes(left, { maxHz: Math.min(maxHz, nyquist), withinHz: FIRST_WITHIN_HZ })
+    const found = frozenExtremes(left, { maxHz: Math.min(maxHz, end), withinHz: FIRST_WITHIN_HZ })
     const first = found.find((extreme) => extreme.kind === kind && extreme.frequencyHz >= FILTER_PART * tooth)
     if (first) return first
-    if (maxHz >= nyquist) return null
+    if (maxHz >= end) return null
   }
 }
 
@@ -40,7 +43,7 @@ export function firstChannel(frozen: Frozen): Frozen {
 }
 
 /** Longest delay that the first channel itself is made of, samples, at least 1. */
-function longestOwnDelay({ channels, loop, dryDelay }: Frozen): number {
+export function longestOwnDelay({ channels, loop, dryDelay }: Frozen): number {
   const voices = channels[0]?.voices ?? []
   const reads = loop.gain === 0 ? voices : [...voices, ...loop.reads.slice(0, 1)]
   return Math.max(1, dryDelay, ...reads.map((read) => read.delaySamples))

@@ -1,6 +1,6 @@
-// response.extremes: what the comb does between 0 and 20 kHz at the ends of the sweep and in its middle. Values, not judged.
+// response.extremes: what the comb does up to 20 kHz at the ends of the sweep and in its middle. Values, not judged.
 import { type Extreme, type ExtremeKind, frozenExtremes } from '../analysis/extremes.ts'
-import { firstChannel, firstExtremeRange, sweepEnds } from '../analysis/firstExtreme.ts'
+import { firstChannel, firstExtremeRange, longestOwnDelay, sweepEnds } from '../analysis/firstExtreme.ts'
 import { freeze } from '../analysis/frozen.ts'
 import type { ParameterSet } from '../set/types.ts'
 import { labelOf, limitOf } from './limits.ts'
@@ -8,6 +8,8 @@ import { quantity } from './loopText.ts'
 import type { Check, CheckFunction, CheckInput } from './types.ts'
 
 const HIGHEST_HZ = 20000
+/** A longer comb repeats itself: its first thousand teeth are looked at. */
+const MOST_TEETH = 1000
 /** Deeper than this only rounding is left. */
 const NULL_DB = -150
 /** Ends the search for each extreme: nothing here is written more finely. */
@@ -17,7 +19,7 @@ const COMBING: readonly ParameterSet['intent'][] = ['flanger', 'comb']
 
 export const responseExtremes: CheckFunction = (input): Check => {
   const { set, sampleRate } = input
-  const places = lookedAt(input)
+  const { places, upToHz } = lookedAt(input)
   const found = places.map((place) => place.extremes)
   const notches = figuresOf(found, 'notch')
   const peaks = figuresOf(found, 'peak')
@@ -26,7 +28,13 @@ export const responseExtremes: CheckFunction = (input): Check => {
   return {
     id: 'response.extremes',
     status: none && COMBING.includes(set.intent) ? 'note' : 'holds',
-    value: { notches, peaks, firstNotchHz: [first.notch.lowHz, first.notch.highHz], firstPeakHz: [first.peak.lowHz, first.peak.highHz] },
+    value: {
+      notches,
+      peaks,
+      firstNotchHz: [first.notch.lowHz, first.notch.highHz],
+      firstPeakHz: [first.peak.lowHz, first.peak.highHz],
+      upToHz,
+    },
     limit: limitOf(set, 'response.extremes').limit,
     unit: 'Hz',
     label: labelOf('response.extremes'),
@@ -36,7 +44,7 @@ export const responseExtremes: CheckFunction = (input): Check => {
     working: places.map(({ position, delayMs, extremes }) => ({
       formula: 'd|H|²/dω = 0, of the first channel',
       numbers: `sweep held at ${quantity(position)}, voice 0 at ${quantity(delayMs, 'ms')}`,
-      result: `${countText(extremes, 'notch')}, ${countText(extremes, 'peak')} up to ${quantity(highestHz(sampleRate), 'Hz')}`,
+      result: `${countText(extremes, 'notch')}, ${countText(extremes, 'peak')} up to ${quantity(upToHz, 'Hz')}`,
       source: 'exact response of the held sweep; teeth 1/τ apart: J. O. Smith, PASP, "Feedforward Comb Filters"',
     })),
   }
@@ -48,21 +56,19 @@ interface Place {
   readonly extremes: readonly Extreme[]
 }
 
-const highestHz = (sampleRate: number) => Math.min(HIGHEST_HZ, sampleRate / 2)
-
-/** Both ends of the sweep and the position between them; one place where it stands. */
-function lookedAt({ set, sampleRate }: CheckInput): Place[] {
+/** Both ends of the sweep and the position between them, one place where it stands, and how far up they are looked at. */
+function lookedAt({ set, sampleRate }: CheckInput): { places: Place[]; upToHz: number } {
   const { longest, shortest } = sweepEnds(set)
-  const positions = [longest.position, (longest.position + shortest.position) / 2, shortest.position]
-  return [...new Set(positions)].map((position) => {
-    const frozen = firstChannel(freeze(set, position, sampleRate))
-    const samples = frozen.channels[0]?.voices[0]?.delaySamples ?? 0
-    return {
-      position,
-      delayMs: (samples * 1000) / sampleRate,
-      extremes: frozenExtremes(frozen, { maxHz: highestHz(sampleRate), withinHz: WITHIN_HZ }),
-    }
-  })
+  const positions = [...new Set([longest.position, (longest.position + shortest.position) / 2, shortest.position])]
+  const held = positions.map((position) => firstChannel(freeze(set, position, sampleRate)))
+  const teeth = sampleRate / Math.max(...held.map(longestOwnDelay))
+  const upToHz = Math.min(HIGHEST_HZ, sampleRate / 2, MOST_TEETH * teeth)
+  const places = held.map((frozen) => ({
+    position: frozen.position,
+    delayMs: ((frozen.channels[0]?.voices[0]?.delaySamples ?? 0) * 1000) / sampleRate,
+    extremes: frozenExtremes(frozen, { maxHz: upToHz, withinHz: WITHIN_HZ }),
+  }))
+  return { places, upToHz }
 }
 
 /** How many, and the level that goes furthest: the deepest notch, the highest peak. A type, so that it is JSON like the value it stands in. */
