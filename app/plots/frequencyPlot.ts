@@ -54,6 +54,7 @@ export interface Surface {
 
 /** The reading line is renewed this often while the sound moves it. */
 const READING_MS = 100
+const NARROW_PX = 480
 const COMPUTED = 'being computed'
 
 export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec: FrequencyPlotSpec<L, W>, place: PlotPlace): MountedPlot {
@@ -91,6 +92,7 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
     spec.whole,
     (reply) => {
       whole = reply
+      unread = true
       fitLevels()
       plot.redraw()
     },
@@ -119,7 +121,8 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
     },
     over: (ctx, box, theme) => {
       cornerText(ctx, box, theme, 'topLeft', 'dB')
-      cornerText(ctx, box, theme, 'topRight', corner)
+      // Where it is narrow the words would run into marks at the top.
+      cornerText(ctx, box, theme, box.width < NARROW_PX * box.ratio ? 'bottomLeft' : 'topRight', corner)
     },
     live: (ctx, box, theme) => {
       if (problem !== '') middleText(ctx, box, theme, problem)

@@ -60,7 +60,7 @@ export function mountSweep({ element, reading }: PlotPlace): MountedPlot {
       axis({
         scale: 'cents',
         side: 1,
-        splits: (min, max, length) => evenSplits(min, max, length, 48),
+        splits: (min, max, length) => evenSplits(min, max, length, 40),
         label: (ct) => `${signedNumber(ct)} ct`,
         colour: 'second',
         grid: false,

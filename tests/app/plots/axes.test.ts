@@ -46,7 +46,7 @@ describe('the level axis', () => {
 
   it('cuts deep notches off 42 dB below its top and never shows less than 24 dB', () => {
     expect(levelRange(-400, 3)).toEqual({ minDb: -30, maxDb: 12 })
-    expect(levelRange(-1, 1)).toEqual({ minDb: -18, maxDb: 6 })
+    expect(levelRange(-1, 1)).toEqual({ minDb: -12, maxDb: 12 })
   })
 
   it('cuts off what a loop at its limit makes of its peaks, so that 0 dB stays in sight', () => {

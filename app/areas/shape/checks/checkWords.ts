@@ -22,11 +22,11 @@ export function checkFigure({ id, value, unit }: Pick<Check, 'id' | 'value' | 'u
   return 'none'
 }
 
-/** "limit 3 s"; "at least computed" where words are ranked; empty where nothing is judged. */
-export function checkLimit({ limit, unit }: Pick<Check, 'limit' | 'unit'>): string {
-  if (limit === null) return ''
+/** "limit 3 s"; "at least computed" where words are ranked; what the figure is, or nothing, where none is judged. */
+export function checkLimit({ id, limit, unit }: Pick<Check, 'id' | 'limit' | 'unit'>): string {
+  if (limit === null) return id === 'response.extremes' ? 'first notch over the sweep' : ''
   if (typeof limit === 'string') return `at least ${limit}`
-  return `limit ${unit === 'ms' ? milliseconds(limit) : withUnit(limit, unit)}`
+  return `limit ${unit === 'ms' && limit < 0.1 ? milliseconds(limit) : withUnit(limit, unit)}`
 }
 
 function withUnit(value: number, unit: string): string {

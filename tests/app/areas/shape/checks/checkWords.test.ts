@@ -25,10 +25,12 @@ describe('the figure of a check', () => {
 
 describe('the limit of a check', () => {
   it('is a figure, the weakest word that holds, or nothing', () => {
-    expect(checkLimit({ limit: 3, unit: 's' })).toBe('limit 3 s')
-    expect(checkLimit({ limit: 0.0208333, unit: 'ms' })).toBe('limit 0.021 ms')
-    expect(checkLimit({ limit: 'computed', unit: '' })).toBe('at least computed')
-    expect(checkLimit({ limit: null, unit: '' })).toBe('')
+    expect(checkLimit({ id: 'loop.ring', limit: 3, unit: 's' })).toBe('limit 3 s')
+    expect(checkLimit({ id: 'sweep.fusion', limit: 50, unit: 'ms' })).toBe('limit 50 ms')
+    expect(checkLimit({ id: 'sweep.range', limit: 0.0208333, unit: 'ms' })).toBe('limit 0.021 ms')
+    expect(checkLimit({ id: 'loop.stability', limit: 'computed', unit: '' })).toBe('at least computed')
+    expect(checkLimit({ id: 'loop.poles', limit: null, unit: '' })).toBe('')
+    expect(checkLimit({ id: 'response.extremes', limit: null, unit: 'Hz' })).toBe('first notch over the sweep')
   })
 })
 
