@@ -14,18 +14,14 @@ import { pairPolesOutside } from './polesPairWinding.ts'
 export interface SweptPole extends LargestPole {
   /** Delays of the loop's reads at the worst place, samples, one a line (one for lines that read alike). */
   readonly delaysSamples: readonly number[]
+  /** The loop frozen there. */
+  readonly loop: FrozenLoop
   /** Position of the cycle, where that is what was walked. */
   readonly position: number | null
 }
 
 /** A pole this much inside, as ln r times the delay, is told from one on the circle; nearer, rounding decides. */
 const CIRCLE = 1e-12
-
-/** The frozen loop at the place of the sweep where its largest pole is largest. */
-export function sweptPoleLoop(set: ParameterSet, sampleRate = set.sampleRate): FrozenLoop {
-  const sweep = loopSweep(set, sampleRate)
-  return sweep.at(worstPole(sweep, sampleRate, undefined))
-}
 
 /** Place of the sweep where the largest pole is largest. */
 function worstPole(sweep: LoopSweep, sampleRate: number, slope: number | undefined): number {
@@ -45,6 +41,7 @@ export function sweptPole(set: ParameterSet, sampleRate = set.sampleRate, slope?
     ...pole,
     lnBound,
     bound: Math.exp(lnBound),
+    loop,
     delaysSamples: loop.reads.map((read) => read.delaySamples),
     position: sweep.over === 'position' ? place : null,
   }

@@ -2,7 +2,7 @@
 
 import { bisect } from '../analysis/loopSearch.ts'
 import { largestPoleOfLoop, ringSeconds } from '../analysis/poles.ts'
-import { sweptPole, sweptPoleLoop } from '../analysis/polesSweep.ts'
+import { type SweptPole, sweptPole } from '../analysis/polesSweep.ts'
 import { roundedDown } from '../analysis/stabilityRaise.ts'
 import { withAt } from '../set/path.ts'
 import { judge, labelOf, limitOf } from './limits.ts'
@@ -19,7 +19,7 @@ export const loopRing: CheckFunction = (input): Check => {
   if (pole === null) return { ...base, status: 'holds', value: null, text: `${noLoopReason(input, figures) ?? QUIET}.`, working: [] }
   const value = ringSeconds(pole.lnBound, input.sampleRate)
   const status = value === null ? 'near' : judge(limit, value)
-  const mend = status === 'holds' || limit.limit === null ? null : shorterRing(input, limit.limit)
+  const mend = status === 'holds' || limit.limit === null ? null : shorterRing(input, pole, limit.limit)
   return {
     ...base,
     status,
@@ -38,8 +38,7 @@ export const loopRing: CheckFunction = (input): Check => {
 }
 
 /** The largest feedback that rings no longer than `seconds`: at the worst place first, then tried over the sweep. */
-function shorterRing({ set, sampleRate }: CheckInput, seconds: number): Mend | null {
-  const loop = sweptPoleLoop(set, sampleRate)
+function shorterRing({ set, sampleRate }: CheckInput, { loop }: SweptPole, seconds: number): Mend | null {
   const size = Math.abs(set.loop.feedback)
   const sign = Math.sign(set.loop.feedback)
   const rings = (pole: { readonly lnBound: number } | null) => {
