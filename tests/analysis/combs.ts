@@ -1,5 +1,5 @@
-// The static combs of the tables: mono, one voice, a delay of so many samples at 48 kHz.
-import type { DryTap, Interpolation, ParameterSet } from '../../src/set/types.ts'
+// The static combs of the tables: mono, one voice, a delay of so many samples at 48 kHz; and one voice swept around 20 ms.
+import type { DryTap, Interpolation, ParameterSet, SweepShape } from '../../src/set/types.ts'
 import { changedSet } from '../dsp/sets.ts'
 
 export interface Comb {
@@ -25,5 +25,14 @@ export function combSet({ samples, dry = 1, wet = 1, feedback = 0, tap = 'input'
     s.mix.dry = dry
     s.mix.wet = wet
     s.mix.dryTap = tap
+  })
+}
+
+export function sweptSet(shape: SweepShape, depthMs: number, rateHz: number, fields: Partial<ParameterSet['sweep']> = {}): ParameterSet {
+  return changedSet((s) => {
+    s.layout = 'mono'
+    s.voices.count = 1
+    s.line.baseMs = 20
+    Object.assign(s.sweep, { shape, depthMs, rateHz, updateEvery: 1, ...fields })
   })
 }

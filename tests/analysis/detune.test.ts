@@ -2,15 +2,9 @@
 import { describe, expect, it } from 'vitest'
 import { sweepDetune } from '../../src/analysis/detune.ts'
 import { delaySamples, sweepPhase } from '../../src/dsp/sweep.ts'
-import type { ParameterSet, SweepShape } from '../../src/set/types.ts'
-import { changedSet, randomSet } from '../dsp/sets.ts'
-
-const swept = (shape: SweepShape, depthMs: number, rateHz: number, fields: Partial<ParameterSet['sweep']> = {}) =>
-  changedSet((s) => {
-    s.voices.count = 1
-    s.line.baseMs = 20
-    Object.assign(s.sweep, { shape, depthMs, rateHz, updateEvery: 1, ...fields })
-  })
+import type { ParameterSet } from '../../src/set/types.ts'
+import { randomSet } from '../dsp/sets.ts'
+import { sweptSet } from './combs.ts'
 
 describe('published figures', () => {
   it.each([
@@ -19,7 +13,7 @@ describe('published figures', () => {
     [5, 1, 53.6, -55.3],
     [3, 5, 155.9, -171.4],
   ])('sine of %f ms at %f Hz: +%f and %f', (depthMs, rateHz, up, down) => {
-    const { upCents, downCents, maxCents, motion } = sweepDetune(swept('sine', depthMs, rateHz))
+    const { upCents, downCents, maxCents, motion } = sweepDetune(sweptSet('sine', depthMs, rateHz))
     const digits = up < 10 ? 0.005 : 0.051
     expect(Math.abs(upCents - up)).toBeLessThan(digits)
     expect(Math.abs(downCents! - down)).toBeLessThan(digits)
@@ -32,12 +26,12 @@ describe('published figures', () => {
     [5, 1, 34.3],
     [3, 5, 100.9],
   ])('triangle of %f ms at %f Hz: %f up', (depthMs, rateHz, up) => {
-    expect(Math.abs(sweepDetune(swept('triangle', depthMs, rateHz)).upCents - up)).toBeLessThan(up < 10 ? 0.005 : 0.051)
+    expect(Math.abs(sweepDetune(sweptSet('triangle', depthMs, rateHz)).upCents - up)).toBeLessThan(up < 10 ? 0.005 : 0.051)
   })
 
   // FACTS 2a, white chorus: 400 ± 350 samples at 44.1 kHz, 0.15 Hz: +12.90 and −13.00 cents.
   it('white chorus', () => {
-    const set = { ...swept('sine', 350000 / 44100, 0.15), sampleRate: 44100 }
+    const set = { ...sweptSet('sine', 350000 / 44100, 0.15), sampleRate: 44100 }
     const { upCents, downCents } = sweepDetune(set)
     expect(upCents).toBeCloseTo(12.9, 2)
     expect(downCents).toBeCloseTo(-13.0, 2)
@@ -47,12 +41,12 @@ describe('published figures', () => {
 describe('what is really read', () => {
   it('a sine through updates every K samples: the chord 2 depth sin(π rate h)/h', () => {
     const h = 64 / 8000
-    const set = { ...swept('sine', 1, 60, { updateEvery: 64 }), sampleRate: 8000 }
+    const set = { ...sweptSet('sine', 1, 60, { updateEvery: 64 }), sampleRate: 8000 }
     expect(sweepDetune(set).maxSlope).toBeCloseTo((2 * 0.001 * Math.sin(Math.PI * 60 * h)) / h, 10)
   })
 
   it('an edge shorter than the update is spread over it, at any rate', () => {
-    const jump = swept('square', 1, 0.5, { edgeMs: 0, updateEvery: 64 })
+    const jump = sweptSet('square', 1, 0.5, { edgeMs: 0, updateEvery: 64 })
     const { minSlope, hopSamples } = sweepDetune(jump)
     expect(hopSamples).toBeCloseTo(96, 9)
     expect(minSlope).toBeCloseTo(-96 / 64, 9)
@@ -62,27 +56,27 @@ describe('what is really read', () => {
   it('an edge longer than the update has its own slope: 2 depth over the edge', () => {
     for (const shape of ['square', 'rampUp', 'rampDown'] as const)
       for (const between of ['ramp', 'hold'] as const) {
-        const { maxSlope, minSlope } = sweepDetune(swept(shape, 1, 0.5, { edgeMs: 20, updateEvery: 16, between }))
+        const { maxSlope, minSlope } = sweepDetune(sweptSet(shape, 1, 0.5, { edgeMs: 20, updateEvery: 16, between }))
         expect(Math.max(maxSlope, -minSlope)).toBeCloseTo(0.1, 9)
       }
   })
 
   it('slope 1 stalls, above it the read runs backwards, and neither has cents down', () => {
     const depthMs = 1000 / (4 * 20)
-    expect(sweepDetune(swept('triangle', depthMs, 20))).toMatchObject({ motion: 'stalls', downCents: null, maxCents: null })
-    expect(sweepDetune(swept('triangle', depthMs * 1.01, 20))).toMatchObject({ motion: 'reversed', downCents: null })
-    expect(sweepDetune(swept('triangle', depthMs * 0.99, 20)).motion).toBe('plays')
+    expect(sweepDetune(sweptSet('triangle', depthMs, 20))).toMatchObject({ motion: 'stalls', downCents: null, maxCents: null })
+    expect(sweepDetune(sweptSet('triangle', depthMs * 1.01, 20))).toMatchObject({ motion: 'reversed', downCents: null })
+    expect(sweepDetune(sweptSet('triangle', depthMs * 0.99, 20)).motion).toBe('plays')
   })
 
   it('rate 0 and depth 0 stand still', () => {
-    for (const set of [swept('sine', 5, 0), swept('sine', 0, 5)])
+    for (const set of [sweptSet('sine', 5, 0), sweptSet('sine', 0, 5)])
       expect(sweepDetune(set)).toMatchObject({ maxCents: 0, upCents: 0, downCents: 0, maxSlope: 0, minSlope: 0, hopSamples: 0 })
   })
 
   it('drift is bounded by a full step in one cycle: π rate depth', () => {
-    const { maxSlope } = sweepDetune(swept('drift', 2, 3))
+    const { maxSlope } = sweepDetune(sweptSet('drift', 2, 3))
     expect(maxSlope).toBeCloseTo(Math.PI * 3 * 0.002, 9)
-    const ratio = swept('drift', 0, 3, { law: 'ratio', depthOctaves: 0.5 })
+    const ratio = sweptSet('drift', 0, 3, { law: 'ratio', depthOctaves: 0.5 })
     expect(sweepDetune(ratio).maxSlope).toBeCloseTo(steepestStep(3, 0.5), 6)
     expect(sweepDetune(ratio).maxSlope).toBeGreaterThan(observed(ratio).largest)
   })

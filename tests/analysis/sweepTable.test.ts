@@ -5,22 +5,17 @@ import { centsOfSlope, sweepTable } from '../../src/analysis/sweepTable.ts'
 import { frozenShapeValue } from '../../src/dsp/sweep.ts'
 import type { SweepShape } from '../../src/set/types.ts'
 import { changedSet, randomSet } from '../dsp/sets.ts'
+import { sweptSet } from './combs.ts'
 
 const SHAPES: readonly SweepShape[] = ['sine', 'triangle', 'square', 'rampUp', 'rampDown', 'drift', 'drawn']
 
 const oneVoice = (shape: SweepShape, depthMs: number, rateHz: number) =>
-  changedSet((s) => {
-    s.layout = 'mono'
-    s.voices.count = 1
-    s.line.baseMs = 20
-    s.sweep.shape = shape
-    s.sweep.depthMs = depthMs
-    s.sweep.rateHz = rateHz
-    s.sweep.points = [
+  sweptSet(shape, depthMs, rateHz, {
+    points: [
       [0.1, -0.5],
       [0.35, 1],
       [0.9, 0.2],
-    ]
+    ],
   })
 
 const largest = (values: readonly (number | null)[]) => Math.max(...values.map((v) => v ?? Number.NaN))
