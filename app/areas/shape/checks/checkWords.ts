@@ -14,12 +14,13 @@ const FIGURES: Readonly<Record<string, (value: CheckValue) => string | null>> = 
 }
 
 /** "4.2 dB", "proven", "1.00 – 6.00 ms"; "none" where there is no figure. */
-export function checkFigure({ id, value, unit }: Pick<Check, 'id' | 'value' | 'unit'>): string {
+export function checkFigure({ id, status, value, unit }: Pick<Check, 'id' | 'status' | 'value' | 'unit'>): string {
   const own = FIGURES[id]?.(value)
   if (own) return own
   if (typeof value === 'number') return withUnit(value, unit)
   if (typeof value === 'string') return value
-  return 'none'
+  // A ring without a figure that does not hold is one that never ends.
+  return id === 'loop.ring' && status !== 'holds' ? 'endless' : 'none'
 }
 
 /** "limit 3 s"; "at least computed" where words are ranked; what the figure is, or nothing, where none is judged. */

@@ -2,9 +2,9 @@ import { describe, expect, it } from 'vitest'
 import { checkFigure, checkLimit } from '../../../../../app/areas/shape/checks/checkWords.ts'
 import { verdictWords } from '../../../../../app/areas/shape/checks/verdictWords.ts'
 import type { CheckId } from '../../../../../src/checks/limits.ts'
-import type { CheckValue } from '../../../../../src/checks/types.ts'
+import type { CheckValue, Status } from '../../../../../src/checks/types.ts'
 
-const figure = (id: CheckId, value: CheckValue, unit = '') => checkFigure({ id, value, unit })
+const figure = (id: CheckId, value: CheckValue, unit = '', status: Status = 'holds') => checkFigure({ id, status, value, unit })
 
 describe('the figure of a check', () => {
   it.each([
@@ -13,6 +13,8 @@ describe('the figure of a check', () => {
     [figure('loop.margin', null, 'dB'), 'none'],
     [figure('loop.poles', 0.99772307), '0.9977'],
     [figure('loop.ring', 0.0631, 's'), '63 ms'],
+    [figure('loop.ring', null, 's'), 'none'],
+    [figure('loop.ring', null, 's', 'near'), 'endless'],
     [figure('sweep.detune', 171.4, 'cents'), '171.4 cents'],
     [figure('sweep.range', { smallestMs: 1, largestMs: 6, roomSamples: 47 }, 'ms'), '1.00 – 6.00 ms'],
     [figure('sweep.range', { smallestMs: 5, largestMs: 5, roomSamples: 47 }, 'ms'), '5.00 ms'],
