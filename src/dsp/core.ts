@@ -32,9 +32,9 @@ export interface Core {
   readonly settings: Settings
   readonly ramps: Ramps
   readonly trajectory: Trajectory
-  /** Samples a line holds; its memory is twice as long. */
+  /** Samples a line keeps. */
   readonly length: number
-  /** Where the next sample is written in every line. */
+  /** Where the next sample is written in every line, up to its end. */
   position: number
   readonly lines: Pair
   /** u of each line, for a dry path that leaves at the input and is delayed. */
@@ -65,7 +65,7 @@ export interface CoreOptions {
 
 export function createCore({ fs, maxDelay, keepsDry }: CoreOptions): Core {
   const length = lineLength(maxDelay)
-  const trajectory = createTrajectory(fs, maxDelay)
+  const trajectory = createTrajectory(fs)
   const states: States = {
     damping: new Float64Array(2),
     lowCut: new Float64Array(4),
@@ -78,11 +78,11 @@ export function createCore({ fs, maxDelay, keepsDry }: CoreOptions): Core {
   const wet = pair(CHUNK)
   return {
     fs,
-    settings: createSettings(fs),
+    settings: createSettings(fs, maxDelay),
     ramps: createRamps(fs, CORE_RAMPS),
     trajectory,
     length,
-    position: 0,
+    position: length,
     lines,
     dryLines: keepsDry ? [createLine(length), createLine(length)] : pair(0),
     keepsDry,

@@ -2,7 +2,7 @@
 import { type Channel, type Core, settleCore } from './core.ts'
 import { planRuns } from './delays.ts'
 import { highPass, highPassMoving, lowPass, lowPassMoving } from './filterPasses.ts'
-import { CHUNK, writeLine } from './line.ts'
+import { CHUNK, rewindLine, writeLine } from './line.ts'
 import { isLinearLoop, linearLoop } from './linearLoop.ts'
 import { writeByPieces } from './loop.ts'
 import {
@@ -26,9 +26,9 @@ import { INPUT, LOOP, OUTPUT, type Settings } from './settings.ts'
 import { shape, shapeMoving } from './shaperPass.ts'
 import { switchLoops } from './trajectory.ts'
 
-/** Samples that a chunk may have: to the end of the lines' first half and of the ramps. */
-export function chunkRoom({ length, position, ramps }: Core): number {
-  const room = Math.min(CHUNK, length - position)
+/** Samples that a chunk may have: to the end of the lines and of the ramps. */
+export function chunkRoom({ lines, position, ramps }: Core): number {
+  const room = Math.min(CHUNK, lines[0].length - position)
   return rampsMove(ramps) ? Math.min(room, ramps.length - ramps.elapsed) : room
 }
 
@@ -57,10 +57,19 @@ export function runCore(core: Core, first: number, n: number): void {
 
 /** Moves on by the n samples of the chunk. */
 export function endChunk(core: Core, n: number): void {
-  core.position = (core.position + n) % core.length
+  core.position += n
+  if (core.position === core.lines[0].length) rewind(core)
   if (!rampsMove(core.ramps)) return
   advanceRamps(core.ramps, n)
   if (!rampsMove(core.ramps)) settleCore(core)
+}
+
+function rewind(core: Core): void {
+  for (let c = 0; c < 2; c++) {
+    rewindLine(core.lines[c]!, core.length)
+    if (core.keepsDry) rewindLine(core.dryLines[c]!, core.length)
+  }
+  core.position = core.length
 }
 
 /** A loop without feedback is not run; when it starts again its filters start from rest. */
@@ -99,11 +108,11 @@ function scale(x: Float64Array, n: number, { target, start, slope, elapsed }: Ra
 }
 
 /** Σ read of channel c. */
-function readVoices({ settings, lines, position, length, read, wet }: Core, c: number, n: number): void {
+function readVoices({ settings, lines, position, read, wet }: Core, c: number, n: number): void {
   const m = wet[c]!
   m.fill(0, 0, n)
   read.line = lines[settings.lines === 2 ? c : 0]!
-  read.at = position + length
+  read.at = position
   read.out = m
   for (let v = 0; v < settings.voices.count; v++) {
     read.read = c * MAX_VOICES + v
@@ -162,27 +171,38 @@ export function mixTo(core: Core, c: number, y: Channel, yAt: number, n: number,
   const dry = gain * ramps.target[DRY]!
   const wet = gain * ramps.target[WET + c]! * settings.voiceScale
   let bad = 0
-  for (let j = 0; j < n; j++) {
+  let j = 0
+  // Two samples a turn: the turn itself costs as much as a sample.
+  for (; j < n - 1; j += 2) {
     const v = dry * d[at + j]! + wet * m[j]!
-    if (!(Math.abs(v) < Number.POSITIVE_INFINITY)) bad++
+    const next = dry * d[at + j + 1]! + wet * m[j + 1]!
+    if (!(Math.abs(v) + Math.abs(next) < Number.POSITIVE_INFINITY)) bad += notFinite(v) + notFinite(next)
+    y[yAt + j] = v
+    y[yAt + j + 1] = next
+  }
+  if (j < n) {
+    const v = dry * d[at + j]! + wet * m[j]!
+    bad += notFinite(v)
     y[yAt + j] = v
   }
   return bad
 }
 
+const notFinite = (v: number): number => (Math.abs(v) < Number.POSITIVE_INFINITY ? 0 : 1)
+
 /** Where the dry signal of channel c stands, and the index there of the chunk's first sample. */
-function dryOf({ settings, lines, dryLines, input, trajectory }: Core, c: number): Float64Array {
+function dryOf({ settings, lines, dryLines, input }: Core, c: number): Float64Array {
   const line = settings.lines === 2 ? c : 0
   if (settings.dryFromLine) return lines[line]!
-  return dryDelay(settings, trajectory.longest) === 0 ? input[line]! : dryLines[line]!
+  return dryDelay(settings) === 0 ? input[line]! : dryLines[line]!
 }
 
-function dryAt({ settings, position, length, trajectory }: Core): number {
-  const delay = dryDelay(settings, trajectory.longest)
-  return delay === 0 && !settings.dryFromLine ? 0 : position + length - delay
+function dryAt({ settings, position }: Core): number {
+  const delay = dryDelay(settings)
+  return delay === 0 && !settings.dryFromLine ? 0 : position - delay
 }
 
 /** Dry delay in whole samples, rounded half up, at most `longest`. */
-function dryDelay({ dryDelayMs, fs }: Settings, longest: number): number {
+function dryDelay({ dryDelayMs, fs, longest }: Settings): number {
   return Math.min(Math.floor((dryDelayMs * fs) / 1000 + 0.5), Math.floor(longest)) | 0
 }

@@ -44,7 +44,7 @@ function copyUsed({ used, usedCount }: Trajectory, from: Float64Array, f: number
 /** Makes every sample its own run, with what the glides add, held to the limits. */
 function breakRuns(t: Trajectory, s: Settings, n: number): void {
   const { runs, used } = t
-  for (let i = 0; i < t.usedCount; i++) breakRead(t, used[i]!, used[i]! < LOOPS ? s.voiceLeast : s.loopLeast, n)
+  for (let i = 0; i < t.usedCount; i++) breakRead(t, s, used[i]!, n)
   if (!t.loops) t.offset.fill(0, LOOPS)
   for (let j = 0; j < n; j++) {
     runs.starts[j] = j
@@ -58,7 +58,7 @@ function breakRuns(t: Trajectory, s: Settings, n: number): void {
 
 const isLeft = (offset: number): boolean => offset !== 0
 
-function breakRead(t: Trajectory, r: number, least: number, n: number): void {
+function breakRead(t: Trajectory, s: Settings, r: number, n: number): void {
   const { runs, delays } = t
   for (let k = 0; k < runs.count; k++) {
     const from = runs.ends[k * READS + r]!
@@ -67,7 +67,7 @@ function breakRead(t: Trajectory, r: number, least: number, n: number): void {
     for (let j = runs.starts[k]!; j < runs.starts[k + 1]!; j++) delays[j] = from + slope * (into + j)
   }
   addGlide(t, r, n)
-  hold(t, n, least)
+  hold(t, s.longest, n, r < LOOPS ? s.voiceLeast : s.loopLeast)
   for (let j = 0; j < n; j++) runs.ends[j * READS + r] = delays[j]!
 }
 
@@ -88,8 +88,8 @@ function addGlide({ delays, offset, fs }: Trajectory, r: number, n: number): voi
   offset[r] = left
 }
 
-function hold(t: Trajectory, n: number, least: number): void {
-  const { delays, longest } = t
+function hold(t: Trajectory, longest: number, n: number, least: number): void {
+  const { delays } = t
   for (let j = 0; j < n; j++) {
     const delay = delays[j]!
     if (delay >= least && delay <= longest) continue

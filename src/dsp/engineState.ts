@@ -74,7 +74,7 @@ export function createEngine(set: ParameterSet, { sampleRate = set.sampleRate, m
   if (!(longestMs >= 0 && longestMs <= MAX_DELAY_MS)) throw new RangeError(`maxDelayMs must be in [0, ${MAX_DELAY_MS}], got ${longestMs}`)
   const options = {
     fs: sampleRate,
-    maxDelay: Math.max(4, Math.ceil((longestMs * sampleRate) / 1000)),
+    maxDelay: Math.max(4, Math.ceil((longestMs * sampleRate) / 1000) + 1),
     keepsDry: live || (set.mix.dryTap === 'input' && set.mix.dryDelayMs > 0),
   }
   const engine: Engine = {

@@ -14,7 +14,7 @@ export function isLinearLoop({ settings, ramps, trajectory }: Core, moving: bool
 
 /** Takes u of line c from its source and writes the line, for the whole chunk. */
 export function linearLoop(core: Core, c: number): void {
-  const { ramps, trajectory, states, position, length, sourceAt } = core
+  const { ramps, trajectory, states, position, sourceAt } = core
   const { ends, part, starts, into, count } = trajectory.runs
   const x = core.source[c]!
   const line = core.lines[c]!
@@ -45,14 +45,43 @@ export function linearLoop(core: Core, c: number): void {
         while (((from + slope * (since + stop)) | 0) === whole) stop++
       }
       let at = position + j
-      let i = at + length - whole
+      let i = at - whole
       let x2 = line[i - 1]!
-      for (; j < stop; j++) {
+      // Two samples a turn, so that the points need not be moved along.
+      for (; j < stop - 1; j += 2) {
+        let f = from + slope * (since + j) - whole
+        const x1 = line[i]!
+        let s = x1 + f * (x2 - x1)
+        low = lessA * s + a * low
+        s = low
+        if (cut) {
+          high = half * (s - before) + b * high
+          before = s
+          s = high
+        }
+        let v = x[sourceAt + j]! * gain
+        u[j] = v
+        line[at] = v + g * s
+        f = from + slope * (since + j + 1) - whole
+        x2 = line[i + 1]!
+        s = x2 + f * (x1 - x2)
+        low = lessA * s + a * low
+        s = low
+        if (cut) {
+          high = half * (s - before) + b * high
+          before = s
+          s = high
+        }
+        v = x[sourceAt + j + 1]! * gain
+        u[j + 1] = v
+        line[at + 1] = v + g * s
+        i = (i + 2) | 0
+        at = (at + 2) | 0
+      }
+      if (j < stop) {
         const f = from + slope * (since + j) - whole
         const x1 = line[i]!
-        i = (i + 1) | 0
         let s = x1 + f * (x2 - x1)
-        x2 = x1
         low = lessA * s + a * low
         s = low
         if (cut) {
@@ -62,10 +91,8 @@ export function linearLoop(core: Core, c: number): void {
         }
         const v = x[sourceAt + j]! * gain
         u[j] = v
-        const w = v + g * s
-        line[at] = w
-        line[at + length] = w
-        at = (at + 1) | 0
+        line[at] = v + g * s
+        j++
       }
     }
   }

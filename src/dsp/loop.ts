@@ -43,7 +43,7 @@ function readLoop(core: Core, c: number, k: number, j: number, end: number, movi
   s.fill(0, j, end)
   read.read = LOOPS + c
   read.line = core.lines[c]!
-  read.at = core.position + core.length
+  read.at = core.position
   read.out = s
   addPiece(settings.loopRead, read, k, j, end)
   if (moving) {

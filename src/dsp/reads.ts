@@ -13,7 +13,7 @@ export interface Read {
   read: number
   /** A line's memory. */
   line: Float64Array
-  /** Index in `line` of n of the chunk's first sample; older samples stand below. */
+  /** Index in `line` of the chunk's first sample; older samples stand below. */
   at: number
   /** Memory of recursive reads. */
   readonly states: Float64Array

@@ -7,11 +7,14 @@ import { choicesOf } from './flatRules.ts'
 import { createPointStore, type PointStore, takePoints } from './points.ts'
 import { MAX_VOICES } from './runs.ts'
 import type { EngineShaper } from './shaperPass.ts'
+import { createSineTables, type SineTables, takeSine } from './sine.ts'
 
 type Mutable<T> = { -readonly [K in keyof T]: T[K] }
 
 export interface Settings {
   readonly fs: number
+  /** Largest delay the line can give, samples. */
+  readonly longest: number
   lines: 1 | 2
   outputs: 1 | 2
   voiceRead: Interpolation
@@ -29,14 +32,9 @@ export interface Settings {
   /** Phase of each voice against voice 0, and of each channel against channel 0, cycles. */
   readonly voicePhase: Float64Array
   readonly channelPhase: Float64Array
-  /** The sine sweep under the law of time, where every read is continuous in its delay, has a shorter way: see evaluateSine. */
+  /** Whether the sweep is one that sine.ts evaluates; its tables, one slot a read. */
   plainSine: boolean
-  /** Centre of each voice, base and depth, samples; cosine and sine of the phase of voice v of channel c at c · MAX_VOICES + v. */
-  readonly centre: Float64Array
-  base: number
-  depth: number
-  readonly phaseCos: Float64Array
-  readonly phaseSin: Float64Array
+  readonly sineTables: SineTables
   /** V^(−1/2). */
   voiceScale: number
   loopMoves: boolean
@@ -54,11 +52,12 @@ export const INPUT = 0
 export const LOOP = 1
 export const OUTPUT = 2
 
-export function createSettings(fs: number): Settings {
+export function createSettings(fs: number, longest: number): Settings {
   const shaperStores = SHAPER_PATHS.map(createPointStore)
   const sweepStore = createPointStore()
   return {
     fs,
+    longest,
     lines: 1,
     outputs: 1,
     voiceRead: 'linear',
@@ -87,11 +86,7 @@ export function createSettings(fs: number): Settings {
     voicePhase: new Float64Array(MAX_VOICES),
     channelPhase: new Float64Array(2),
     plainSine: false,
-    centre: new Float64Array(MAX_VOICES),
-    base: 0.5,
-    depth: 0.5,
-    phaseCos: new Float64Array(2 * MAX_VOICES),
-    phaseSin: new Float64Array(2 * MAX_VOICES),
+    sineTables: createSineTables(),
     voiceScale: 0.5,
     loopMoves: true,
     dryFromLine: false,
@@ -202,23 +197,5 @@ export function takeDelays(s: Settings, flat: Float64Array): void {
     s.centreMs[v] = s.baseMs + voiceOffsetMs(voices, v)
   }
   for (let c = 0; c < 2; c++) s.channelPhase[c] = (c * sweep.stereoPhase) / 360
-  s.plainSine = sweep.shape === 'sine' && sweep.law === 'time' && isContinuous(s.voiceRead) && isContinuous(s.loopRead)
-  if (s.plainSine) takeSine(s)
-}
-
-/** Whether a read moves without a step when its delay does. */
-const isContinuous = (kind: Interpolation): boolean => kind === 'linear' || kind === 'lagrange3' || kind === 'hermite4'
-
-function takeSine(s: Settings): void {
-  const toSamples = s.fs / 1000
-  s.base = s.baseMs * toSamples
-  s.depth = s.sweep.depthMs * toSamples
-  for (let v = 0; v < s.voices.count; v++) {
-    s.centre[v] = s.centreMs[v]! * toSamples
-    for (let c = 0; c < 2; c++) {
-      const angle = 2 * Math.PI * (s.voicePhase[v]! + s.channelPhase[c]!)
-      s.phaseCos[c * MAX_VOICES + v] = Math.cos(angle)
-      s.phaseSin[c * MAX_VOICES + v] = Math.sin(angle)
-    }
-  }
+  s.plainSine = takeSine(s)
 }

@@ -28,8 +28,6 @@ export interface Trajectory {
   phase: number
   since: number
   held: boolean
-  /** Largest delay the line can give, samples. */
-  readonly longest: number
   /** Whether the loops are read. */
   loops: boolean
   /** The reads in use. */
@@ -43,7 +41,7 @@ export interface Trajectory {
   readonly delays: Float64Array
 }
 
-export function createTrajectory(fs: number, longest: number): Trajectory {
+export function createTrajectory(fs: number): Trajectory {
   return {
     fs,
     from: new Float64Array(READS),
@@ -57,7 +55,6 @@ export function createTrajectory(fs: number, longest: number): Trajectory {
     phase: 0.5,
     since: 0,
     held: false,
-    longest,
     loops: false,
     used: new Int32Array(READS),
     usedCount: 0,
@@ -115,42 +112,26 @@ function evaluateShape(t: Trajectory, s: Settings, n: number, into: Float64Array
       const shape = t.held ? frozenShapeValue(sweep, at) : sweepShapeValue(sweep, at, v)
       const delay = toSamples(t, s, centreMs[v]!, shape)
       into[row + c * MAX_VOICES + v] = delay
-      if (!(delay >= s.voiceLeast && delay <= t.longest)) t.toInside = false
+      if (!(delay >= s.voiceLeast && delay <= s.longest)) t.toInside = false
       if (v > 0 || c >= lines || !t.loops) continue
       const loop = (s.loopMoves ? toSamples(t, s, s.baseMs, shape) : (s.baseMs * t.fs) / 1000) - s.loopLess
       into[row + LOOPS + c] = loop
-      if (!(loop >= s.loopLeast && loop <= t.longest)) t.toInside = false
+      if (!(loop >= s.loopLeast && loop <= s.longest)) t.toInside = false
     }
   }
 }
 
-/**
- * The sine by the addition theorem: one sine and cosine for all voices, a few units in the last place from the direct formula. A read that
- * jumps with its delay would need exactly the delay an independent model has; a continuous one does not.
- */
+/** The sine: see sine.ts. */
 function evaluateSine(t: Trajectory, s: Settings, n: number, into: Float64Array, row: number): void {
-  const { voices, outputs, lines, centre, depth, phaseCos, phaseSin, voiceLeast } = s
-  const { longest } = t
+  const { used, usedCount } = t
+  const { centre, inSine, inCosine } = s.sineTables
   const angle = 2 * Math.PI * wrapPhase(phaseAt(t, s, n))
   const sine = Math.sin(angle)
   const cosine = Math.cos(angle)
-  let inside = true
-  for (let c = 0; c < outputs; c++) {
-    for (let v = 0; v < voices.count; v++) {
-      const r = c * MAX_VOICES + v
-      const delay = centre[v]! + depth * (sine * phaseCos[r]! + cosine * phaseSin[r]!)
-      into[row + r] = delay
-      if (!(delay >= voiceLeast && delay <= longest)) inside = false
-    }
+  for (let i = 0; i < usedCount; i++) {
+    const r = used[i]!
+    into[row + r] = centre[r]! + inSine[r]! * sine + inCosine[r]! * cosine
   }
-  for (let c = 0; t.loops && c < lines; c++) {
-    const r = c * MAX_VOICES
-    const moved = s.loopMoves ? s.base + depth * (sine * phaseCos[r]! + cosine * phaseSin[r]!) : s.base
-    const delay = moved - s.loopLess
-    into[row + LOOPS + c] = delay
-    if (!(delay >= s.loopLeast && delay <= longest)) inside = false
-  }
-  t.toInside = inside
 }
 
 function toSamples(t: Trajectory, s: Settings, centreMs: number, shape: number): number {

@@ -7,6 +7,8 @@ export interface Row {
   /** As design 13 states it; absent for figures that only inform. */
   readonly target?: string
   readonly met?: boolean
+  /** How it was measured, for RESULTS.md, where the title does not say enough. */
+  readonly how?: string
 }
 
 export interface Bench {

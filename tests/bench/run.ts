@@ -1,0 +1,90 @@
+// npm run bench: runs the bench modules one after another and prints their figures beside the targets of the design's speed table.
+// `-- ID …` runs only those named; `-- --write` renews RESULTS.md, which needs all of them. What counts is ratios taken inside one run.
+import { execFileSync } from 'node:child_process'
+import { writeFileSync } from 'node:fs'
+import os from 'node:os'
+import { fileURLToPath } from 'node:url'
+import { allocationBench } from './allocation.ts'
+import type { Bench, Row } from './bench.ts'
+import { engineBench } from './engine.ts'
+import { pageFrame } from './page-frame.ts'
+import { pageSize } from './page-size.ts'
+import { pageWorklet } from './page-worklet.ts'
+import { pageWorkletLive } from './page-worklet-live.ts'
+
+const BENCHES: readonly Bench[] = [engineBench, allocationBench, pageWorklet, pageWorkletLive, pageFrame, pageSize]
+
+interface Outcome {
+  readonly title: string
+  readonly rows: readonly Row[]
+  /** Why nothing was measured. */
+  readonly reason?: string
+}
+
+async function outcomeOf({ title, run }: Bench): Promise<Outcome> {
+  try {
+    return { title, rows: await run() }
+  } catch (error) {
+    return { title, rows: [], reason: error instanceof Error ? (error.message.split('\n')[0] ?? '') : String(error) }
+  }
+}
+
+function table(rows: readonly Row[]): string {
+  const cells = [['what', 'figure', 'target', 'met'], ...rows.map(cellsOf)]
+  const widths = cells[0]!.map((_, i) => Math.max(...cells.map((row) => row[i]!.length)))
+  const line = (row: readonly string[]) => `| ${row.map((cell, i) => cell.padEnd(widths[i]!)).join(' | ')} |`
+  return [line(cells[0]!), `|${widths.map((w) => '-'.repeat(w + 2)).join('|')}|`, ...cells.slice(1).map(line)].join('\n')
+}
+
+function cellsOf({ what, value, unit, target = '', met }: Row): string[] {
+  const digits = Math.abs(value) < 100 ? 3 : 4
+  return [what, `${Number(value.toPrecision(digits))} ${unit}`.trim(), target, met === undefined ? '' : met ? 'yes' : 'no']
+}
+
+function section({ title, rows, reason }: Outcome): string {
+  if (reason !== undefined) return `## ${title}\n\nNot measured: ${reason}\n`
+  const hows = rows.filter((row) => row.how).map((row) => `- ${row.what}: ${row.how}`)
+  return `## ${title}\n\n${table(rows)}\n${hows.length > 0 ? `\n${hows.join('\n')}\n` : ''}`
+}
+
+function machine(): string {
+  const compiler = (() => {
+    try {
+      return execFileSync('gcc', ['--version'], { encoding: 'utf8' }).split('\n')[0]
+    } catch {
+      return 'no gcc'
+    }
+  })()
+  return `${os.cpus()[0]?.model ?? 'unknown processor'}, ${os.cpus().length} cores, Node ${process.version}, ${compiler}`
+}
+
+function results(outcomes: readonly Outcome[]): string {
+  return `# Speed and memory
+
+Written by \`npm run bench -- --write\`; rows and targets are those of the design's speed table. Ratios taken in one run travel from
+machine to machine, times do not.
+
+Machine: ${machine()}.
+
+${outcomes.map(section).join('\n')}`
+}
+
+function fail(message: string, hint: string): never {
+  process.stderr.write(`error: ${message}\nhint: ${hint}\n`)
+  process.exit(2)
+}
+
+const names = process.argv.slice(2).filter((word) => word !== '--write')
+const write = process.argv.includes('--write')
+const unknown = names.find((name) => !BENCHES.some((bench) => bench.id === name))
+if (unknown !== undefined) fail(`no bench is called ${unknown}`, `there are ${BENCHES.map((bench) => bench.id).join(', ')}`)
+if (write && names.length > 0) fail('--write needs all benches', 'leave the names out')
+
+const outcomes: Outcome[] = []
+for (const bench of BENCHES.filter(({ id }) => names.length === 0 || names.includes(id))) {
+  process.stderr.write(`running ${bench.id} …\n`)
+  const outcome = await outcomeOf(bench)
+  outcomes.push(outcome)
+  process.stdout.write(`${section(outcome)}\n`)
+}
+if (write) writeFileSync(fileURLToPath(new URL('RESULTS.md', import.meta.url)), results(outcomes))
