@@ -1,15 +1,15 @@
 // The wires, drawn beneath the blocks: two signals side by side where two lines run, dashed where nothing flows.
-import type { Geometry } from './geometry.ts'
+import type { Box, Geometry } from './geometry.ts'
 
 const THIN = 1 / 16
 
 interface WiresProps {
   readonly geometry: Geometry
-  /** Nothing crosses over. */
-  readonly crossIdle: boolean
+  /** Part of each loop that goes over to the other line; 0 draws no crossing. */
+  readonly crossFeed: number
 }
 
-export function Wires({ geometry, crossIdle }: WiresProps) {
+export function Wires({ geometry, crossFeed }: WiresProps) {
   const { width, height, wires, dots, sum, cross } = geometry
   return (
     <svg className="cw-wires" viewBox={`0 0 ${width} ${height}`} aria-hidden="true">
@@ -34,10 +34,10 @@ export function Wires({ geometry, crossIdle }: WiresProps) {
           {wire.arrow && <path d={wire.path} fill="none" strokeWidth={THIN} markerEnd="url(#cw-arrow)" />}
         </g>
       ))}
-      {cross && (
-        <g className="cw-wire" data-idle={crossIdle || undefined}>
+      {cross && crossFeed > 0 && (
+        <g className="cw-wire">
           <rect className="cw-wire-paper" x={cross.x} y={cross.y} width={cross.width} height={cross.height} />
-          <path className="cw-wire-ink" strokeWidth={THIN} d={crossing(cross)} />
+          <path className="cw-wire-ink" strokeWidth={THIN} d={crossing(cross, crossFeed < 1)} />
         </g>
       )}
       <circle className="cw-wire-paper cw-wire-ring" cx={sum.x} cy={sum.y} r={sum.r} strokeWidth={THIN} />
@@ -48,25 +48,15 @@ export function Wires({ geometry, crossIdle }: WiresProps) {
   )
 }
 
-/** Each loop goes on along its own wire and over to the other's. */
-function crossing({
-  x,
-  y,
-  width,
-  height,
-}: {
-  readonly x: number
-  readonly y: number
-  readonly width: number
-  readonly height: number
-}): string {
-  const middle = y + height / 2
-  const a = middle - 1.5 * THIN
-  const b = middle + 1.5 * THIN
-  const top = y
+/** Each loop goes over to the other's wire and, while `own`, on along its own as well. */
+function crossing({ x, y, width, height }: Box, own: boolean): string {
+  const a = y + height / 2 - 1.5 * THIN
+  const b = y + height / 2 + 1.5 * THIN
   const bottom = y + height
-  const lead = width * 0.2
-  const x0 = x + lead
-  const x1 = x + width - lead
-  return `M${x} ${a}L${x0} ${top}H${x1}L${x + width} ${a}M${x} ${b}L${x0} ${bottom}H${x1}L${x + width} ${b}M${x0} ${top}L${x1} ${bottom}M${x0} ${bottom}L${x1} ${top}`
+  const end = x + width
+  const x0 = x + 0.2 * width
+  const x1 = end - 0.2 * width
+  const ends = `M${x} ${a}L${x0} ${y}M${x} ${b}L${x0} ${bottom}M${x1} ${y}L${end} ${a}M${x1} ${bottom}L${end} ${b}`
+  const over = `M${x0} ${y}L${x1} ${bottom}M${x0} ${bottom}L${x1} ${y}`
+  return own ? `${ends}${over}M${x0} ${y}H${x1}M${x0} ${bottom}H${x1}` : `${ends}${over}`
 }

@@ -12,7 +12,7 @@ export function ringNote(set: ParameterSet): string {
   const pass = Math.abs(feedback) * (shaper ? Math.abs(createShaper(shaper).slopeAtZero) : 1)
   if (pass === 0) return 'no loop'
   const passDb = 20 * Math.log10(pass)
-  const level = `one pass ${showIn(Number(passDb.toFixed(1)), 'dB')}`
+  const level = `one pass ${passDb.toFixed(1).replace('-', '−')} dB`
   if (pass >= 1) return `${level}: grows until something holds it`
   const seconds = (delayRange(set).loop.maxSamples / set.sampleRate) * (60 / -passDb)
   return `${level} · rings ${showIn(Number(seconds.toPrecision(2)), 's')} at most`

@@ -50,7 +50,7 @@ describe('what follows from a value', () => {
   it('a feedback: one pass, and the ring it allows', () => {
     // Oracle: T60 = 60 τ/(−20 log10 |g|) at τ = 5 ms, g = 0.9: 0.328 s (FACTS 1, computed).
     const fixed: ParameterSet = { ...base, line: { ...base.line, baseMs: 5 }, loop: { ...base.loop, feedback: 0.9, delay: 'fixed' } }
-    expect(ringNote(fixed).replaceAll('\u00a0', ' ')).toBe('one pass −0.90 dB · rings 0.33 s at most')
+    expect(ringNote(fixed).replaceAll('\u00a0', ' ')).toBe('one pass −0.9 dB · rings 0.33 s at most')
     expect(ringNote(base)).toBe('no loop')
     expect(ringNote(withAt(fixed, 'loop.feedback', 1.05))).toContain('grows')
   })
