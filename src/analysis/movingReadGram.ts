@@ -1,6 +1,6 @@
 // Is the read operator R, y[n] = Σ h_k(D[n]) w[n − k], of norm below t over a given movement? Exactly when t² I − RᵀR is positive definite, and every row
 // of R touches at most four neighbouring samples, so RᵀR has seven diagonals however the delay moves: its LDLᵀ factors are streamed in one pass and all
-// pivots must be positive. Source: Sylvester's law of inertia; ANALYSIS_NOTES.
+// pivots must be positive. Source: Sylvester's law of inertia.
 //
 // Invariant: column m of RᵀR is complete once every row n' that follows has n' − (largest whole delay) − 2 > m. Columns wait in a ring until then.
 import { firstTap, splitDelay } from '../dsp/interpolators.ts'

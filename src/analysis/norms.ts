@@ -13,7 +13,7 @@ export const READ_PEAK: Readonly<Record<Interpolation, number>> = { nearest: 1, 
 
 /**
  * C in N² ≤ 1 + C ε: the largest energy gain of a read whose delay changes by at most ε ≤ MOVING_LIMIT samples a sample, in any manner. null: no such
- * bound is known. ANALYSIS_NOTES has the argument, tests/analysis/movingReadConstant.test.ts recomputes it.
+ * bound is known. The argument, and C computed from it: tests/analysis/movingReadConstant.test.ts.
  */
 export const MOVING_CONSTANT: Readonly<Record<Interpolation, number | null>> = {
   nearest: null,

@@ -2,7 +2,7 @@
 import type { ParameterSet } from '../set/types.ts'
 import type { FrozenLoop } from './frozen.ts'
 import { largestCrossing } from './loopCrossing.ts'
-import { loopParts, pairDelay, pairModulusEquation } from './loopPair.ts'
+import { loopParts, pairModulusEquation } from './loopPair.ts'
 import { type LoopSweep, loopSweep, worstPlace } from './loopSweep.ts'
 import { loopMovement } from './movingRead.ts'
 import { lineMax, toneMax } from './norms.ts'
@@ -96,8 +96,8 @@ function loopMax(loop: FrozenLoop, slope: number): number {
 }
 
 /**
- * Whether every frozen position is stable for every shaper gain in [0, slope] ([−slope, slope] with bothSigns). Crossed lines in front of which the gain is not
- * below 1 are decided only without a shaper (one gain), by counting.
+ * Whether every frozen position is stable for every shaper gain in [0, slope] ([−slope, slope] with bothSigns). Crossed lines whose gain is not below 1
+ * are decided only without a shaper (one gain), by counting; with one they are not called stable.
  */
 export function everyPositionStable(
   set: ParameterSet,
@@ -124,7 +124,7 @@ function stableAtGain(set: ParameterSet, sampleRate: number, sweep: LoopSweep, s
 function stableUpToGain(sweep: LoopSweep, slope: number, bothSigns: boolean): boolean {
   const score = (loop: FrozenLoop) => {
     const { lines, pair } = loopParts(loop, slope)
-    if (pair !== null) return pairDelay(pair)
+    if (pair !== null) return Number.POSITIVE_INFINITY
     const signs = bothSigns ? [1, -1] : [1]
     return Math.max(...lines.flatMap((line) => signs.map((sign) => largestCrossing({ ...line, gain: line.gain * sign }))))
   }

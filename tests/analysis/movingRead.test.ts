@@ -120,7 +120,7 @@ describe('ε', () => {
 })
 
 describe('certified norm over the sweep', () => {
-  // Figures of ANALYSIS_NOTES, computed: (N − 1)/ε of a smooth sweep.
+  // Computed by an earlier, independent trial: (N − 1)/ε of a smooth sweep.
   it.each([
     ['linear', 0.57],
     ['lagrange3', 0.52],

@@ -1,6 +1,6 @@
 // C of the moving read, N² ≤ 1 + C ε, from its argument. A frozen read is passive: 1 − |a_f|² = Σ ρ_d e^{jωd} ≥ 0 factors as |b(e^{jω})|², and Q = θ b bᵀ + (1 − θ)
 // (its reversal) completes the Gram matrix h hᵀ of one row so that rows one sample apart add up to the identity. While the delay moves by at most ε a sample, rows stand
-// 1 ± ε apart; RᵀR ≤ Σ(h hᵀ + Q), whose norm is at most its largest absolute row sum. Source: ANALYSIS_NOTES; computed here, over every fraction and spacing.
+// 1 ± ε apart; RᵀR ≤ Σ(h hᵀ + Q), whose norm is at most its largest absolute row sum. No source retrieved: derived, and computed here over every fraction and spacing.
 import { describe, expect, it } from 'vitest'
 import { MOVING_CONSTANT, MOVING_LIMIT } from '../../src/analysis/norms.ts'
 import { tapsOf } from '../../src/dsp/interpolators.ts'
