@@ -7,17 +7,9 @@ export const pane = (page: Page, index: 0 | 1): Locator => page.getByRole('regio
 
 export const reading = (of: Locator): Locator => of.locator('.cw-plot-reading')
 
-/** What is drawn now, as one string. */
-export const drawn = (of: Locator): Promise<string> => of.locator('canvas').evaluate((canvas: HTMLCanvasElement) => canvas.toDataURL())
-
-/** How many of the picture's pixels are not empty. */
-export const inked = (of: Locator): Promise<number> =>
-  of.locator('canvas').evaluate((canvas: HTMLCanvasElement) => {
-    const { data } = canvas.getContext('2d')?.getImageData(0, 0, canvas.width, canvas.height) ?? { data: [] }
-    let count = 0
-    for (let i = 3; i < data.length; i += 4) if ((data[i] ?? 0) > 0) count += 1
-    return count
-  })
+/** What is drawn now, as one string: all canvases of the plot. */
+export const drawn = (of: Locator): Promise<string> =>
+  of.locator('canvas').evaluateAll((layers) => layers.map((canvas) => (canvas as HTMLCanvasElement).toDataURL()).join())
 
 /** The first number in a text, as the page writes it: real minus sign, thin spaces. */
 export function numberIn(text: string): number {

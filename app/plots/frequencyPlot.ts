@@ -14,6 +14,7 @@ import { plotCursor } from './host/plotCursor.ts'
 import type { PlotTheme } from './host/theme.ts'
 import type { Levels } from './levels.ts'
 import type { MountedPlot, PlotNumbers, PlotPlace, PlotTable } from './plotTypes.ts'
+import { readingLine } from './readingLine.ts'
 import { decimal } from './words.ts'
 
 /** The kinds of job that answer frame by frame, and the one for the whole sweep beside each. */
@@ -52,8 +53,6 @@ export interface Surface {
   readonly levels: Levels
 }
 
-/** The reading line is renewed this often while the sound moves it. */
-const READING_MS = 100
 const NARROW_PX = 480
 const COMPUTED = 'being computed'
 
@@ -67,8 +66,6 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
   let corner = ''
   let asked = { set: currentSet(), position: -1, columns }
   let dirty = false
-  let unread = false
-  let readAt = 0
   let cursor: number | null = null
 
   function failed(message: string) {
@@ -92,7 +89,7 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
     spec.whole,
     (reply) => {
       whole = reply
-      unread = true
+      line.changed()
       fitLevels()
       plot.redraw()
     },
@@ -164,6 +161,7 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
     reading(cursor === null ? rest : `${underCursor(cursor)}\u2003${rest}`)
   }
 
+  const line = readingLine(read)
   const stopDrawing = onFrame(() => {
     const set = currentSet()
     const position = shownPosition()
@@ -172,15 +170,9 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
       lives.ask(asked)
     }
     if (dirty) plot.drawLive()
-    unread ||= dirty
+    if (dirty) line.changed()
     dirty = false
   }, 'canvas')
-  const stopReading = onFrame((timeMs) => {
-    if (!unread || timeMs - readAt < READING_MS) return
-    unread = false
-    readAt = timeMs
-    read()
-  })
   const stopSet = subscribeSet(() => {
     measure()
     askWhole()
@@ -194,7 +186,7 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
     picture: plot.picture,
     destroy() {
       stopDrawing()
-      stopReading()
+      line.stop()
       stopSet()
       lives.stop()
       wholes.stop()

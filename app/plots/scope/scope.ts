@@ -10,6 +10,7 @@ import { createPlot } from '../host/createPlot.ts'
 import { plotCursor } from '../host/plotCursor.ts'
 import { plotTheme } from '../host/theme.ts'
 import type { MountedPlot, PlotPlace } from '../plotTypes.ts'
+import { readingLine } from '../readingLine.ts'
 import { decimal } from '../words.ts'
 import { triggerAt } from './trigger.ts'
 
@@ -17,7 +18,6 @@ const SHOWN = SCOPE_FRAMES / 2
 const RANGES = [0.01, 0.02, 0.05, 0.1, 0.2, 0.5, 1, 2, 5, 10, 20, 50, 100]
 /** A quieter sound gets a larger scale only after it stayed quiet this long. */
 const SHRINK_MS = 2000
-const READING_MS = 100
 const EMPTY = 'Press Play: the sound going in (dashed) and coming out stands here.'
 
 export function mountScope({ element, reading }: PlotPlace): MountedPlot {
@@ -27,8 +27,6 @@ export function mountScope({ element, reading }: PlotPlace): MountedPlot {
   let range = 1
   let quietSince = 0
   let shown = -1
-  let unread = true
-  let readAt = 0
   let cursor: number | null = null
 
   const rate = () => useSession.getState().contextRate ?? currentSet().sampleRate
@@ -88,18 +86,13 @@ export function mountScope({ element, reading }: PlotPlace): MountedPlot {
     plot.u.setData([time, into, out])
   }
 
+  const line = readingLine(read)
   const stopDrawing = onFrame((timeMs) => {
     if (live.scopeCount === shown) return
     shown = live.scopeCount
-    unread = true
+    line.changed()
     if (shown > 0) take(timeMs)
   }, 'canvas')
-  const stopReading = onFrame((timeMs) => {
-    if (!unread || timeMs - readAt < READING_MS) return
-    unread = false
-    readAt = timeMs
-    read()
-  })
 
   return {
     summary: () => (live.scopeCount === 0 ? `Scope: ${EMPTY}` : `Scope: ${decimal(spanMs(), 1)} ms of sound, ${peaks()}.`),
@@ -115,7 +108,7 @@ export function mountScope({ element, reading }: PlotPlace): MountedPlot {
     picture: plot.picture,
     destroy() {
       stopDrawing()
-      stopReading()
+      line.stop()
       keys.destroy()
       plot.destroy()
     },

@@ -3,11 +3,11 @@
 import type uPlot from 'uplot'
 import { holdAt, shownPosition } from '../../state/position.ts'
 import { useView } from '../../state/view.ts'
-import { sliderKey } from '../host/plotCursor.ts'
+import { makeSlider } from '../host/slider.ts'
 
 export interface NowMarker {
-  /** Puts line and dot at a position, the dot at a part of the height from the top. */
-  place(position: number, dotPart: number): void
+  /** Puts the line at x and the dot at x, y, in CSS pixels of the plotting area. */
+  place(x: number, y: number): void
   destroy(): void
 }
 
@@ -19,29 +19,16 @@ export function nowMarker(u: uPlot, element: HTMLElement, spoken: (position: num
   u.over.append(line, dot)
   u.over.classList.add('cw-now-drag')
 
-  const attributes: Readonly<Record<string, string>> = {
-    role: 'slider',
-    tabindex: '0',
-    'aria-label': 'Sweep position',
-    'aria-valuemin': '0',
-    'aria-valuemax': '1',
-    'aria-orientation': 'horizontal',
-  }
-  for (const [name, value] of Object.entries(attributes)) element.setAttribute(name, value)
+  const slider = makeSlider(element, {
+    label: 'Sweep position',
+    value: shownPosition,
+    move: (part) => holdAt(Math.min(part, LAST)),
+  })
 
   // A value that changes by itself is not spoken: while it follows the sound, only that is said.
   function speak() {
     const { held } = useView.getState()
-    element.setAttribute('aria-valuenow', shownPosition().toFixed(2))
-    element.setAttribute('aria-valuetext', held === null ? 'follows the sound' : `${spoken(held)}, held`)
-  }
-
-  function onKey(event: KeyboardEvent) {
-    if (event.ctrlKey || event.metaKey || event.altKey) return
-    const next = sliderKey(event.key, shownPosition())
-    if (next === null) return
-    event.preventDefault()
-    holdAt(Math.min(next, LAST))
+    slider.speak(shownPosition(), held === null ? 'follows the sound' : `${spoken(held)}, held`)
   }
 
   const holdUnder = (event: PointerEvent) => {
@@ -61,22 +48,19 @@ export function nowMarker(u: uPlot, element: HTMLElement, spoken: (position: num
   const stopView = useView.subscribe((now, before) => {
     if (now.held !== before.held) speak()
   })
-  element.addEventListener('keydown', onKey)
   u.over.addEventListener('pointerdown', onDown)
   u.over.addEventListener('pointermove', onMove)
 
   return {
-    place(position, dotPart) {
-      const x = position * u.over.clientWidth
+    place(x, y) {
       line.style.transform = `translateX(${x}px)`
-      dot.style.transform = `translate(${x}px, ${dotPart * u.over.clientHeight}px)`
+      dot.style.transform = `translate(${x}px, ${y}px)`
     },
     destroy() {
       stopView()
-      element.removeEventListener('keydown', onKey)
       u.over.removeEventListener('pointerdown', onDown)
       u.over.removeEventListener('pointermove', onMove)
-      for (const name of [...Object.keys(attributes), 'aria-valuenow', 'aria-valuetext']) element.removeAttribute(name)
+      slider.destroy()
       line.remove()
       dot.remove()
     },

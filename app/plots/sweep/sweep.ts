@@ -10,19 +10,20 @@ import { cornerText } from '../host/corner.ts'
 import { createPlot, type Layer } from '../host/createPlot.ts'
 import { plotTheme } from '../host/theme.ts'
 import type { MountedPlot, PlotPlace, PlotTable } from '../plotTypes.ts'
+import { readingLine } from '../readingLine.ts'
 import { cents, decimal, milliseconds } from '../words.ts'
 import './sweep.css'
 import { nowMarker } from './nowMarker.ts'
 import { delayAxis, type SweepCurves, sweepAt, sweepCurves, sweepWords } from './sweepCurves.ts'
 
-const READING_MS = 100
 const FAINT = 0.38
 
 export function mountSweep({ element, reading }: PlotPlace): MountedPlot {
   let curves: SweepCurves = sweepCurves(currentSet())
   let set = currentSet()
   let placed = Number.NaN
-  let readAt = 0
+  // Kept, because asking the page for it in a frame makes it lay itself out.
+  let size = { widthPx: 0, heightPx: 0 }
   let cursor: number | null = null
 
   const centsAxis = (): [number, number] => {
@@ -81,7 +82,8 @@ export function mountSweep({ element, reading }: PlotPlace): MountedPlot {
       cursor = part
       read()
     },
-    onSize: () => {
+    onSize: (widthPx, heightPx) => {
+      size = { widthPx, heightPx }
       placed = Number.NaN
     },
   })
@@ -92,7 +94,7 @@ export function mountSweep({ element, reading }: PlotPlace): MountedPlot {
     reading(cursor === null ? `${sweepWords(currentSet(), shownPosition())}${held}` : sweepWords(currentSet(), cursor))
   }
 
-  function frame(timeMs: number) {
+  function frame() {
     if (set !== currentSet()) {
       set = currentSet()
       curves = sweepCurves(set)
@@ -102,15 +104,16 @@ export function mountSweep({ element, reading }: PlotPlace): MountedPlot {
     const position = shownPosition()
     if (position !== placed) {
       placed = position
+      line.changed()
       const [low, high] = delayAxis(curves)
-      marker.place(position, (high - sweepAt(set, position).delayMs) / (high - low))
+      const down = (high - sweepAt(set, position).delayMs) / (high - low)
+      marker.place(position * size.widthPx, down * size.heightPx)
     }
-    if (timeMs - readAt < READING_MS) return
-    readAt = timeMs
-    read()
   }
 
+  const line = readingLine(read)
   const stopFrames = onFrame(frame)
+  const stopView = useView.subscribe(line.changed)
 
   return {
     summary: () => summary(curves, set.sweep.rateHz),
@@ -127,6 +130,8 @@ export function mountSweep({ element, reading }: PlotPlace): MountedPlot {
     picture: plot.picture,
     destroy() {
       stopFrames()
+      stopView()
+      line.stop()
       marker.destroy()
       plot.destroy()
     },

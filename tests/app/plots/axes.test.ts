@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { axisColumns, columnPoints, frequencyAt, partOf } from '../../../app/plots/columns.ts'
 import { evenSplits, frequencyLabel, frequencySplits } from '../../../app/plots/host/axes.ts'
-import { sliderKey } from '../../../app/plots/host/plotCursor.ts'
+import { sliderKey } from '../../../app/plots/host/slider.ts'
 import { levelRange } from '../../../app/plots/levels.ts'
 
 describe('the frequency axis', () => {
