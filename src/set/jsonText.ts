@@ -5,6 +5,7 @@ import { bad, good, type Problem, type Result } from './result.ts'
 
 export const MAX_TEXT_BYTES = 256 * 1024
 const MAX_DEPTH = 16
+const IS_IT_A_SET = 'is it a set file?'
 
 /** The value of a JSON text, or why it is none. A byte-order mark at its start is passed over. */
 export function readJson(text: string): Result<unknown> {
@@ -13,7 +14,7 @@ export function readJson(text: string): Result<unknown> {
   if (bytes > MAX_TEXT_BYTES) return bad(tooLarge(bytes))
   if (nesting(source) > MAX_DEPTH) {
     const message = `the text nests more than ${MAX_DEPTH} levels deep, which no set does`
-    return bad({ path: '', message, range: `at most ${MAX_DEPTH} levels` })
+    return bad({ path: '', message, range: `at most ${MAX_DEPTH} levels`, hint: IS_IT_A_SET })
   }
   let value: unknown
   try {
@@ -28,7 +29,7 @@ export function readJson(text: string): Result<unknown> {
 /** The refusal of a text of so many bytes. */
 export function tooLarge(bytes: number): Problem {
   const message = `the text has ${bytes} bytes, where a set has at most ${MAX_TEXT_BYTES}`
-  return { path: '', message, value: bytes, range: `at most ${MAX_TEXT_BYTES} bytes`, hint: 'is it a set file?' }
+  return { path: '', message, value: bytes, range: `at most ${MAX_TEXT_BYTES} bytes`, hint: IS_IT_A_SET }
 }
 
 function notJson(source: string): Problem {

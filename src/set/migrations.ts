@@ -36,14 +36,15 @@ export function migrate(json: Json, migrations: readonly Migration[] = MIGRATION
   return good(steps.reduce((older, { to, up }) => ({ ...up(older), version: to }), json))
 }
 
-const known = (newest: number) => (newest === FIRST_VERSION ? `${FIRST_VERSION}` : `${FIRST_VERSION} to ${newest}`)
+const versions = (newest: number, before = '') => (newest === FIRST_VERSION ? `${FIRST_VERSION}` : `${before}${FIRST_VERSION} to ${newest}`)
 
 function badVersion(value: unknown, newest: number): Problem {
-  const message = `version must be a whole number, ${known(newest)}, got ${valueText(value)}`
-  return { path: 'version', message, value, range: known(newest), hint: `write "version": ${newest}` }
+  const range = versions(newest, 'a whole number from ')
+  return { path: 'version', message: `version must be ${range}, got ${valueText(value)}`, value, range, hint: `write "version": ${newest}` }
 }
 
 function newerVersion(value: number, newest: number): Problem {
-  const message = `version ${value} is newer than this reader, which knows ${known(newest)}`
-  return { path: 'version', message, value, range: known(newest), hint: 'read it with the release that wrote it, or a later one' }
+  const range = versions(newest)
+  const message = `version ${value} is newer than this reader, which knows ${range}`
+  return { path: 'version', message, value, range, hint: 'read it with the release that wrote it, or a later one' }
 }

@@ -34,8 +34,8 @@ function toProblems(json: unknown, issue: core.$ZodIssue): Problem[] {
   const found = valueAt(json, issue.path)
   if (issue.path[0] === 'limits' && issue.path.length === 2) return limitProblems({ [String(issue.path[1])]: found })
   const range = structureText(issue.path)
-  const count = Array.isArray(found) ? String(found.length) : valueText(found)
-  return [{ path, message: `${path} must be ${range}, got ${count}`, value: found, range }]
+  const got = range.startsWith('a list') && Array.isArray(found) ? String(found.length) : valueText(found)
+  return [{ path, message: `${path} must be ${range}, got ${got}`, value: found, range }]
 }
 
 /** What a place that is no parameter must hold. */

@@ -61,7 +61,7 @@ function plain(typed: string, unit: string, context: QuantityContext): Result<nu
   if (unclear && Object.hasOwn(unclear, rest)) return refuse(typed, `has the unclear unit "${rest}"`, unclear[rest] as string)
   const kind = kindOfUnit(rest)
   if (kind) return refuse(typed, `is ${kind}, where ${wanted} is wanted`, example)
-  return refuse(typed, `has the unknown unit "${rest}"`, `known here are ${Object.keys(units).join(', ')}`)
+  return refuse(typed, `has the unknown unit "${rest}"`, `known here are ${unitNames(units).join(', ')}`)
 }
 
 function unitWorth(
@@ -76,6 +76,13 @@ function unitWorth(
   if (perSecond !== null && sampleRate !== undefined && /^(samples?|smp)$/.test(word))
     return { convert: (n) => (n * perSecond) / sampleRate }
   return undefined
+}
+
+/** Each unit once, by the spelling its table names first. */
+function unitNames(units: Readonly<Record<string, UnitWorth>>): string[] {
+  const byWorth = new Map<UnitWorth, string>()
+  for (const [word, worth] of Object.entries(units)) if (!byWorth.has(worth)) byWorth.set(worth, word)
+  return [...byWorth.values()]
 }
 
 const finite = (typed: string, value: number): Result<number> =>

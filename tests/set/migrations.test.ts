@@ -29,7 +29,7 @@ describe('migrations', () => {
 
   it.each([0, -1, 1.5, '1', null, undefined, true])('refuse %s, which is no version', (version) => {
     const result = migrate({ version }, HISTORY)
-    expect(result).toMatchObject({ ok: false, problems: [{ path: 'version', range: '1 to 3' }] })
+    expect(result).toMatchObject({ ok: false, problems: [{ path: 'version', range: 'a whole number from 1 to 3' }] })
   })
 
   it.each<[string, readonly Migration[]]>([

@@ -129,6 +129,8 @@ describe('reading a set file', () => {
       { ...head, sweep: { points: [[0, 0, 0]] } },
       'sweep.points[0] must be [phase, s] with phase from 0 to below 1 and s from -1 to 1, got [0,0,0]',
     ],
+    ['a list for a group', { ...head, sweep: [] }, 'sweep must be an object, got []'],
+    ['a list for a shaper', { ...head, loop: { shaper: [] } }, 'loop.shaper must be an object, or null, got []'],
     ['points that are none', { ...head, sweep: { points: 'x' } }, 'sweep.points must be a list of points, got "x"'],
     [
       'a shaper not from the origin',
@@ -209,13 +211,13 @@ describe('reading a set file', () => {
     ],
     ['another file', { format: 'something', version: 1 }, 'format must be "combwright-set", got "something"'],
     ['no object', [1], 'a set must be a JSON object, got [1]'],
-    ['no version', { format: 'combwright-set' }, 'version must be a whole number, 1, got nothing'],
+    ['no version', { format: 'combwright-set' }, 'version must be 1, got nothing'],
     [
       'a version from the future',
       { format: 'combwright-set', version: 9, whatever: 1 },
       'version 9 is newer than this reader, which knows 1',
     ],
-    ['a version of none', { format: 'combwright-set', version: 0 }, 'version must be a whole number, 1, got 0'],
+    ['a version of none', { format: 'combwright-set', version: 0 }, 'version must be 1, got 0'],
   ])('%s is refused with path, value and range', (_, json, message) => {
     expect(messages(json)[0]).toBe(message)
   })

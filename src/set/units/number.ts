@@ -9,7 +9,7 @@ export interface Decimal {
 export type NumberReading = { readonly decimal: Decimal; readonly rest: string } | { readonly reason: string; readonly hint: string }
 
 const GROUPED = '\\d{1,3}(?:[ \\u2009\\u202F\\u00A0]\\d{3})+'
-const NUMBER = new RegExp(`^([+\\-−]?)\\s*((?:${GROUPED}|\\d+)?)(?:([.,])(\\d*))?(?:[eE]([+\\-−]?\\d{1,3}))?`)
+const NUMBER = new RegExp(`^([+\\-−]?)\\s*((?:${GROUPED}|\\d+)?)(?:([.,])(\\d*))?(?:[eE]([+\\-−]?\\d+))?`)
 
 /** The number a text starts with and what follows it, trimmed; null when it starts with none. */
 export function readNumber(text: string): NumberReading | null {
