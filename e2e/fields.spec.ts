@@ -52,7 +52,7 @@ test('a value that needs a second change offers it in place; what sounds stays u
   await type(page, 'Base delay', '0.75')
   await expect(page.getByRole('alert').filter({ hasText: 'The delay would come to −1.75' })).toBeVisible()
   await expect(block(page, /^Two lines: 1\.00 to 6\.00 ms/)).toBeVisible()
-  await page.getByRole('button', { name: 'Also set depth to 0.7 ms' }).click()
+  await page.getByRole('button', { name: 'Also set depth to 0.70 ms' }).click()
   await expect(field(page, 'Base delay')).toHaveValue('0.75')
   await expect(field(page, 'Depth')).toHaveValue('0.70')
   await expect(undo(page)).toHaveAttribute('title', 'Undo Base delay')

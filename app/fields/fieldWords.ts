@@ -20,7 +20,7 @@ export function whyNot(path: string, problem: Problem, set: ParameterSet | null)
 /** "The delay would come to −1.75 ms; a voice reads no closer than 0.02 ms"; null when nothing reads too close. */
 function closeRead(set: ParameterSet): string | null {
   const { voices, loop, voiceLimitSamples, loopLimitSamples } = delayRange(set)
-  const ms = (samples: number) => showIn((samples * 1000) / set.sampleRate, 'ms')
+  const ms = (samples: number) => showIn(rounded((samples * 1000) / set.sampleRate), 'ms')
   if (voices.minSamples < voiceLimitSamples - CLOSE_TOLERANCE)
     return `The delay would come to ${ms(voices.minSamples)}; a voice reads no closer than ${ms(voiceLimitSamples)}`
   if (set.loop.feedback !== 0 && loop.minSamples < loopLimitSamples - CLOSE_TOLERANCE)
@@ -28,6 +28,8 @@ function closeRead(set: ParameterSet): string | null {
   return null
 }
 
+/** Two decimals of a millisecond, two digits below a tenth. */
+const rounded = (ms: number) => Number(Math.abs(ms) < 0.1 ? ms.toPrecision(2) : ms.toFixed(2))
 export const sentence = (text: string) => text.charAt(0).toUpperCase() + text.slice(1)
 /** Minus signs of a message made for terminals, as the page writes them. */
 export const withMinus = (text: string) => text.replace(/(^|[\s(])-(?=\d)/g, '$1−')

@@ -1,10 +1,10 @@
 // Second changes that would make a typed value possible, each tried before it is offered.
 import { parameter } from '../../src/set/parameters.ts'
-import { withAt } from '../../src/set/path.ts'
+import { getAt, withAt } from '../../src/set/path.ts'
 import type { Problem } from '../../src/set/result.ts'
 import type { ParameterSet } from '../../src/set/types.ts'
-import { formatQuantity } from '../../src/set/units.ts'
 import { setProblems } from '../../src/set/validity.ts'
+import { showQuantity } from '../fields/quantity.ts'
 
 export interface Offer {
   /** A button's words: "Also set depth to 0.70 ms". */
@@ -26,31 +26,56 @@ export function offersFor(set: ParameterSet, path: string, problems: readonly Pr
         : mend.value
     byPath.set(mend.path, value)
   }
-  const offers = [...byPath].map(([mendPath, value]) => offer(set, path, mendPath, value))
-  return offers.filter((one) => one !== null)
+  const offers = [...byPath].map(([mendPath, value]) => offer(set, path, mendPath, value)).filter((one) => one !== null)
+  if (offers.some((one) => one.path !== path)) return offers
+  const both = shrinkBoth(set, path)
+  return both ? [both, ...offers] : offers
 }
 
-function offer(set: ParameterSet, path: string, mendPath: string, value: number | string): Offer | null {
+interface Change {
+  readonly path: string
+  readonly value: number | string
+}
+
+function offer(set: ParameterSet, path: string, mendPath: string, value: number | string): (Offer & { readonly path: string }) | null {
   const candidates = typeof value === 'number' ? [roundNicely(value, GROWS.has(mendPath)), value] : [value]
   for (const candidate of candidates) {
     const mended = withAt(set, mendPath, candidate)
-    if (setProblems(mended).length === 0) return { label: label(path, mendPath, candidate), set: mended }
+    if (setProblems(mended).length > 0) continue
+    const change = { path: mendPath, value: candidate }
+    return { path: mendPath, label: mendPath === path ? `Use ${valueText(change)} instead` : alsoSet(change), set: mended }
   }
   return null
 }
 
-function label(path: string, mendPath: string, value: number | string): string {
-  const row = parameter(mendPath)
-  const text = typeof value === 'number' && 'unit' in row ? quantity(value, row.unit) : optionLabel(row, value)
-  return path === mendPath ? `Use ${text} instead` : `Also set ${row.label.toLowerCase()} to ${text}`
+/** Where neither depth nor spread alone makes room: both by the same part, as large as they can stay. */
+function shrinkBoth(set: ParameterSet, path: string): Offer | null {
+  const depth = set.sweep.law === 'time' ? 'sweep.depthMs' : 'sweep.depthOctaves'
+  const paths = [depth, 'voices.spreadMs']
+  if (set.voices.count === 1 || set.voices.spreadMs === 0 || paths.includes(path)) return null
+  const shrunk = (part: number) =>
+    paths.map((one): Change => ({ path: one, value: roundNicely(part * (getAt(set, one) as number), false) }))
+  const applied = (part: number) => shrunk(part).reduce((to, change) => withAt(to, change.path, change.value), set)
+  if (setProblems(applied(0)).length > 0) return null
+  let low = 0
+  let high = 1
+  for (let i = 0; i < PART_STEPS; i++) {
+    const middle = (low + high) / 2
+    if (setProblems(applied(middle)).length === 0) low = middle
+    else high = middle
+  }
+  const [first, second] = shrunk(low) as [Change, Change]
+  return { label: `${alsoSet(first)} and ${fieldName(second)} to ${valueText(second)}`, set: applied(low) }
 }
 
-function quantity(value: number, unit: string): string {
-  const parts = formatQuantity(value, unit)
-  return parts.unit === '' ? parts.number : `${parts.number} ${parts.unit}`
-}
+const PART_STEPS = 16
 
-function optionLabel(row: ReturnType<typeof parameter>, value: number | string): string {
+const fieldName = ({ path }: Change) => parameter(path).label.toLowerCase()
+const alsoSet = (change: Change) => `Also set ${fieldName(change)} to ${valueText(change)}`
+
+function valueText({ path, value }: Change): string {
+  const row = parameter(path)
+  if (typeof value === 'number' && 'unit' in row) return showQuantity(value, row).replace('\u00a0', ' ')
   return (row.kind === 'choice' && row.options.find((option) => option.value === value)?.label) || String(value)
 }
 

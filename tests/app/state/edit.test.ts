@@ -50,7 +50,7 @@ describe('a typed value', () => {
     expect(proposal.ok).toBe(false)
     expect(committedSet()).toBe(before)
     const offers = proposal.ok ? [] : proposal.offers
-    expect(offers.map((offer) => offer.label)).toContain('Also set depth to 0.7 ms')
+    expect(offers.map((offer) => offer.label)).toContain('Also set depth to 0.70 ms')
     for (const offer of offers) expect(setProblems(offer.set)).toEqual([])
   })
 
@@ -63,6 +63,20 @@ describe('a typed value', () => {
     expect(committedSet().sweep.depthMs).toBe(0.7)
     expect(useDocument.getState().step.name).toBe('Base delay')
     expect(steps()).toBe(1)
+  })
+
+  it('that needs two more changes offers both together: three voices spread over 4 ms', () => {
+    restoreDocument({ slots: { A: defaultSet() }, slot: 'A' })
+    const proposal = propose('line.baseMs', 0.75)
+    const [offer] = proposal.ok ? [] : proposal.offers
+    if (!offer) throw new Error('no offer')
+    expect(offer.label).toMatch(/^Also set depth to 0\.\d+ ms and delay spread to 0\.\d+ ms$/)
+    expect(setProblems(offer.set)).toEqual([])
+    expect(offer.set.line.baseMs).toBe(0.75)
+    // Oracle: depth and half the spread share what base leaves above one sample, in the proportion they had.
+    const { sweep, voices } = offer.set
+    expect(sweep.depthMs + voices.spreadMs / 2).toBeGreaterThan(0.75 - 1000 / 48000 - 0.1)
+    expect(voices.spreadMs / sweep.depthMs).toBeCloseTo(4 / 2.5, 0)
   })
 
   it('offers another value of the same field as well', () => {
