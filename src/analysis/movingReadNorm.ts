@@ -33,6 +33,8 @@ const OVERLAP = 2048
 const CYCLES = [0, 1, 3, 8, 21, 55, 144, 377]
 const LONGEST_WINDOW = 65536
 const MOST_WINDOWS = 48
+/** Samples a unit will never run for (700 years), and up to which sample numbers stay exact. */
+const LAST = 2 ** 50
 
 interface Stretch {
   readonly channel: number
@@ -136,7 +138,7 @@ function steepWindows(set: ParameterSet, sampleRate: number, channel: number, re
   return phases.flatMap((phase) =>
     cycles.slice(0, each).map((cycle): Stretch => {
       const centre = (phase - Math.floor(phase) + cycle) * period
-      return { channel, first: Math.max(0, Math.floor(centre - rows / 2)), rows }
+      return { channel, first: Math.min(LAST, Math.max(0, Math.floor(centre - rows / 2))), rows }
     }),
   )
 }
