@@ -40,9 +40,10 @@ export function drawResponse(surface: Surface, trace: Trace): void {
 }
 
 /** What stands in the corners: changes seldom, drawn with the axes. */
-export function responseCorner({ differs, smallSignal, unstable }: Trace): string {
+export function responseCorner({ differs, smallSignal, drifts, unstable }: Trace): string {
   const parts = ['shaded: everywhere the sweep reaches']
   if (differs) parts.unshift('dashed: second channel')
+  if (drifts) parts.unshift('drift stands as a sine')
   if (unstable) parts.unshift('the loop builds up here')
   if (smallSignal) parts.unshift('for small signals')
   return parts.join(' · ')

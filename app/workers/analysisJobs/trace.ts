@@ -47,6 +47,8 @@ export interface Trace {
   readonly bands: readonly DenseBand[]
   /** Shapers count by their slope at 0. */
   readonly smallSignal: boolean
+  /** The sweep drifts: its position is that of a sine in its place. */
+  readonly drifts: boolean
   /** Held here the loop builds up: no steady sound has these levels. */
   readonly unstable: boolean
 }
@@ -82,6 +84,7 @@ export function traceJob({ set, position, columns }: TraceRequest): Trace {
       high: outline(high.subarray(dense), Math.max),
     })),
     smallSignal: frozen.smallSignal,
+    drifts: set.sweep.shape === 'drift',
     unstable: buildsUp(frozen),
   }
 }

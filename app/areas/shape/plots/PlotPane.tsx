@@ -19,9 +19,17 @@ function showPlot(index: 0 | 1, id: PlotId): void {
   })
 }
 
-export function PlotPane({ index }: { readonly index: 0 | 1 }) {
+interface PlotPaneProps {
+  readonly index: 0 | 1
+  /** There is no other pane. */
+  readonly alone: boolean
+}
+
+export function PlotPane({ index, alone }: PlotPaneProps) {
   const id = useView((state) => state.plots[index])
   const { label } = plotEntry(id)
+  // A held sweep can be released from wherever it shows.
+  const releases = useView(({ held, plots }) => held !== null && index === 0 && (alone || plots[1] !== 'sweep'))
   const [mounted, setMounted] = useState<MountedPlot | null>(null)
   const [reading, setReading] = useState<HTMLElement | null>(null)
   const [asTable, setAsTable] = useState(false)
@@ -36,7 +44,7 @@ export function PlotPane({ index }: { readonly index: 0 | 1 }) {
           ))}
         </Tabs.List>
         <p className="cw-plot-reading" ref={setReading} />
-        {id === 'sweep' ? <HoldButton /> : null}
+        {id === 'sweep' || releases ? <HoldButton /> : null}
         <PlotMenu id={id} label={label} mounted={mounted} asTable={asTable} onTable={setAsTable} />
       </div>
       <Tabs.Panel className="cw-plot-panel" value={id} tabIndex={-1} keepMounted={false}>
