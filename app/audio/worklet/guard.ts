@@ -63,9 +63,8 @@ export function createGuard(sampleRate: number, maxFrames: number): Guard {
  * ran away again while nobody hears it. Never throws, allocates nothing.
  */
 export function applyGuard(guard: Guard, left: Float64Array, right: Float64Array, frames: number): boolean {
-  const { gains } = guard
-  gains.fill(1, 0, frames)
   if (guard.state === GUARD_OPEN) return watch(guard, left, right, frames)
+  guard.gains.fill(1, 0, frames)
   const beyond = firstBeyond(guard, left, right, 0, frames, GUARD_LIMIT) < frames
   silenceNonFinite(left, right, 0, frames)
   if (guard.state === GUARD_CLOSING) return close(guard, left, right, 0, frames)
@@ -95,6 +94,9 @@ function watch(guard: Guard, left: Float64Array, right: Float64Array, frames: nu
   const again = guard.againFrames
   if (guard.sinceOpened < again) guard.sinceOpened += frames
   const at = firstBeyond(guard, left, right, 0, frames, GUARD_LIMIT)
+  const stands = guard.gain.left === 0 && guard.gain.value === 1
+  if (at === frames && stands) return false
+  guard.gains.fill(1, 0, frames)
   if (at === frames) {
     multiplyByRamp(guard.gain, guard.gains, frames)
     scale(guard, left, right, 0, frames)

@@ -66,7 +66,7 @@ export function isAtRest({ play }: Listening): boolean {
   return play.left === 0 && play.value === 0
 }
 
-/** Writes what is heard of left and right into two channels from `offset` on (one channel: the first only). */
+/** Writes what is heard of left and right into the output's channels from `offset` on; channels beyond two repeat the right one. */
 export function applyListening(
   listening: Listening,
   left: Float64Array,
@@ -75,27 +75,39 @@ export function applyListening(
   offset: number,
   frames: number,
 ): void {
-  const { gains } = listening
+  const { gains, equal, level, play, mute } = listening
+  if (equal.left + level.left + play.left + mute.left === 0) {
+    gains[0] = equal.value
+    gains[1] = level.value * play.value * mute.value
+    for (let c = 0; c < output.length; c++) giveStanding(c === 0 ? left : right, gains, output[c] as Float32Array, offset, frames)
+    return
+  }
   gains.fill(1, 0, frames)
-  multiplyByRamp(listening.equal, gains, frames)
+  multiplyByRamp(equal, gains, frames)
   cap(left, gains, frames)
   cap(right, gains, frames)
   gains.fill(1, 0, frames)
-  multiplyByRamp(listening.level, gains, frames)
-  multiplyByRamp(listening.play, gains, frames)
-  multiplyByRamp(listening.mute, gains, frames)
-  for (let c = 0; c < output.length; c++) {
-    const from = c === 0 ? left : right
-    const to = output[c] as Float32Array
-    for (let i = 0; i < frames; i++) {
-      const x = (from[i] as number) * (gains[i] as number)
-      to[offset + i] = c > 1 ? 0 : Math.min(1, Math.max(-1, x))
-    }
-  }
+  multiplyByRamp(level, gains, frames)
+  multiplyByRamp(play, gains, frames)
+  multiplyByRamp(mute, gains, frames)
+  for (let c = 0; c < output.length; c++) giveMoving(c === 0 ? left : right, gains, output[c] as Float32Array, offset, frames)
 }
 
 function cap(samples: Float64Array, gains: Float64Array, frames: number): void {
+  for (let i = 0; i < frames; i++) samples[i] = Math.min(CAP, Math.max(-CAP, (samples[i] as number) * (gains[i] as number)))
+}
+
+/** Capped samples times gains. */
+function giveMoving(samples: Float64Array, gains: Float64Array, to: Float32Array, offset: number, frames: number): void {
+  for (let i = 0; i < frames; i++) to[offset + i] = Math.min(1, Math.max(-1, (samples[i] as number) * (gains[i] as number)))
+}
+
+/** All at once while nothing ramps: gains[0] is equal loudness, gains[1] the rest. */
+function giveStanding(samples: Float64Array, gains: Float64Array, to: Float32Array, offset: number, frames: number): void {
+  const equal = gains[0] as number
+  const rest = gains[1] as number
   for (let i = 0; i < frames; i++) {
-    samples[i] = Math.min(CAP, Math.max(-CAP, (samples[i] as number) * (gains[i] as number)))
+    const x = Math.min(CAP, Math.max(-CAP, (samples[i] as number) * equal))
+    to[offset + i] = Math.min(1, Math.max(-1, x * rest))
   }
 }

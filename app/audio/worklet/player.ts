@@ -117,9 +117,13 @@ export function renderPlayer(
   offset: number,
   frames: number,
 ): void {
+  const { now, old, gains, gates } = player
+  if (playsPlainly(player, frames)) {
+    copySample(now, left, right, frames)
+    return
+  }
   left.fill(0, 0, frames)
   right.fill(0, 0, frames)
-  const { now, old, gains, gates } = player
   gates.fill(1, 0, frames)
   // The gate moves on whether the input is heard or not.
   multiplyByRamp(player.inputGate, gates, frames)
@@ -162,6 +166,12 @@ const seconds = (player: Player, s: number) => Math.max(1, Math.round(s * player
 
 function joinIsDue(player: Player): boolean {
   return player.now.kind === SAMPLE && player.now.frame >= player.end - player.join
+}
+
+/** One head, no event within `frames`, and no gate that must move on. */
+function playsPlainly(player: Player, frames: number): boolean {
+  if (player.now.kind !== SAMPLE || player.fadeLeft > 0 || player.inputGate.left > 0) return false
+  return player.now.frame + frames <= player.end - player.join
 }
 
 /** The playing head becomes the old one; whatever was still fading before it is dropped. */
@@ -215,6 +225,23 @@ function addSample(gains: Float64Array, head: Head, left: Float64Array, right: F
     }
   }
   head.frame += count
+}
+
+/** The same where one head plays alone and no event is near: the usual piece. */
+function copySample(head: Head, left: Float64Array, right: Float64Array, frames: number): void {
+  const { memory } = head
+  if (memory === null || head.frame < 0 || head.frame + frames > memory.frames) {
+    left.fill(0, 0, frames)
+    right.fill(0, 0, frames)
+  } else {
+    const first = memory.channels[0] as Float32Array
+    const second = (memory.channels[1] ?? first) as Float32Array
+    for (let i = 0; i < frames; i++) {
+      left[i] = first[head.frame + i] as number
+      right[i] = second[head.frame + i] as number
+    }
+  }
+  head.frame += frames
 }
 
 function addTone(player: Player, left: Float64Array, right: Float64Array, at: number, count: number): void {

@@ -16,7 +16,7 @@ const SETTINGS: Settings = {
   toneHz: 440,
   equalDb: 0,
   equalLive: false,
-  inputOpen: true,
+  inputOpen: false,
 }
 
 export interface Rendered {
@@ -25,20 +25,15 @@ export interface Rendered {
   readonly rms: number
 }
 
-/** The same two channels of noise for both, −20 dBFS. */
-function noiseSource(context: OfflineAudioContext): AudioBufferSourceNode {
-  const buffer = context.createBuffer(2, context.length, FS)
+/** The same two channels of noise for both, −20 dBFS, repeating every 4 s. */
+function noise(): [Float32Array<ArrayBuffer>, Float32Array<ArrayBuffer>] {
   let seed = 1
-  for (let c = 0; c < 2; c++) {
-    const samples = buffer.getChannelData(c)
-    for (let n = 0; n < samples.length; n++) {
+  const channel = () =>
+    Float32Array.from({ length: 4 * FS }, () => {
       seed = (Math.imul(seed, 1664525) + 1013904223) | 0
-      samples[n] = (0.1732 * seed) / 2 ** 31
-    }
-  }
-  const source = new AudioBufferSourceNode(context, { buffer })
-  source.start()
-  return source
+      return (0.1732 * seed) / 2 ** 31
+    })
+  return [channel(), channel()]
 }
 
 async function timed(context: OfflineAudioContext): Promise<Rendered> {
@@ -57,9 +52,10 @@ async function byWorklet(set: ParameterSet, length: number): Promise<Rendered> {
   const ready = new Promise((resolve) => {
     node.port.onmessage = resolve
   })
-  noiseSource(context).connect(node).connect(context.destination)
+  node.connect(context.destination)
   await ready
-  node.port.postMessage({ type: 'source', source: { type: 'input' } } satisfies ToProcessor)
+  const source = { type: 'sample', id: 1, channels: noise(), circular: true, start: 0, end: 4 * FS } as const
+  node.port.postMessage({ type: 'source', source } satisfies ToProcessor)
   // Nothing answers; the message is through long before this.
   await new Promise((resolve) => setTimeout(resolve, 200))
   return timed(context)
@@ -72,7 +68,12 @@ async function byWorklet(set: ParameterSet, length: number): Promise<Rendered> {
  */
 function byNative(set: ParameterSet, length: number): Promise<Rendered> {
   const context = new OfflineAudioContext(2, length, FS)
-  const source = noiseSource(context)
+  const buffer = context.createBuffer(2, 4 * FS, FS)
+  noise().forEach((samples, c) => {
+    buffer.copyToChannel(samples, c)
+  })
+  const source = new AudioBufferSourceNode(context, { buffer, loop: true })
+  source.start()
   const splitter = new ChannelSplitterNode(context, { numberOfOutputs: 2 })
   const merger = new ChannelMergerNode(context, { numberOfInputs: 2 })
   source.connect(splitter)
