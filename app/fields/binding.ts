@@ -9,7 +9,7 @@ import { currentSet, useCurrent } from '../state/current.ts'
 import { committedSet } from '../state/document.ts'
 import { dropGesture, endGesture } from '../state/draft.ts'
 import { commitField, commitOffer, type Proposal, propose, tryField } from '../state/edit.ts'
-import { whyNot } from './fieldWords.ts'
+import { offerLabel, whyNot } from './fieldWords.ts'
 
 /** A button beside a refused value, and what it does. */
 export interface Way {
@@ -52,7 +52,7 @@ function fieldActs(path: string): Omit<Binding<unknown>, 'value'> {
 /** Why a proposal was refused, with its offers as ways; null when it was not. */
 export function refusal(path: string, proposal: Proposal, set: ParameterSet | null): Refusal {
   if (proposal.ok) return null
-  const ways = proposal.offers.map((offer) => ({ label: offer.label, take: () => commitOffer(path, offer) }))
+  const ways = proposal.offers.map((offer) => ({ label: offerLabel(offer), take: () => commitOffer(path, offer) }))
   return { why: whyNot(path, proposal.problems[0] as Problem, set), ways }
 }
 

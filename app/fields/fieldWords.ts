@@ -4,7 +4,8 @@ import { isParameterPath, parameter } from '../../src/set/parameters.ts'
 import type { Problem } from '../../src/set/result.ts'
 import type { ParameterSet } from '../../src/set/types.ts'
 import { rangeText } from '../../src/set/valueProblem.ts'
-import { showIn } from './quantity.ts'
+import type { Change, Offer } from '../state/offers.ts'
+import { showIn, showQuantity } from './quantity.ts'
 
 /** One sentence for a typed value that was not applied; `set` is what it would have become, when it got that far. */
 export function whyNot(path: string, problem: Problem, set: ParameterSet | null): string {
@@ -15,6 +16,18 @@ export function whyNot(path: string, problem: Problem, set: ParameterSet | null)
     return `${row.label} takes ${withMinus(rangeText(row))}`
   }
   return withMinus(sentence(problem.message))
+}
+
+/** A button's words: "Also set depth to 0.70 ms", "Use 4.55 ms instead". */
+export function offerLabel({ instead, changes }: Offer): string {
+  if (instead) return `Use ${changes.map(changeText).join(', ')} instead`
+  return `Also set ${changes.map((change) => `${parameter(change.path).label.toLowerCase()} to ${changeText(change)}`).join(' and ')}`
+}
+
+function changeText({ path, value }: Change): string {
+  const row = parameter(path)
+  if (typeof value === 'number' && 'unit' in row) return showQuantity(value, row).replace('\u00a0', ' ')
+  return (row.kind === 'choice' && row.options.find((option) => option.value === value)?.label) || String(value)
 }
 
 /** "The delay would come to −1.75 ms; a voice reads no closer than 0.02 ms"; null when nothing reads too close. */

@@ -1,14 +1,18 @@
 // Second changes that would make a typed value possible, each tried before it is offered.
-import { parameter } from '../../src/set/parameters.ts'
 import { getAt, withAt } from '../../src/set/path.ts'
 import type { Problem } from '../../src/set/result.ts'
 import type { ParameterSet } from '../../src/set/types.ts'
 import { setProblems } from '../../src/set/validity.ts'
-import { showQuantity } from '../fields/quantity.ts'
+
+export interface Change {
+  readonly path: string
+  readonly value: number | string
+}
 
 export interface Offer {
-  /** A button's words: "Also set depth to 0.70 ms". */
-  readonly label: string
+  /** Another value for the field itself, or changes beside it. */
+  readonly instead: boolean
+  readonly changes: readonly Change[]
   readonly set: ParameterSet
 }
 
@@ -26,24 +30,19 @@ export function offersFor(set: ParameterSet, path: string, problems: readonly Pr
         : mend.value
     byPath.set(mend.path, value)
   }
-  const offers = [...byPath].map(([mendPath, value]) => offer(set, path, mendPath, value)).filter((one) => one !== null)
-  if (offers.some((one) => one.path !== path)) return offers
+  const offers = [...byPath].map(([mendPath, value]) => offer(set, path, { path: mendPath, value })).filter((one) => one !== null)
+  if (offers.some((one) => !one.instead)) return offers
   const both = shrinkBoth(set, path)
   return both ? [both, ...offers] : offers
 }
 
-interface Change {
-  readonly path: string
-  readonly value: number | string
-}
-
-function offer(set: ParameterSet, path: string, mendPath: string, value: number | string): (Offer & { readonly path: string }) | null {
-  const candidates = typeof value === 'number' ? [roundNicely(value, GROWS.has(mendPath)), value] : [value]
+function offer(set: ParameterSet, path: string, mend: Change): Offer | null {
+  const { value } = mend
+  const candidates = typeof value === 'number' ? [roundNicely(value, GROWS.has(mend.path)), value] : [value]
   for (const candidate of candidates) {
-    const mended = withAt(set, mendPath, candidate)
-    if (setProblems(mended).length > 0) continue
-    const change = { path: mendPath, value: candidate }
-    return { path: mendPath, label: mendPath === path ? `Use ${valueText(change)} instead` : alsoSet(change), set: mended }
+    const mended = withAt(set, mend.path, candidate)
+    if (setProblems(mended).length === 0)
+      return { instead: mend.path === path, changes: [{ path: mend.path, value: candidate }], set: mended }
   }
   return null
 }
@@ -64,20 +63,10 @@ function shrinkBoth(set: ParameterSet, path: string): Offer | null {
     if (setProblems(applied(middle)).length === 0) low = middle
     else high = middle
   }
-  const [first, second] = shrunk(low) as [Change, Change]
-  return { label: `${alsoSet(first)} and ${fieldName(second)} to ${valueText(second)}`, set: applied(low) }
+  return { instead: false, changes: shrunk(low), set: applied(low) }
 }
 
 const PART_STEPS = 16
-
-const fieldName = ({ path }: Change) => parameter(path).label.toLowerCase()
-const alsoSet = (change: Change) => `Also set ${fieldName(change)} to ${valueText(change)}`
-
-function valueText({ path, value }: Change): string {
-  const row = parameter(path)
-  if (typeof value === 'number' && 'unit' in row) return showQuantity(value, row).replace('\u00a0', ' ')
-  return (row.kind === 'choice' && row.options.find((option) => option.value === value)?.label) || String(value)
-}
 
 /** On a grid of 0.05 from 0.2 up, 0.01 from 0.04, else 0.001, towards the safe side. */
 export function roundNicely(value: number, up: boolean): number {

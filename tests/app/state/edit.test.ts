@@ -1,4 +1,5 @@
 import { beforeEach, describe, expect, it } from 'vitest'
+import { offerLabel } from '../../../app/fields/fieldWords.ts'
 import { currentSet } from '../../../app/state/current.ts'
 import { committedSet, restoreDocument, undo, useDocument } from '../../../app/state/document.ts'
 import { dropGesture, endGesture, useDraft } from '../../../app/state/draft.ts'
@@ -50,13 +51,13 @@ describe('a typed value', () => {
     expect(proposal.ok).toBe(false)
     expect(committedSet()).toBe(before)
     const offers = proposal.ok ? [] : proposal.offers
-    expect(offers.map((offer) => offer.label)).toContain('Also set depth to 0.70 ms')
+    expect(offers.map((offer) => offerLabel(offer))).toContain('Also set depth to 0.70 ms')
     for (const offer of offers) expect(setProblems(offer.set)).toEqual([])
   })
 
   it('and its offer, taken, is one step named for the field', () => {
     const proposal = propose('line.baseMs', 0.75)
-    const offer = proposal.ok ? undefined : proposal.offers.find((one) => one.label.includes('depth'))
+    const offer = proposal.ok ? undefined : proposal.offers.find((one) => offerLabel(one).includes('depth'))
     if (!offer) throw new Error('no offer')
     commitOffer('line.baseMs', offer)
     expect(committedSet().line.baseMs).toBe(0.75)
@@ -70,7 +71,7 @@ describe('a typed value', () => {
     const proposal = propose('line.baseMs', 0.75)
     const [offer] = proposal.ok ? [] : proposal.offers
     if (!offer) throw new Error('no offer')
-    expect(offer.label).toMatch(/^Also set depth to 0\.\d+ ms and delay spread to 0\.\d+ ms$/)
+    expect(offerLabel(offer)).toMatch(/^Also set depth to 0\.\d+ ms and delay spread to 0\.\d+ ms$/)
     expect(setProblems(offer.set)).toEqual([])
     expect(offer.set.line.baseMs).toBe(0.75)
     // Oracle: depth and half the spread share what base leaves above one sample, in the proportion they had.
@@ -81,7 +82,7 @@ describe('a typed value', () => {
 
   it('offers another value of the same field as well', () => {
     const proposal = propose('sweep.depthMs', 9)
-    const labels = proposal.ok ? [] : proposal.offers.map((offer) => offer.label)
+    const labels = proposal.ok ? [] : proposal.offers.map((offer) => offerLabel(offer))
     expect(labels.some((label) => /^Use .* ms instead$/.test(label))).toBe(true)
     expect(labels.some((label) => label.startsWith('Also set base delay to'))).toBe(true)
   })
