@@ -4,7 +4,8 @@ import { useId } from 'react'
 import type { QuantityContext } from '../../src/set/units.ts'
 import type { Binding } from './binding.ts'
 import { FieldNotes } from './FieldNotes.tsx'
-import { type NumberSpec, speakQuantity } from './quantity.ts'
+import { NumberInput } from './NumberInput.tsx'
+import type { NumberSpec } from './quantity.ts'
 import { Track } from './Track.tsx'
 import { positionOf, trackHigh, trackLow, valueAt } from './taper.ts'
 import { useNumberText } from './useNumberText.ts'
@@ -45,29 +46,7 @@ export function NumberField({ spec, binding, context = noContext, usual = null, 
         </label>
         {switchable && <OffSwitch label={spec.label} on={value !== null} onClick={() => binding.apply(value === null ? startAt : null)} />}
         <span className="cw-field-value">
-          <input
-            id={id}
-            ref={text.ref}
-            className="cw-field-input"
-            type="text"
-            inputMode="text"
-            autoComplete="off"
-            spellCheck={false}
-            role="spinbutton"
-            aria-valuenow={value ?? undefined}
-            aria-valuemin={spec.min}
-            aria-valuemax={spec.max}
-            aria-valuetext={speakQuantity(value, spec)}
-            aria-invalid={text.refusal ? true : undefined}
-            aria-describedby={`${id}-help ${id}-notes`}
-            data-edited={text.edited}
-            value={text.text}
-            onChange={text.onChange}
-            onFocus={text.onFocus}
-            onBlur={text.onBlur}
-            onKeyDown={text.onKeyDown}
-            onKeyUp={text.onKeyUp}
-          />
+          <NumberInput id={id} text={text} spec={spec} value={value} describedBy={`${id}-help ${id}-notes`} />
           <span id={`${id}-help`} hidden>
             {spec.help}
           </span>

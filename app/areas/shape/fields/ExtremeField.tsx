@@ -8,7 +8,8 @@ import type { ParameterSet } from '../../../../src/set/types.ts'
 import { type Binding, type Refusal, refusal } from '../../../fields/binding.ts'
 import { FieldNotes } from '../../../fields/FieldNotes.tsx'
 import { sentence, withMinus } from '../../../fields/fieldWords.ts'
-import { type NumberSpec, speakQuantity } from '../../../fields/quantity.ts'
+import { NumberInput } from '../../../fields/NumberInput.tsx'
+import type { NumberSpec } from '../../../fields/quantity.ts'
 import { type NumberText, useNumberText } from '../../../fields/useNumberText.ts'
 import { useCurrent } from '../../../state/current.ts'
 import { commit, committedSet } from '../../../state/document.ts'
@@ -29,18 +30,19 @@ export function ExtremeField({ kind }: { readonly kind: ExtremeKind }) {
   const highHz = range?.highHz ?? null
   const low = useEnd(kind, 'low', lowHz, stands ? null : highHz)
   const high = useEnd(kind, 'high', highHz, lowHz)
+  const common = { spec: SPEC, none: 'none', title: SPEC.help, describedBy: `${id}-notes` }
   return (
     <fieldset className="cw-field cw-field--pair">
       <div className="cw-field-row">
         <legend className="cw-field-label">{LABELS[kind]}</legend>
         <span className="cw-field-value">
-          <End text={low} label={`${LABELS[kind]}${stands ? '' : ' where the delay is largest'}`} value={lowHz} notes={`${id}-notes`} />
+          <NumberInput text={low} value={lowHz} label={`${LABELS[kind]}${stands ? '' : ' where the delay is largest'}`} {...common} />
           {!stands && (
             <>
               <span className="cw-pair-arrow" aria-hidden="true">
                 →
               </span>
-              <End text={high} label={`${LABELS[kind]} where the delay is smallest`} value={highHz} notes={`${id}-notes`} />
+              <NumberInput text={high} value={highHz} label={`${LABELS[kind]} where the delay is smallest`} {...common} />
             </>
           )}
           <span className="cw-field-unit">Hz</span>
@@ -49,13 +51,6 @@ export function ExtremeField({ kind }: { readonly kind: ExtremeKind }) {
       <FieldNotes id={`${id}-notes`} notes={[]} lines={0} refusal={low.refusal ?? high.refusal} held={low.held ?? high.held} />
     </fieldset>
   )
-}
-
-interface EndProps {
-  readonly text: NumberText
-  readonly label: string
-  readonly value: number | null
-  readonly notes: string
 }
 
 const SPEC: NumberSpec = {
@@ -68,34 +63,6 @@ const SPEC: NumberSpec = {
   taper: 'log',
   trackMin: 1,
   trackMax: 20_000,
-}
-
-function End({ text, label, value, notes }: EndProps) {
-  return (
-    <input
-      ref={text.ref}
-      className="cw-field-input"
-      type="text"
-      autoComplete="off"
-      spellCheck={false}
-      role="spinbutton"
-      title={SPEC.help}
-      aria-label={label}
-      aria-valuenow={value ?? undefined}
-      aria-valuemin={SPEC.min}
-      aria-valuemax={SPEC.max}
-      aria-valuetext={value === null ? 'none' : speakQuantity(value, SPEC)}
-      aria-invalid={text.refusal ? true : undefined}
-      aria-describedby={notes}
-      data-edited={text.edited}
-      value={text.text}
-      onChange={text.onChange}
-      onFocus={text.onFocus}
-      onBlur={text.onBlur}
-      onKeyDown={text.onKeyDown}
-      onKeyUp={text.onKeyUp}
-    />
-  )
 }
 
 /** One of the two frequencies. `other` stays where it is; null when the sweep stands and both are one. */
