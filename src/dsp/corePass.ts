@@ -1,5 +1,5 @@
 // One chunk through one core: u, the lines, the voices, the mix.
-import { type Channel, type Core, settleCore } from './core.ts'
+import { type Core, settleCore } from './core.ts'
 import { planRuns } from './delays.ts'
 import { highPass, highPassMoving, lowPass, lowPassMoving } from './filterPasses.ts'
 import { CHUNK, rewindLine, writeLine } from './line.ts'
@@ -7,22 +7,19 @@ import { isLinearLoop, linearLoop } from './linearLoop.ts'
 import { writeByPieces } from './loop.ts'
 import {
   advanceRamps,
-  DRY,
   FEEDBACK,
   INPUT_GAIN,
   INPUT_OPEN,
-  OUTPUT_GAIN,
-  type Ramps,
   rampsMove,
   SHAPER_VALUES,
   SHAPERS,
-  WET,
+  scale,
   WET_HIGH_CUT,
   WET_LOW_CUT,
 } from './ramps.ts'
 import { addRead } from './reads.ts'
 import { LOOPS, MAX_VOICES } from './runs.ts'
-import { INPUT, LOOP, OUTPUT, type Settings } from './settings.ts'
+import { INPUT, LOOP } from './settings.ts'
 import { shape, shapeMoving } from './shaperPass.ts'
 import { switchLoops } from './trajectory.ts'
 
@@ -32,15 +29,16 @@ export function chunkRoom({ lines, position, ramps }: Core): number {
   return rampsMove(ramps) ? Math.min(room, ramps.length - ramps.elapsed) : room
 }
 
-/**
- * Runs n samples, at most chunkRoom, from absolute sample `first` on: from `source` to the lines and to the wet of each channel. The mix
- * follows, then endChunk.
- */
-export function runCore(core: Core, first: number, n: number): void {
-  const { settings, ramps, trajectory } = core
-  const moving = rampsMove(ramps)
-  takeLoopOnOrOff(core, moving)
-  planRuns(trajectory, settings, first, n)
+/** Begins a chunk of n samples, at most chunkRoom, at absolute sample `first`. */
+export function beginChunk(core: Core, first: number, n: number): void {
+  takeLoopOnOrOff(core)
+  planRuns(core.trajectory, core.settings, first, n)
+}
+
+/** Runs the n samples of the chunk from `source` to the lines and to the wet of each channel. The mix follows, then endChunk. */
+export function runCore(core: Core, n: number): void {
+  const { settings, trajectory } = core
+  const moving = rampsMove(core.ramps)
   if (isLinearLoop(core, moving)) {
     for (let c = 0; c < settings.lines; c++) linearLoop(core, c)
   } else {
@@ -73,8 +71,8 @@ function rewind(core: Core): void {
 }
 
 /** A loop without feedback is not run; when it starts again its filters start from rest. */
-function takeLoopOnOrOff({ settings, ramps, trajectory, states }: Core, moving: boolean): void {
-  const on = ramps.target[FEEDBACK] !== 0 || (moving && ramps.start[FEEDBACK] !== 0)
+function takeLoopOnOrOff({ settings, ramps, trajectory, states }: Core): void {
+  const on = ramps.target[FEEDBACK] !== 0 || (rampsMove(ramps) && ramps.start[FEEDBACK] !== 0)
   if (trajectory.loops && !on) {
     states.damping.fill(0)
     states.lowCut.fill(0)
@@ -95,16 +93,6 @@ function takeInput(core: Core, c: number, n: number, moving: boolean): void {
   if (moving) shapeMoving(shaper, u, 0, n, ramps, ramps.elapsed, SHAPERS + INPUT * SHAPER_VALUES, states.shapers, 2 * INPUT + c)
   else shape(shaper, u, 0, n, states.shapers, 2 * INPUT + c)
   scale(u, n, ramps, INPUT_OPEN, moving)
-}
-
-/** x · the value at slot `i`, in place. */
-function scale(x: Float64Array, n: number, { target, start, slope, elapsed }: Ramps, i: number, moving: boolean): void {
-  if (moving) {
-    for (let j = 0; j < n; j++) x[j] = x[j]! * (start[i]! + slope[i]! * (elapsed + j))
-  } else if (target[i] !== 1) {
-    const gain = target[i]!
-    for (let j = 0; j < n; j++) x[j] = x[j]! * gain
-  }
 }
 
 /** Σ read of channel c. */
@@ -130,79 +118,4 @@ function toneWet({ ramps, states, wet }: Core, c: number, n: number, moving: boo
   }
   if (ramps.target[WET_HIGH_CUT + 1]) lowPass(m, 0, n, ramps.target[WET_HIGH_CUT]!, states.wetHighCut, c)
   if (ramps.target[WET_LOW_CUT + 1]) highPass(m, 0, n, ramps.target[WET_LOW_CUT]!, states.wetLowCut, 2 * c)
-}
-
-/** y of channel c, outputGain · outputShaper(dry · d ± wet · m), into `output`. */
-export function mix(core: Core, c: number, n: number): void {
-  const { settings, ramps, states } = core
-  const { start, slope, elapsed } = ramps
-  const y = core.output[c]!
-  const shaper = settings.shapers[OUTPUT]!
-  const moving = rampsMove(ramps)
-  if (moving) {
-    const d = dryOf(core, c)
-    const at = dryAt(core)
-    const m = core.wet[c]!
-    for (let j = 0; j < n; j++) {
-      const dry = start[DRY]! + slope[DRY]! * (elapsed + j)
-      const wet = start[WET + c]! + slope[WET + c]! * (elapsed + j)
-      y[j] = dry * d[at + j]! + wet * (settings.voiceScale * m[j]!)
-    }
-    shapeMoving(shaper, y, 0, n, ramps, elapsed, SHAPERS + OUTPUT * SHAPER_VALUES, states.shapers, 2 * OUTPUT + c)
-  } else {
-    mixTo(core, c, y, 0, n, false)
-    shape(shaper, y, 0, n, states.shapers, 2 * OUTPUT + c)
-  }
-  scale(y, n, ramps, OUTPUT_GAIN, moving)
-}
-
-/** Whether mixTo gives y as it is to be heard. */
-export function mixesPlainly({ settings, ramps }: Core): boolean {
-  return !rampsMove(ramps) && !settings.shapers[OUTPUT]!.on
-}
-
-/** dry · d ± wet · m of channel c, times outputGain if `gained`, while no ramp moves. Returns how many samples are not finite. */
-export function mixTo(core: Core, c: number, y: Channel, yAt: number, n: number, gained: boolean): number {
-  const { settings, ramps } = core
-  const d = dryOf(core, c)
-  const at = dryAt(core)
-  const m = core.wet[c]!
-  const gain = gained ? ramps.target[OUTPUT_GAIN]! : 1
-  const dry = gain * ramps.target[DRY]!
-  const wet = gain * ramps.target[WET + c]! * settings.voiceScale
-  let bad = 0
-  let j = 0
-  // Two samples a turn: the turn itself costs as much as a sample.
-  for (; j < n - 1; j += 2) {
-    const v = dry * d[at + j]! + wet * m[j]!
-    const next = dry * d[at + j + 1]! + wet * m[j + 1]!
-    if (!(Math.abs(v) + Math.abs(next) < Number.POSITIVE_INFINITY)) bad += notFinite(v) + notFinite(next)
-    y[yAt + j] = v
-    y[yAt + j + 1] = next
-  }
-  if (j < n) {
-    const v = dry * d[at + j]! + wet * m[j]!
-    bad += notFinite(v)
-    y[yAt + j] = v
-  }
-  return bad
-}
-
-const notFinite = (v: number): number => (Math.abs(v) < Number.POSITIVE_INFINITY ? 0 : 1)
-
-/** Where the dry signal of channel c stands, and the index there of the chunk's first sample. */
-function dryOf({ settings, lines, dryLines, input }: Core, c: number): Float64Array {
-  const line = settings.lines === 2 ? c : 0
-  if (settings.dryFromLine) return lines[line]!
-  return dryDelay(settings) === 0 ? input[line]! : dryLines[line]!
-}
-
-function dryAt({ settings, position }: Core): number {
-  const delay = dryDelay(settings)
-  return delay === 0 && !settings.dryFromLine ? 0 : position - delay
-}
-
-/** Dry delay in whole samples, rounded half up, at most `longest`. */
-function dryDelay({ dryDelayMs, fs, longest }: Settings): number {
-  return Math.min(Math.floor((dryDelayMs * fs) / 1000 + 0.5), Math.floor(longest)) | 0
 }

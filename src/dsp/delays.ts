@@ -2,7 +2,7 @@
 import { CLOSE_TOLERANCE } from '../set/delayRange.ts'
 import { LOOPS, READS } from './runs.ts'
 import type { Settings } from './settings.ts'
-import { enterInterval, evaluate, rampsBetween, type Trajectory } from './trajectory.ts'
+import { copyUsed, enterInterval, evaluate, rampsBetween, type Trajectory } from './trajectory.ts'
 
 /** Cuts the `n` samples from absolute sample `first` on into runs, glides and limits in them. */
 export function planRuns(t: Trajectory, s: Settings, first: number, n: number): void {
@@ -14,31 +14,28 @@ export function planRuns(t: Trajectory, s: Settings, first: number, n: number): 
   copyUsed(t, ramps ? from : to, 0, ends, 0)
   copyUsed(t, to, 0, ends, READS)
   let inside = t.fromInside && t.toInside
-  let into = (first - t.interval) | 0
-  let k = 0
-  for (let j = 0; ; ) {
-    starts[k] = j
-    runs.into[k] = into
-    j += every - into
-    into = 0
-    k++
-    if (j >= n) break
-    t.interval += every
-    evaluate(t, s, ramps ? t.interval + every : t.interval, ends, (ramps ? k + 1 : k) * READS)
-    if (!t.toInside) inside = false
+  const into = (first - t.interval) | 0
+  const count = ((into + n - 1) / every + 1) | 0
+  if (count > 1) {
+    // Where delays ramp, row k + 1 is where run k ends; where they stand, row k is where it stands.
+    const next = t.interval + every
+    if (!evaluate(t, s, ramps ? next + every : next, every, count - 1, ends, (ramps ? 2 : 1) * READS)) inside = false
+    if (!ramps) t.fromInside = t.toInside
+    t.interval += (count - 1) * every
+    if (ramps) copyUsed(t, ends, (count - 1) * READS, from, 0)
+    copyUsed(t, ends, (ramps ? count : count - 1) * READS, to, 0)
   }
-  if (ramps) copyUsed(t, ends, (k - 1) * READS, from, 0)
-  copyUsed(t, ends, (ramps ? k : k - 1) * READS, to, 0)
-  starts[k] = n
-  runs.count = k
+  for (let k = 1; k < count; k++) {
+    starts[k] = k * every - into
+    runs.into[k] = 0
+  }
+  starts[0] = 0
+  runs.into[0] = into
+  starts[count] = n
+  runs.count = count
   // The interval is a power of two: multiplying by its inverse is as exact as dividing.
   runs.part = ramps ? 1 / every : 0
   if (t.gliding || !inside) breakRuns(t, s, n)
-}
-
-/** Copies the reads in use from one row of reads to another. */
-function copyUsed({ used, usedCount }: Trajectory, from: Float64Array, f: number, to: Float64Array, o: number): void {
-  for (let i = 0; i < usedCount; i++) to[o + used[i]!] = from[f + used[i]!]!
 }
 
 /** Makes every sample its own run, with what the glides add, held to the limits. */

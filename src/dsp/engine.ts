@@ -4,10 +4,12 @@
 import type { Layout } from '../set/types.ts'
 import { blendStraight, pathIsSilent, STRAIGHT } from './bypass.ts'
 import { type Channel, type Core, clearCore, flushCore } from './core.ts'
-import { chunkRoom, endChunk, mix, mixesPlainly, mixTo, runCore } from './corePass.ts'
+import { beginChunk, chunkRoom, endChunk, runCore } from './corePass.ts'
 import type { Engine, EngineCounters } from './engineState.ts'
 import { CHUNK } from './line.ts'
 import { endFade, loadAtOnce } from './liveChanges.ts'
+import { mix, mixesPlainly, mixTo } from './mix.ts'
+import { isOneVoice, oneVoice } from './oneVoice.ts'
 import { advanceRamps, rampsMove, settleRamps } from './ramps.ts'
 import { wrapPhase } from './sweep.ts'
 import { phaseAt, startPhase } from './trajectory.ts'
@@ -47,22 +49,21 @@ function room(engine: Engine): number {
 
 function run(engine: Engine, input: readonly Channel[], output: readonly Channel[], at: number, n: number): void {
   const { core, idle, bypass, straight } = engine
-  const { outputs, lines } = core.settings
+  const { lines } = core.settings
   const straightHeard = rampsMove(bypass.ramps) || bypass.ramps.target[STRAIGHT] !== 0
   // Before anything is written: input and output may be the same arrays.
   if (straightHeard) for (let c = 0; c < 2; c++) takeStraight(engine, input, lines, c, at, n)
   if (!pathIsSilent(bypass)) {
-    runOne(engine, core, input, at, n)
+    begin(engine, core, input, at, n)
     if (!straightHeard && !engine.fading && mixesPlainly(core)) {
-      for (let c = 0; c < output.length; c++) engine.counters.nonFinite += mixTo(core, Math.min(c, outputs - 1), output[c]!, at, n, true)
-      endChunk(core, n)
+      engine.counters.nonFinite += runPlainly(core, output, at, n)
       advance(engine, n)
       return
     }
-    mixAll(core, n)
+    runThrough(core, n)
     if (engine.fading && idle) {
-      runOne(engine, idle, input, at, n)
-      mixAll(idle, n)
+      begin(engine, idle, input, at, n)
+      runThrough(idle, n)
       for (let c = 0; c < 2; c++) fadeInto(core.output[c]!, idle.output[c]!, engine.fadeElapsed, engine.fadeLength, n)
     }
   }
@@ -71,15 +72,29 @@ function run(engine: Engine, input: readonly Channel[], output: readonly Channel
   advance(engine, n)
 }
 
-/** Everything up to the mix. */
-function runOne(engine: Engine, core: Core, input: readonly Channel[], at: number, n: number): void {
+function begin(engine: Engine, core: Core, input: readonly Channel[], at: number, n: number): void {
   route(engine, core.source, input, core.settings.lines, at, n)
   core.sourceAt = input.length > 0 && input.length <= core.settings.lines ? at : 0
-  runCore(core, engine.n, n)
+  beginChunk(core, engine.n, n)
 }
 
-/** y of both channels into `output`, the second like the first where there is one, and the chunk's end. */
-function mixAll(core: Core, n: number): void {
+/** A chunk straight to the output, where nothing comes after the mix. Returns how many samples are not finite. */
+function runPlainly(core: Core, output: readonly Channel[], at: number, n: number): number {
+  const { outputs } = core.settings
+  let bad = 0
+  if (isOneVoice(core, output)) {
+    for (let c = 0; c < outputs; c++) bad += oneVoice(core, c, output[c]!, at)
+  } else {
+    runCore(core, n)
+    for (let c = 0; c < output.length; c++) bad += mixTo(core, Math.min(c, outputs - 1), output[c]!, at, n, true)
+  }
+  endChunk(core, n)
+  return bad
+}
+
+/** A chunk to `output`, the second channel like the first where there is one. */
+function runThrough(core: Core, n: number): void {
+  runCore(core, n)
   for (let c = 0; c < core.settings.outputs; c++) mix(core, c, n)
   if (core.settings.outputs === 1) core.output[1].set(core.output[0])
   endChunk(core, n)

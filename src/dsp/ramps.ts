@@ -79,3 +79,13 @@ export function copyRamps(to: Ramps, from: Ramps): void {
   to.slope.set(from.slope)
   to.elapsed = from.elapsed
 }
+
+/** x · the value at slot `i`, in place. */
+export function scale(x: Float64Array, n: number, { target, start, slope, elapsed }: Ramps, i: number, moving: boolean): void {
+  if (moving) {
+    for (let j = 0; j < n; j++) x[j] = x[j]! * (start[i]! + slope[i]! * (elapsed + j))
+  } else if (target[i] !== 1) {
+    const gain = target[i]!
+    for (let j = 0; j < n; j++) x[j] = x[j]! * gain
+  }
+}

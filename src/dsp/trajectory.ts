@@ -94,43 +94,60 @@ export function startPhase(t: Trajectory, s: Settings): void {
   t.since = 0
 }
 
-/** Evaluates D of every read at sample n, before glide and limits, into a row of reads that begins at `row`; what was toInside becomes fromInside. */
-export function evaluate(t: Trajectory, s: Settings, n: number, into: Float64Array, row: number): void {
-  t.fromInside = t.toInside
-  t.toInside = true
-  if (s.plainSine) evaluateSine(t, s, n, into, row)
-  else evaluateShape(t, s, n, into, row)
+/**
+ * Evaluates D of every read, before glide and limits, at samples n, n + every … into `rows` rows of reads, the first beginning at `row`. Returns
+ * whether all of them are inside their limits; fromInside and toInside are those of the last two rows ever evaluated.
+ */
+export function evaluate(t: Trajectory, s: Settings, n: number, every: number, rows: number, into: Float64Array, row: number): boolean {
+  if (s.plainSine) {
+    evaluateSine(t, s, n, every, rows, into, row)
+    t.fromInside = rows > 1 || t.toInside
+    t.toInside = true
+    return true
+  }
+  let inside = true
+  for (let i = 0; i < rows; i++) {
+    t.fromInside = t.toInside
+    t.toInside = evaluateShape(t, s, n + i * every, into, row + i * READS)
+    if (!t.toInside) inside = false
+  }
+  return inside
 }
 
-/** Any shape. Order of operations: sweepPhase. */
-function evaluateShape(t: Trajectory, s: Settings, n: number, into: Float64Array, row: number): void {
+/** Any shape, one row. Order of operations: sweepPhase. */
+function evaluateShape(t: Trajectory, s: Settings, n: number, into: Float64Array, row: number): boolean {
   const { sweep, voices, outputs, lines, centreMs, voicePhase, channelPhase } = s
   const phase = phaseAt(t, s, n)
+  let inside = true
   for (let c = 0; c < outputs; c++) {
     for (let v = 0; v < voices.count; v++) {
       const at = phase + voicePhase[v]! + channelPhase[c]!
       const shape = t.held ? frozenShapeValue(sweep, at) : sweepShapeValue(sweep, at, v)
       const delay = toSamples(t, s, centreMs[v]!, shape)
       into[row + c * MAX_VOICES + v] = delay
-      if (!(delay >= s.voiceLeast && delay <= s.longest)) t.toInside = false
+      if (!(delay >= s.voiceLeast && delay <= s.longest)) inside = false
       if (v > 0 || c >= lines || !t.loops) continue
       const loop = (s.loopMoves ? toSamples(t, s, s.baseMs, shape) : (s.baseMs * t.fs) / 1000) - s.loopLess
       into[row + LOOPS + c] = loop
-      if (!(loop >= s.loopLeast && loop <= s.longest)) t.toInside = false
+      if (!(loop >= s.loopLeast && loop <= s.longest)) inside = false
     }
   }
+  return inside
 }
 
 /** The sine: see sine.ts. */
-function evaluateSine(t: Trajectory, s: Settings, n: number, into: Float64Array, row: number): void {
+function evaluateSine(t: Trajectory, s: Settings, n: number, every: number, rows: number, into: Float64Array, row: number): void {
   const { used, usedCount } = t
   const { centre, inSine, inCosine } = s.sineTables
-  const angle = 2 * Math.PI * wrapPhase(phaseAt(t, s, n))
-  const sine = Math.sin(angle)
-  const cosine = Math.cos(angle)
-  for (let i = 0; i < usedCount; i++) {
-    const r = used[i]!
-    into[row + r] = centre[r]! + inSine[r]! * sine + inCosine[r]! * cosine
+  for (let i = 0; i < rows; i++) {
+    const angle = 2 * Math.PI * wrapPhase(phaseAt(t, s, n + i * every))
+    const sine = Math.sin(angle)
+    const cosine = Math.cos(angle)
+    const at = row + i * READS
+    for (let k = 0; k < usedCount; k++) {
+      const r = used[k]!
+      into[at + r] = centre[r]! + inSine[r]! * sine + inCosine[r]! * cosine
+    }
   }
 }
 
@@ -148,14 +165,19 @@ export function enterInterval(t: Trajectory, s: Settings, n: number): void {
   const start = n - (n % every)
   if (t.interval === start) return
   if (!rampsBetween(s)) {
-    evaluate(t, s, start, t.to, 0)
+    evaluate(t, s, start, every, 1, t.to, 0)
     t.fromInside = t.toInside
   } else {
-    if (t.interval >= 0 && t.interval + every === start) t.from.set(t.to)
-    else evaluate(t, s, start, t.from, 0)
-    evaluate(t, s, start + every, t.to, 0)
+    if (t.interval >= 0 && t.interval + every === start) copyUsed(t, t.to, 0, t.from, 0)
+    else evaluate(t, s, start, every, 1, t.from, 0)
+    evaluate(t, s, start + every, every, 1, t.to, 0)
   }
   t.interval = start
+}
+
+/** Copies the reads in use from one row of reads to another. */
+export function copyUsed({ used, usedCount }: Trajectory, from: Float64Array, f: number, to: Float64Array, o: number): void {
+  for (let i = 0; i < usedCount; i++) to[o + used[i]!] = from[f + used[i]!]!
 }
 
 /** Whether the loops are read from the next chunk on. */

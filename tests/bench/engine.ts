@@ -4,7 +4,7 @@ import { mkdtempSync, rmSync, writeFileSync } from 'node:fs'
 import os from 'node:os'
 import path from 'node:path'
 import { fileURLToPath } from 'node:url'
-import { createEngine, inputChannels, outputChannels, processEngine } from '../../src/dsp/engine.ts'
+import { createEngine, inputChannels, outputChannels, processEngine, resetEngine } from '../../src/dsp/engine.ts'
 import type { ParameterSet } from '../../src/set/types.ts'
 import { noise } from '../dsp/noise.ts'
 import { changedSet } from '../dsp/sets.ts'
@@ -100,8 +100,9 @@ async function ratioOf({ kind, set }: Kernel, program: string, folder: string): 
   const file = path.join(folder, `${kind}.raw`)
   writeFileSync(file, Buffer.concat(input.map((x) => new Uint8Array(x.buffer))))
   const c = startC(program, [kind, String(FRAMES), file])
+  const engine = createEngine(set, { live: false })
   const engineTime = () => {
-    const engine = createEngine(set, { live: false })
+    resetEngine(engine)
     const begin = process.hrtime.bigint()
     processEngine(engine, input, output, FRAMES)
     return Number(process.hrtime.bigint() - begin)

@@ -1,0 +1,81 @@
+// The mix: outputGain · outputShaper(dry · d ± wet · m).
+import type { Channel, Core } from './core.ts'
+import { DRY, OUTPUT_GAIN, rampsMove, SHAPER_VALUES, SHAPERS, scale, WET } from './ramps.ts'
+import { OUTPUT, type Settings } from './settings.ts'
+import { shape, shapeMoving } from './shaperPass.ts'
+
+/** y of channel c, outputGain · outputShaper(dry · d ± wet · m), into `output`. */
+export function mix(core: Core, c: number, n: number): void {
+  const { settings, ramps, states } = core
+  const { start, slope, elapsed } = ramps
+  const y = core.output[c]!
+  const shaper = settings.shapers[OUTPUT]!
+  const moving = rampsMove(ramps)
+  if (moving) {
+    const d = dryOf(core, c)
+    const at = dryAt(core)
+    const m = core.wet[c]!
+    for (let j = 0; j < n; j++) {
+      const dry = start[DRY]! + slope[DRY]! * (elapsed + j)
+      const wet = start[WET + c]! + slope[WET + c]! * (elapsed + j)
+      y[j] = dry * d[at + j]! + wet * (settings.voiceScale * m[j]!)
+    }
+    shapeMoving(shaper, y, 0, n, ramps, elapsed, SHAPERS + OUTPUT * SHAPER_VALUES, states.shapers, 2 * OUTPUT + c)
+  } else {
+    mixTo(core, c, y, 0, n, false)
+    shape(shaper, y, 0, n, states.shapers, 2 * OUTPUT + c)
+  }
+  scale(y, n, ramps, OUTPUT_GAIN, moving)
+}
+
+/** Whether mixTo gives y as it is to be heard. */
+export function mixesPlainly({ settings, ramps }: Core): boolean {
+  return !rampsMove(ramps) && !settings.shapers[OUTPUT]!.on
+}
+
+/** dry · d ± wet · m of channel c, times outputGain if `gained`, while no ramp moves. Returns how many samples are not finite. */
+export function mixTo(core: Core, c: number, y: Channel, yAt: number, n: number, gained: boolean): number {
+  const { settings, ramps } = core
+  const d = dryOf(core, c)
+  const at = dryAt(core)
+  const m = core.wet[c]!
+  const gain = gained ? ramps.target[OUTPUT_GAIN]! : 1
+  const dry = gain * ramps.target[DRY]!
+  const wet = gain * ramps.target[WET + c]! * settings.voiceScale
+  let bad = 0
+  let j = 0
+  // Two samples a turn: the turn itself costs as much as a sample.
+  for (; j < n - 1; j += 2) {
+    const v = dry * d[at + j]! + wet * m[j]!
+    const next = dry * d[at + j + 1]! + wet * m[j + 1]!
+    if (!(Math.abs(v) + Math.abs(next) < Number.POSITIVE_INFINITY)) bad += notFinite(v) + notFinite(next)
+    y[yAt + j] = v
+    y[yAt + j + 1] = next
+  }
+  if (j < n) {
+    const v = dry * d[at + j]! + wet * m[j]!
+    bad += notFinite(v)
+    y[yAt + j] = v
+  }
+  return bad
+}
+
+/** 1 for NaN and the infinities, else 0. */
+export const notFinite = (v: number): number => (Math.abs(v) < Number.POSITIVE_INFINITY ? 0 : 1)
+
+/** Where the dry signal of channel c stands, and the index there of the chunk's first sample. */
+function dryOf({ settings, lines, dryLines, input }: Core, c: number): Float64Array {
+  const line = settings.lines === 2 ? c : 0
+  if (settings.dryFromLine) return lines[line]!
+  return dryDelay(settings) === 0 ? input[line]! : dryLines[line]!
+}
+
+function dryAt({ settings, position }: Core): number {
+  const delay = dryDelay(settings)
+  return delay === 0 && !settings.dryFromLine ? 0 : position - delay
+}
+
+/** Dry delay in whole samples, rounded half up, at most `longest`. */
+function dryDelay({ dryDelayMs, fs, longest }: Settings): number {
+  return Math.min(Math.floor((dryDelayMs * fs) / 1000 + 0.5), Math.floor(longest)) | 0
+}
