@@ -10,14 +10,16 @@ export interface NumberOption {
   readonly min: number
   readonly max: number
   readonly whole?: boolean
+  /** A word that is accepted in place of a number; whoever calls has looked for it. */
+  readonly orElse?: string
   /** Said when a value is out of range. */
   readonly hint?: string
 }
 
 /** One number with or without its unit. */
 export function readNumberOption(text: string, option: NumberOption): number {
-  const { name, unit, min, max, whole = false } = option
-  const range = `${whole ? 'a whole number from ' : ''}${min} to ${max}${unit === '' ? '' : ` ${unit}`}`
+  const { name, unit, min, max, whole = false, orElse } = option
+  const range = `${whole ? 'a whole number from ' : ''}${min} to ${max}${unit === '' ? '' : ` ${unit}`}${orElse ? `, or ${orElse}` : ''}`
   const result = parseQuantity(text, unit)
   if (!result.ok) return fail(`${name} must be ${range}, got ${valueText(text)}`, result.problems[0]?.hint ?? `give ${range}`)
   if (!(result.value >= min && result.value <= max) || (whole && !Number.isInteger(result.value)))

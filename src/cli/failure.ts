@@ -1,6 +1,7 @@
 // How a command says no: `error:` and `hint:` on standard error, lower case, no full stop, no stack; exit 2.
 // A check that fails is no failure of the command: it is a result, and exits 1.
 import type { Problem } from '../set/result.ts'
+import { oneLine } from './output.ts'
 
 export const EXIT_GOOD = 0
 export const EXIT_CHECK = 1
@@ -27,7 +28,10 @@ export const fail = (error: string, hint: string): never => {
   throw new CommandFailure({ error, hint })
 }
 
-export const RANGES_HINT = "'combwright new --help' lists every parameter with its range"
+/** Others' messages begin with a capital; ours do not. */
+export const lowerFirst = (text: string): string => text.charAt(0).toLowerCase() + text.slice(1)
+
+const RANGES_HINT = "'combwright new --help' lists every parameter with its range"
 
 /** The problems of a file, as faults that begin with its name. */
 export function problemFaults(file: string, problems: readonly Problem[]): readonly Fault[] {
@@ -48,6 +52,3 @@ function ownMistake(error: unknown): Fault {
     return { error: 'there is not enough memory for this', hint: 'cut the sound, or its tail, shorter' }
   return { error: `this should not happen: ${message}`, hint: 'please report it with the command as typed and the files it read' }
 }
-
-// A path or a text from a file may hold line ends and control characters: they must not forge lines of their own.
-const oneLine = (text: string) => text.replace(/\p{Cc}+/gu, ' ').trim()

@@ -1,5 +1,5 @@
 // Paths as typed, sets and sounds read, results written whole or not at all.
-import { readFileSync, realpathSync, statSync } from 'node:fs'
+import { closeSync, lstatSync, openSync, readFileSync, readSync, realpathSync, type Stats, statSync } from 'node:fs'
 import { mkdtemp, rename, rm, writeFile } from 'node:fs/promises'
 import path from 'node:path'
 import { readWav, type WavAudio } from '../media/wav.ts'
@@ -18,16 +18,38 @@ export const resolvePath = (typed: string): string => path.resolve(typedFolder()
 
 /** Reads a file of at most `maxBytes`; `what` names the argument in messages. */
 function readBytes(typed: string, what: string, maxBytes: number, tooMany: (bytes: number) => never): Uint8Array {
-  if (typed === '') fail(`${what} is an empty path`, 'give the path of a file')
+  if (typed === '') fail(`the path of ${what} is empty`, 'give the path of a file')
   try {
-    const { size } = statSync(resolvePath(typed))
-    if (size > maxBytes) tooMany(size)
-    return readFileSync(resolvePath(typed))
+    const file = resolvePath(typed)
+    const found = statSync(file)
+    if (found.isCharacterDevice() || found.isBlockDevice()) fail(`${typed} cannot be read: it is a device`, `give the path of ${what}`)
+    if (found.size > maxBytes) tooMany(found.size)
+    return found.isFIFO() ? readPipe(file, maxBytes, tooMany) : readFileSync(file)
   } catch (error) {
     if (error instanceof CommandFailure) throw error
     return fail(`${typed} cannot be read: ${reasonOf(error)}`, `give the path of ${what}`)
   }
 }
+
+/** A pipe says no size beforehand: it is read until it ends, or gives too much. */
+function readPipe(file: string, maxBytes: number, tooMany: (bytes: number) => never): Uint8Array {
+  const pipe = openSync(file, 'r')
+  try {
+    const parts: Uint8Array[] = []
+    for (let bytes = 0; ; ) {
+      const part = new Uint8Array(PIPE_PART)
+      const count = readSync(pipe, part)
+      if (count === 0) return Buffer.concat(parts)
+      bytes += count
+      if (bytes > maxBytes) tooMany(bytes)
+      parts.push(part.subarray(0, count))
+    }
+  } finally {
+    closeSync(pipe)
+  }
+}
+
+const PIPE_PART = 2 ** 16
 
 /** The set in a file, valid at its own rate, or a CommandFailure with every problem. */
 export function readSetFile(typed: string): ParameterSet {
@@ -47,8 +69,8 @@ function decodeText(typed: string, bytes: Uint8Array): string {
   }
 }
 
-/** RF64 files may be larger; more than this cannot be held at once. */
-const MAX_WAV_BYTES = 2 ** 32
+/** RF64 files may be larger; Node reads no more than this at once. */
+const MAX_WAV_BYTES = 2 ** 31 - 1
 
 export function readWavFile(typed: string): WavAudio {
   const bytes = readBytes(typed, 'a WAV file', MAX_WAV_BYTES, (size) =>
@@ -68,14 +90,22 @@ export interface OutputRules {
 /** Refuses an output path that cannot or must not be written, before any work is done. */
 export function checkOutput(typed: string, { inputs, keep = false }: OutputRules): void {
   if (typed === '') fail('the output is an empty path', 'give the path of the file to write')
+  const refuse = (reason: string, hint: string) => fail(`${typed} cannot be written: ${reason}`, hint)
   const file = resolvePath(typed)
-  const folder = path.dirname(file)
-  if (!statOf(folder)?.isDirectory())
-    fail(`${typed} cannot be written: there is no folder ${path.dirname(typed)}`, 'make the folder first, or give another path')
-  const there = statOf(file)
-  if (there?.isDirectory()) fail(`${typed} cannot be written: it is a folder`, 'give the path of a file')
+  let there: Stats | undefined
+  try {
+    if (!statOf(path.dirname(file))?.isDirectory())
+      refuse(`there is no folder ${path.dirname(typed)}`, 'make the folder first, or give another path')
+    there = statOf(file)
+    if (!there && lstatSync(file, { throwIfNoEntry: false }))
+      refuse('it is a link that leads nowhere', 'mend the link, or give another path')
+  } catch (error) {
+    if (error instanceof CommandFailure) throw error
+    refuse(reasonOf(error), 'give another path')
+  }
+  if (there?.isDirectory() || typed.endsWith('/') || typed.endsWith(path.sep)) refuse('it is a folder', 'give the path of a file')
   // Moving a file over a device or a pipe would take its place.
-  if (there && !there.isFile()) fail(`${typed} cannot be written: it is a device or a pipe`, 'give the path of a file')
+  if (there && !there.isFile()) refuse('it is a device or a pipe', 'give the path of a file')
   const same = inputs.find((input) => identity(input) === identity(typed))
   if (same !== undefined) fail(`the output ${typed} is the input ${same}`, 'give the output another name')
   if (there && keep) fail(`${typed} is already there`, 'give another name, or --force to write over it')
@@ -126,7 +156,6 @@ const REASONS: Readonly<Record<string, string>> = {
   EROFS: 'the disk is read-only',
   ENOSPC: 'the disk is full',
   EFBIG: 'it is too large for the disk',
-  ERR_FS_FILE_TOO_LARGE: 'it is too large to hold at once',
   ELOOP: 'its links go in a circle',
   ENAMETOOLONG: 'its name is too long',
   ERR_INVALID_ARG_VALUE: 'its path holds a zero byte',

@@ -1,4 +1,4 @@
-// Data on standard output: JSON or CSV.
+// Data on standard output: JSON or CSV. Talk on standard error.
 
 /** One JSON document on one line. JSON knows no NaN and no infinity: a figure that is none must not get this far. */
 export function printJson(value: unknown): void {
@@ -19,3 +19,11 @@ export function printCsv(header: readonly string[], rows: Iterable<readonly (str
 
 const csvCell = (cell: string | number) =>
   typeof cell === 'string' && /[",\n\r]/.test(cell) ? `"${cell.replaceAll('"', '""')}"` : String(cell)
+
+/** One line for the user on standard error. */
+export function talk(text: string): void {
+  process.stderr.write(`${oneLine(text)}\n`)
+}
+
+/** A path or a text from a file may hold line ends and control characters: they must not forge lines of their own. */
+export const oneLine = (text: string): string => text.replace(/\p{Cc}+/gu, ' ').trim()

@@ -1,19 +1,17 @@
 // The command line as one object, and its run: commander reads the words, our messages say what is wrong with them.
 import { Command, CommanderError } from 'commander'
 import packageFile from '../../package.json' with { type: 'json' }
+import { nearestHint } from '../set/valueProblem.ts'
 import { addCheck } from './commands/check.ts'
 import { addNew } from './commands/new.ts'
 import { addRender } from './commands/render.ts'
 import { addResponse } from './commands/response.ts'
 import { addSweep } from './commands/sweep.ts'
-import { CommandFailure, EXIT_BAD_USE, EXIT_GOOD, printFailure } from './failure.ts'
+import { CommandFailure, EXIT_BAD_USE, EXIT_GOOD, type Fault, lowerFirst, printFailure } from './failure.ts'
 
 const ABOUT = `Checks, measures and renders modulated-delay effects from their parameter sets (*.set.json).
 
 Data goes to standard output, talk to standard error. Exit: 0 good, 1 a check fails, 2 bad use or bad input.`
-
-/** What a command's action hands back: its exit code, or nothing for 0. */
-export type Action = number | undefined
 
 export interface Session {
   exitCode: number
@@ -52,7 +50,7 @@ export async function run(words: readonly string[]): Promise<number> {
 function wordFailure(error: CommanderError, words: readonly string[], program: Command): CommandFailure {
   const command = program.commands.find((candidate) => candidate.name() === words[0])
   const help = command ? `'combwright ${command.name()} --help' shows how it is used` : "'combwright --help' lists the commands"
-  if (error.code === 'commander.help') return new CommandFailure({ error: 'no command given', hint: help })
+  if (error.code === 'commander.help') return new CommandFailure(helpFault(words, program, help))
   const [said = '', suggestion] = error.message.split('\n')
   const meant = suggestion?.match(/Did you mean (?:one of )?(.*)\?/)?.[1]
   const text = said.replace(/^error: /, '').replace(/\.$/, '')
@@ -62,4 +60,10 @@ function wordFailure(error: CommanderError, words: readonly string[], program: C
   })
 }
 
-const lowerFirst = (text: string) => text.charAt(0).toLowerCase() + text.slice(1)
+/** Commander answers both an empty command line and `help` for an unknown command with its help. */
+function helpFault(words: readonly string[], program: Command, help: string): Fault {
+  const [, asked] = words
+  if (words[0] !== 'help' || asked === undefined) return { error: 'no command given', hint: help }
+  const names = program.commands.map((command) => command.name())
+  return { error: `unknown command '${asked}'`, hint: nearestHint(asked, names) ?? help }
+}

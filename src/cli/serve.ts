@@ -1,31 +1,69 @@
 // npm start: builds the page and serves it with its policy headers on this machine only, until stopped.
-//   --port N (default 4810, the next free one if taken)   --no-build serves what was built before
+//   npm start -- [--port N] [--no-build]
 import { existsSync } from 'node:fs'
 import path from 'node:path'
 import { fileURLToPath } from 'node:url'
 import { parseArgs } from 'node:util'
-import { build, preview } from 'vite'
+import { build, type PreviewServer, preview } from 'vite'
+import { readNumberOption } from './arguments.ts'
+import { EXIT_BAD_USE, fail, lowerFirst, printFailure } from './failure.ts'
+import { talk } from './output.ts'
 
 const DEFAULT_PORT = 4810
+const PORT = { name: '--port', unit: '', min: 1, max: 65535, whole: true, hint: `leave it out for ${DEFAULT_PORT}` }
+const USAGE = `Usage: npm start -- [options]
+
+Builds the page and serves it to this machine until stopped.
+
+  --port N     at this port (${DEFAULT_PORT}, or the next free one, when not given)
+  --no-build   serve what was built before
+  --help       print this help
+`
 
 const top = path.dirname(path.dirname(path.dirname(fileURLToPath(import.meta.url))))
 const configFile = path.join(top, 'vite.config.ts')
 
-function readPort(text: string): number {
-  const port = Number(text)
-  if (Number.isInteger(port) && port >= 1 && port <= 65535) return port
-  process.stderr.write(`error: --port must be 1 to 65535, got ${text}\nhint: leave it out for ${DEFAULT_PORT}\n`)
-  process.exit(2)
+function readWords() {
+  try {
+    return parseArgs({ options: { port: { type: 'string' }, 'no-build': { type: 'boolean' }, help: { type: 'boolean' } } }).values
+  } catch (error) {
+    const [said = ''] = (error as Error).message.split('. ')
+    return fail(lowerFirst(said), "'npm start -- --help' shows how it is used")
+  }
 }
 
-const { values } = parseArgs({ options: { port: { type: 'string' }, 'no-build': { type: 'boolean', default: false } } })
-const port = values.port === undefined ? DEFAULT_PORT : readPort(values.port)
-
-if (!values['no-build'] || !existsSync(path.join(top, 'dist', 'index.html'))) {
-  process.stderr.write('Building the page …\n')
-  await build({ configFile, logLevel: 'warn' })
+async function buildPage(): Promise<void> {
+  talk('Building the page …')
+  try {
+    await build({ configFile, logLevel: 'warn' })
+  } catch (error) {
+    fail(`the page could not be built: ${(error as Error).message}`, 'npm test says what is wrong with the source')
+  }
 }
-const server = await preview({ configFile, logLevel: 'warn', preview: { port, host: 'localhost', strictPort: values.port !== undefined } })
-const address = server.resolvedUrls?.local[0] ?? `http://localhost:${port}/`
-process.stdout.write(`Combwright is at ${address}\n`)
-process.stderr.write('Stop it with Ctrl+C.\n')
+
+async function servePage(typedPort: number | undefined): Promise<PreviewServer> {
+  const port = typedPort ?? DEFAULT_PORT
+  try {
+    return await preview({ configFile, logLevel: 'warn', preview: { port, host: 'localhost', strictPort: typedPort !== undefined } })
+  } catch (error) {
+    return fail(lowerFirst((error as Error).message), 'give another --port, or leave it out')
+  }
+}
+
+async function start(): Promise<void> {
+  const words = readWords()
+  if (words.help) return void process.stdout.write(USAGE)
+  const port = words.port === undefined ? undefined : readNumberOption(words.port, PORT)
+  if (!words['no-build'] || !existsSync(path.join(top, 'dist', 'index.html'))) await buildPage()
+  const server = await servePage(port)
+  const address = server.resolvedUrls?.local[0] ?? `http://localhost:${port ?? DEFAULT_PORT}/`
+  process.stdout.write(`Combwright is at ${address}\n`)
+  talk('Stop it with Ctrl+C.')
+}
+
+try {
+  await start()
+} catch (error) {
+  printFailure(error)
+  process.exitCode = EXIT_BAD_USE
+}

@@ -96,6 +96,16 @@ describe('response', () => {
     expect(lines[6]).toMatch(/^1,20000,/)
   })
 
+  it('holds a standing sweep where it stands, any other at 0, unless told', async () => {
+    const positionOf = async (rateHz: number, ...words: string[]) => {
+      writeFileSync(at('stands.set.json'), writeSet({ ...forward, sweep: { ...forward.sweep, rateHz, startPhase: 0.3 } }))
+      return (await json('response', 'stands.set.json', '--points', '1', ...words)).value.position
+    }
+    expect(await positionOf(0)).toBe(0.3)
+    expect(await positionOf(1)).toBe(0)
+    expect(await positionOf(0, '--position', '0.7')).toBe(0.7)
+  })
+
   it('ends its points at half the rate of a slow set', async () => {
     writeFileSync(at('slow.set.json'), writeSet({ ...forward, sampleRate: 16000 }))
     const { value } = await json('response', 'slow.set.json', '--points', '4')
@@ -249,6 +259,13 @@ describe('check', () => {
     writeFileSync(at('rate.set.json'), writeSet({ ...set, loop: { ...set.loop, feedback: 0 } }))
     expect((await run('check', 'rate.set.json')).code).toBe(0)
     expect((await run('check', 'rate.set.json', '--rate', '8 kHz')).code).toBe(1)
+  })
+
+  it('lets no name forge a line of the report', async () => {
+    writeFileSync(at('forged.set.json'), JSON.stringify({ format: 'combwright-set', version: 1, name: 'mine: holds\nfails  \u001b[31m' }))
+    const { stdout } = await run('check', 'forged.set.json')
+    expect(stdout).toMatch(/^mine: holds fails {2} ?\[31m: holds\n/)
+    expect(stdout.split('\n').filter((line) => line.startsWith('fails'))).toEqual([])
   })
 
   it('reads well: a line a check under the verdict', async () => {

@@ -1,5 +1,5 @@
 // Bad use and bad input: exit 2, `error:` then `hint:`, nothing on standard output, no file left, no stack.
-import { mkdirSync, writeFileSync } from 'node:fs'
+import { mkdirSync, symlinkSync, writeFileSync } from 'node:fs'
 import path from 'node:path'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { writeWav } from '../../src/media/wav.ts'
@@ -36,18 +36,23 @@ beforeAll(async () => {
   put('foreign.wav', 'This is a text about music, and no sound file at all, though its name says so.')
   put('slow.wav', writeWav([new Float64Array(10)], 500, 'pcm16'))
   mkdirSync(path.join(folder, 'folder'))
+  symlinkSync('nowhere.wav', path.join(folder, 'astray.wav'))
+  symlinkSync('circle.wav', path.join(folder, 'circle.wav'))
 })
 afterAll(clear)
 
 const cases: readonly (readonly [what: string, words: readonly string[], error: RegExp, hint: RegExp])[] = [
   ['no command', [], /no command given/, /--help/],
   ['an unknown command', ['chek', good], /unknown command 'chek'/, /did you mean check\?/],
+  ['help for an unknown command', ['help', 'chek'], /unknown command 'chek'/, /did you mean "check"\?/],
   ['an unknown option', ['check', good, '--jsn'], /unknown option '--jsn'/, /did you mean --json\?/],
   ['a missing argument', ['check'], /missing required argument 'set'/, /check --help/],
   ['too many arguments', ['check', good, good], /too many arguments for 'check'/, /check --help/],
   ['a missing option value', ['check', good, '--rate'], /'--rate <hz>' argument missing/, /check --help/],
   ['a missing file', ['check', 'nowhere.set.json'], /nowhere\.set\.json cannot be read: no such file/, /path of a set file/],
   ['a folder', ['sweep', 'folder'], /folder cannot be read: it is a folder/, /path of a set file/],
+  ['a device', ['check', '/dev/zero'], /\/dev\/zero cannot be read: it is a device/, /path of a set file/],
+  ['an empty path', ['check', ''], /the path of a set file is empty/, /path of a file/],
   ['a path through a file', ['check', 'tone.wav/x'], /cannot be read: a part of its path is no folder/, /path/],
   [
     'broken JSON',
@@ -122,6 +127,20 @@ const cases: readonly (readonly [what: string, words: readonly string[], error: 
     /make the folder/,
   ],
   ['an output that is a folder', ['render', good, 'tone.wav', 'folder'], /folder cannot be written: it is a folder/, /path of a file/],
+  [
+    'an output that can only be a folder',
+    ['render', good, 'tone.wav', 'new/'],
+    /new\/ cannot be written: it is a folder/,
+    /path of a file/,
+  ],
+  [
+    'an output of too long a name',
+    ['render', good, 'tone.wav', 'x'.repeat(300)],
+    /cannot be written: its name is too long/,
+    /another path/,
+  ],
+  ['a link to nothing for an output', ['render', good, 'tone.wav', 'astray.wav'], /link that leads nowhere/, /mend the link/],
+  ['a circle of links for an output', ['new', '--intent', 'comb', '--out', 'circle.wav'], /its links go in a circle/, /another path/],
   ['a device for an output', ['render', good, 'tone.wav', '/dev/null'], /device or a pipe/, /path of a file/],
   [
     'a format whose twin is still to come',
@@ -135,7 +154,7 @@ const cases: readonly (readonly [what: string, words: readonly string[], error: 
     /--format must be one of double, float32, q31, q15, got "mp3"/,
     /./,
   ],
-  ['a negative tail', ['render', good, 'tone.wav', 'out.wav', '--tail', '-1'], /--tail must be 0 to 3600 s, got -1/, /./],
+  ['a negative tail', ['render', good, 'tone.wav', 'out.wav', '--tail', '-1'], /--tail must be 0 to 3600 s, or ring, got -1/, /./],
   [
     'a loop that runs away',
     ['render', 'runaway.set.json', 'tone.wav', 'out.wav', '--tail', '20'],

@@ -6,7 +6,7 @@ import { type NumberParameter, parameter } from '../../set/parameters.ts'
 import { readChoice, readNumberOption } from '../arguments.ts'
 import { EXIT_CHECK, EXIT_GOOD } from '../failure.ts'
 import { readSetFile } from '../files.ts'
-import { printJson } from '../output.ts'
+import { oneLine, printJson } from '../output.ts'
 import type { Session } from '../program.ts'
 
 interface CheckOptions {
@@ -49,5 +49,5 @@ function inOrder({ id, status, value, limit, unit, text, working, ...more }: Che
 function checkReport(name: string, verdict: Verdict, checks: readonly Check[]): string {
   const width = Math.max(...checks.map((check) => check.id.length))
   const lines = checks.map((check) => `${check.status.padEnd(5)}  ${check.id.padEnd(width)}  ${check.text}`)
-  return `${name}: ${verdict}\n${lines.map((line) => `${line}\n`).join('')}`
+  return `${oneLine(name)}: ${verdict}\n${lines.map((line) => `${line}\n`).join('')}`
 }

@@ -7,7 +7,7 @@ import { writeSet } from '../../set/write.ts'
 import { readChoice } from '../arguments.ts'
 import { checkOutput, writeWhole } from '../files.ts'
 import { interruptible } from '../interrupt.ts'
-import { printJson } from '../output.ts'
+import { printJson, talk } from '../output.ts'
 import { parameterHelp } from '../parameterHelp.ts'
 
 interface NewOptions {
@@ -36,5 +36,5 @@ async function writeStart({ intent, out, force = false, json = false }: NewOptio
   checkOutput(out, { inputs: [], keep: !force })
   await writeWhole(out, writeSet(set), signal)
   if (json) printJson({ out, set })
-  else process.stderr.write(`wrote ${out}: ${set.name}\n`)
+  else talk(`wrote ${out}: ${set.name}`)
 }

@@ -4,12 +4,13 @@ import { inputChannels } from '../../dsp/engine.ts'
 import type { WavAudio } from '../../media/wav.ts'
 import { writeWav } from '../../media/wav.ts'
 import type { ParameterSet } from '../../set/types.ts'
+import { peak } from '../../signal/levels.ts'
 import { MAX_RESAMPLE_RATE, MAX_RESAMPLED_FRAMES, MIN_RESAMPLE_RATE, resampledLength, resampleTo } from '../../signal/resample.ts'
 import { readChoice, readNumberOption } from '../arguments.ts'
 import { fail } from '../failure.ts'
 import { checkOutput, readSetFile, readWavFile, writeWhole } from '../files.ts'
 import { interruptible } from '../interrupt.ts'
-import { printJson } from '../output.ts'
+import { printJson, talk } from '../output.ts'
 import { startProgress } from '../progress.ts'
 import { ENDLESS_RING_S, LONGEST_RING_S, renderInSteps, ringSeconds } from '../renderSteps.ts'
 
@@ -49,7 +50,8 @@ interface Files {
 
 async function render(files: Files, options: RenderOptions): Promise<void> {
   readFormat(options.format)
-  const typedTail = options.tail === 'ring' ? null : readNumberOption(options.tail, { name: '--tail', unit: 's', min: 0, max: MAX_TAIL_S })
+  const typedTail =
+    options.tail === 'ring' ? null : readNumberOption(options.tail, { name: '--tail', unit: 's', min: 0, max: MAX_TAIL_S, orElse: 'ring' })
   checkOutput(files.output, { inputs: [files.set, files.input] })
   const set = readSetFile(files.set)
   const wav = readWavFile(files.input)
@@ -73,8 +75,6 @@ function readFormat(text: string): void {
       'leave it out, or give --format double',
     )
 }
-
-const talk = (text: string) => process.stderr.write(`${text}\n`)
 
 /** A file written at a set's fractional rate says the whole one: it counts as the same. */
 const sameRate = (wav: WavAudio, set: ParameterSet) => wav.sampleRate === Math.round(set.sampleRate)
@@ -137,13 +137,14 @@ interface Written {
 
 function report(files: Files, set: ParameterSet, { wav, output, tail, json }: Written): void {
   const frames = (output[0] as Float64Array).length
-  const peak = output.reduce((most, channel) => channel.reduce((m, x) => Math.max(m, Math.abs(x)), most), 0)
-  const peakDb = peak === 0 ? null : 20 * Math.log10(peak)
-  const level = peakDb === null ? 'silent' : `peak ${peakDb.toFixed(1)} dBFS`
-  if (!json)
-    return void talk(
-      `wrote ${files.output}: ${output.length} ${output.length === 1 ? 'channel' : 'channels'}, ${(frames / set.sampleRate).toFixed(2)} s, ${level}`,
-    )
+  const largest = Math.max(...output.map(peak))
+  const peakDb = largest === 0 ? null : 20 * Math.log10(largest)
+  if (!json) {
+    const channels = output.length === 1 ? '1 channel' : `${output.length} channels`
+    const level = peakDb === null ? 'silent' : `peak ${peakDb.toFixed(1)} dBFS`
+    talk(`wrote ${files.output}: ${channels}, ${(frames / set.sampleRate).toFixed(2)} s, ${level}`)
+    return
+  }
   printJson({
     ...files,
     format: 'double',

@@ -9,7 +9,7 @@ import { readSetFile } from '../files.ts'
 import { printCsv, printJson } from '../output.ts'
 
 interface ResponseOptions {
-  readonly position: string
+  readonly position?: string
   readonly frequencies?: string
   readonly points?: string
   readonly extremes?: boolean
@@ -26,7 +26,7 @@ export function addResponse(program: Command): void {
     .command('response')
     .description('print the exact response with the sweep held at a position, one block a channel')
     .argument('<set>', 'a set file')
-    .option('--position <p>', 'sweep position, 0 to 1', '0')
+    .option('--position <p>', 'sweep position, 0 to 1 (default: 0, or where a sweep of rate 0 stands)')
     .option('--frequencies <list>', 'frequencies in Hz, commas between them')
     .option(
       '--points <n>',
@@ -36,14 +36,15 @@ export function addResponse(program: Command): void {
     .option('--json', 'print { position, sampleRate, channels, extremes } as JSON instead of CSV')
     .addHelpText(
       'after',
-      '\nLevels in dB, not below -400; phases in radians; group delays in samples. Shapers count by their slope for small signals.',
+      '\nLevels in dB, not below -400; phases in radians; group delays in samples. Shapers count by their slope for small signals.\nIn CSV, notches and peaks follow after an empty line.',
     )
     .action((file: string, options: ResponseOptions) => {
-      const position = readNumberOption(options.position, { name: '--position', unit: '', min: 0, max: 1 })
+      const position =
+        options.position === undefined ? undefined : readNumberOption(options.position, { name: '--position', unit: '', min: 0, max: 1 })
       if (options.frequencies !== undefined && options.points !== undefined)
         fail('--frequencies and --points are both given', 'give one of them')
       const set = readSetFile(file)
-      const frozen = freeze(set, position)
+      const frozen = freeze(set, position ?? (set.sweep.rateHz === 0 ? set.sweep.startPhase : 0))
       refuseHeld(file, frozen)
       const channels = frozenResponse(frozen, readFrequencies(options, frozen.sampleRate))
       const extremes = options.extremes ? frozenExtremes(frozen) : undefined
