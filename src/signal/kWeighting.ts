@@ -63,14 +63,22 @@ function highPassA0(sampleRate: number): number {
 export interface KFilter {
   readonly sections: readonly [Section, Section]
   readonly state: Float64Array
+  /** Σ y² of the last stretch heard. A slot, not a return value: a number returned from a call may be boxed, which the audio thread must not. */
+  readonly energy: Float64Array
 }
 
 export function createKFilter(sampleRate: number): KFilter {
-  return { sections: kWeighting(sampleRate), state: new Float64Array(4) }
+  return { sections: kWeighting(sampleRate), state: new Float64Array(4), energy: new Float64Array(1) }
 }
 
-/** Σ y² of x[from … to) after weighting; keeps the filter's memory. Allocates nothing. */
+/** Σ y² of x[from … to) after weighting; keeps the filter's memory. */
 export function weightedEnergy(filter: KFilter, x: Float64Array | Float32Array, from: number, to: number): number {
+  weighEnergy(filter, x, from, to)
+  return filter.energy[0] as number
+}
+
+/** The same into `filter.energy`, for the audio thread: allocates nothing. */
+export function weighEnergy(filter: KFilter, x: Float64Array | Float32Array, from: number, to: number): void {
   const { state, sections } = filter
   // By index: taking the pair apart would make an iterator each call.
   const p = sections[0]
@@ -94,5 +102,5 @@ export function weightedEnergy(filter: KFilter, x: Float64Array | Float32Array, 
   state[1] = s2
   state[2] = t1
   state[3] = t2
-  return energy
+  filter.energy[0] = energy
 }

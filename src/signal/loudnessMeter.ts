@@ -2,7 +2,7 @@
 //
 // layout: energies is a ring of bins of binFrames samples each; `at` is the bin being filled, `filled` counts finished ones. A value speaks
 // for whole bins only, so it is at most one bin (50 ms) old. Nothing is allocated after creation; nothing throws while fed.
-import { createKFilter, type KFilter, weightedEnergy } from './kWeighting.ts'
+import { createKFilter, type KFilter, weighEnergy } from './kWeighting.ts'
 import { channelWeights, meanSquareToLufs } from './loudness.ts'
 
 const BINS_PER_SECOND = 20
@@ -62,7 +62,8 @@ export function feedLoudnessMeter(meter: LoudnessMeter, input: readonly (Float64
       const x = input[c]
       if (x === undefined) continue
       const filter = filters[c] as KFilter
-      const energy = weightedEnergy(filter, x, from, to)
+      weighEnergy(filter, x, from, to)
+      const energy = filter.energy[0] as number
       settle(filter.state)
       if (energy < Number.POSITIVE_INFINITY) energies[meter.at] = (energies[meter.at] as number) + (weights[c] as number) * energy
     }

