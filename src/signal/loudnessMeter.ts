@@ -44,7 +44,11 @@ export function createLoudnessMeter({ sampleRate, channels, windowSeconds = 3 }:
 
 /** Forgets everything heard. */
 export function resetLoudnessMeter(meter: LoudnessMeter): void {
-  for (let c = 0; c < meter.filters.length; c++) (meter.filters[c] as KFilter).state.fill(0)
+  for (let c = 0; c < meter.filters.length; c++) {
+    const { state, energy } = meter.filters[c] as KFilter
+    state.fill(0)
+    energy.fill(0)
+  }
   meter.energies.fill(0)
   meter.filled = 0
   meter.at = 0
