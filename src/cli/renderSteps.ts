@@ -57,7 +57,7 @@ export const ENDLESS_RING_S = 10
  * Time in s after which what is left of the sound has fallen by 60 dB: the longest way to the output, and as many passes of the loop as |g| σ per pass needs
  * (σ the loop shaper's sector bound; reads and filters only take away).
  */
-export function ringSeconds(set: ParameterSet): number {
+export function ringTailSeconds(set: ParameterSet): number {
   const { voices, loop } = delayRange(set)
   const through = Math.max(voices.maxSamples / set.sampleRate, set.mix.dryDelayMs / 1000)
   const perPass = Math.abs(set.loop.feedback) * (set.loop.shaper ? createShaper(set.loop.shaper).sectorBound : 1)

@@ -12,7 +12,7 @@ import { checkOutput, readSetFile, readWavFile, writeWhole } from '../files.ts'
 import { interruptible } from '../interrupt.ts'
 import { printJson, talk } from '../output.ts'
 import { startProgress } from '../progress.ts'
-import { ENDLESS_RING_S, LONGEST_RING_S, renderInSteps, ringSeconds } from '../renderSteps.ts'
+import { ENDLESS_RING_S, LONGEST_RING_S, renderInSteps, ringTailSeconds } from '../renderSteps.ts'
 
 interface RenderOptions {
   readonly format: string
@@ -56,7 +56,7 @@ async function render(files: Files, options: RenderOptions): Promise<void> {
   const set = readSetFile(files.set)
   const wav = readWavFile(files.input)
   const input = atSetRate(wav, set, files.input)
-  const tail = Math.round((typedTail ?? ringSeconds(set)) * set.sampleRate)
+  const tail = Math.round((typedTail ?? ringTailSeconds(set)) * set.sampleRate)
   const rate = Math.round(set.sampleRate)
   if (rate !== set.sampleRate) talk(`${files.output} says ${rate} Hz, as WAV knows whole rates only; the set runs at ${set.sampleRate} Hz`)
   const output = await interruptible(async (signal) => {
