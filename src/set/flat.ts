@@ -5,7 +5,7 @@
 // null is NaN, a choice its index (−1 when null), a boolean 0 or 1.
 import { MAX_POINTS, PARAMETERS, type Parameter } from './parameters.ts'
 import { getAt } from './path.ts'
-import type { ParameterSet, Point, Shaper } from './types.ts'
+import type { ParameterSet, Point } from './types.ts'
 
 export const FLAT_PARAMETERS: readonly Parameter[] = PARAMETERS.filter(
   (p) => p.kind !== 'text' && p.path !== 'intent' && !p.path.startsWith('target.'),
@@ -43,31 +43,6 @@ export function flatten(set: ParameterSet, out: Float64Array = new Float64Array(
   return out
 }
 
-/** The audible part of a set back from its flat form; what was not sent comes from `rest`. For tests and offline use: it allocates. */
-export function unflatten(flat: Float64Array, rest: ParameterSet): ParameterSet {
-  const set = JSON.parse(JSON.stringify(rest)) as Record<string, unknown>
-  const shapers = POINT_CURVES.slice(1) as readonly string[]
-  for (const owner of shapers) {
-    const [group, field] = owner.split('.') as [string, string]
-    const curve = flat[flatIndex(`${owner}.curve`)] as number
-    ;(set[group] as Record<string, unknown>)[field] = curve < 0 ? null : ({ points: [] } as unknown as Shaper)
-  }
-  FLAT_PARAMETERS.forEach((p, i) => {
-    const keys = p.path.split('.')
-    const last = keys.pop() as string
-    const holder = keys.reduce<Record<string, unknown> | null>((o, k) => (o ? (o[k] as Record<string, unknown> | null) : null), set)
-    if (holder) holder[last] = fromSlot(p, flat[i] as number)
-  })
-  POINT_CURVES.forEach((owner, c) => {
-    const holder = owner
-      .split('.')
-      .reduce<Record<string, unknown> | null>((o, k) => (o ? (o[k] as Record<string, unknown> | null) : null), set)
-    const at = FLAT_PARAMETERS.length + c * CURVE_LENGTH
-    if (holder) holder.points = Array.from({ length: flat[at] as number }, (_, i) => [flat[at + 1 + 2 * i], flat[at + 2 + 2 * i]])
-  })
-  return set as unknown as ParameterSet
-}
-
 /** Where drawn points start in the flat array: the count, then x, y pairs. */
 export function flatPointsOffset(owner: (typeof POINT_CURVES)[number]): number {
   return FLAT_PARAMETERS.length + POINT_CURVES.indexOf(owner) * CURVE_LENGTH
@@ -78,10 +53,4 @@ function toSlot(p: Parameter, value: unknown): number {
   if (p.kind === 'choice') return p.options.findIndex((o) => o.value === value)
   if (p.kind === 'boolean') return value ? 1 : 0
   return value as number
-}
-
-function fromSlot(p: Parameter, slot: number): unknown {
-  if (p.kind === 'choice') return slot < 0 ? null : p.options[slot]?.value
-  if (p.kind === 'boolean') return slot !== 0
-  return Number.isNaN(slot) ? null : slot
 }

@@ -1,9 +1,10 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { defaultSet } from '../../src/set/defaults.ts'
-import { FLAT_LENGTH, FLAT_PARAMETERS, flatIndex, flatPointsOffset, flatten, unflatten } from '../../src/set/flat.ts'
+import { FLAT_LENGTH, FLAT_PARAMETERS, flatIndex, flatPointsOffset, flatten } from '../../src/set/flat.ts'
 import { PARAMETERS } from '../../src/set/parameters.ts'
 import { anySet } from './anySet.ts'
+import { unflatten } from './unflatten.ts'
 
 describe('a set as one array', () => {
   it('comes back as it went, whatever the set: values, choices, what is off, shapers, drawn points', () => {
