@@ -195,7 +195,7 @@ function readFormat(view: DataView, fmt: Chunk): MediaResult<Omit<WavInfo, 'tota
     if (validBits > bits) return refuse('damaged', `${validBits} valid bits in words of ${bits}`, RESAVE)
   }
   const format = FORMATS[`${tag}:${bits}`]
-  if (!format) return refuse('unsupported', `samples coded as ${ENCODINGS[tag] ?? `format ${tag}`} of ${bits} bits`, RESAVE)
+  if (!format) return refuse('unsupported', `samples coded as ${ENCODINGS[tag] ?? `format ${tag}`} of ${bits} bits are not read`, RESAVE)
   if (channelCount < 1 || channelCount > MAX_CHANNELS) {
     return refuse(channelCount < 1 ? 'damaged' : 'unsupported', `${channelCount} channels, 1 to ${MAX_CHANNELS} are read`, RESAVE)
   }

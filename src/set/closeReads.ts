@@ -12,10 +12,15 @@ export function closeReads(set: ParameterSet, sampleRate: number): readonly Prob
   const problems: Problem[] = []
   if (tooClose(set, 'voice', sampleRate)) problems.push(closeProblem(set, 'voice', sampleRate))
   if (tooClose(set, 'loop', sampleRate)) problems.push(closeProblem(set, 'loop', sampleRate))
-  const { voices, loop } = delayRange(set, sampleRate)
-  const longest = (Math.max(voices.maxSamples, loop.maxSamples) * 1000) / sampleRate
+  const longest = longestMs(set)
   if (longest > MAX_DELAY_MS) problems.push(longProblem(set, longest))
   return problems
+}
+
+function longestMs(set: ParameterSet): number {
+  // At 1000 Hz a sample is a millisecond.
+  const { voices, loop } = delayRange(set, 1000)
+  return Math.max(voices.maxSamples, loop.maxSamples)
 }
 
 function tooClose(set: ParameterSet, where: 'voice' | 'loop', sampleRate: number): boolean {
@@ -72,8 +77,11 @@ function findMends(set: ParameterSet, where: 'voice' | 'loop', sampleRate: numbe
   return candidates.filter((mend): mend is Mend => mend !== null && mendWorks(set, mend, where, sampleRate))
 }
 
-const mendWorks = (set: ParameterSet, mend: Mend, where: 'voice' | 'loop', sampleRate: number): boolean =>
-  !(typeof mend.value === 'number' && mend.value < 0) && !tooClose(withAt(set, mend.path, mend.value), where, sampleRate)
+function mendWorks(set: ParameterSet, { path, value }: Mend, where: 'voice' | 'loop', sampleRate: number): boolean {
+  if (typeof value === 'number' && value < 0) return false
+  const mended = withAt(set, path, value)
+  return !tooClose(mended, where, sampleRate) && longestMs(mended) <= MAX_DELAY_MS
+}
 
 function baseFor(set: ParameterSet, corners: readonly Corner[], limitMs: number): number {
   const { law, depthMs, depthOctaves } = set.sweep

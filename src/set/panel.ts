@@ -1,5 +1,4 @@
 // Knobs: what a position makes of the parameters a knob moves, and the way back.
-import { TAPER_POINTS } from './drawnPoints.ts'
 import { isMovable } from './panelProblems.ts'
 import type { NumberParameter, Parameter } from './parameters/kinds.ts'
 import { parameter } from './parameters.ts'
@@ -76,7 +75,7 @@ function untapered(move: Move, value: unknown): number | null {
 
 function unbent(points: readonly Point[], t: number): number | null {
   const [firstX, firstY] = points[0] as Point
-  if (firstY === t) return TAPER_POINTS.xMin
+  if (firstY === t) return 0
   let [x0, y0] = [firstX, firstY]
   for (const [x1, y1] of points.slice(1)) {
     if ((t - y0) * (t - y1) <= 0 && y1 !== y0) return x0 + ((x1 - x0) * (t - y0)) / (y1 - y0)

@@ -81,6 +81,14 @@ describe('reads before the write point', () => {
     expect(problem).toMatchObject({ path: 'sweep.depthOctaves', value: 5, range: 'a largest delay of at most 4000 ms' })
   })
 
+  it('offers no base so long that the line could not hold the far end', () => {
+    // Clearing the write point needs base 125 ms + 64 · 1 sample, and six octaves up from there is more than 8 s.
+    const wide = at({ 'sweep.law': 'ratio', 'sweep.depthOctaves': 6, 'voices.spreadMs': 250, 'line.baseMs': 20 })
+    const mends = setProblems(wide).flatMap((problem) => problem.mends ?? [])
+    expect(mends.map((mend) => mend.path)).toEqual(['voices.spreadMs'])
+    expect(setProblems(withAt(wide, 'voices.spreadMs', mends[0]?.value))).toEqual([])
+  })
+
   it('every change it offers mends what it says, whatever the set', () => {
     const ms = (max: number) => fc.double({ min: 0, max, noNaN: true })
     const values = fc.record({
