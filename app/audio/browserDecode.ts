@@ -1,6 +1,6 @@
 // Formats other than WAV, through the browser's own decoder at the set's rate. Bounded before it starts: the decoder gives everything at once.
-import { OfflineAudioContext } from 'standardized-audio-context'
 import { durationSeconds } from './fileDuration.ts'
+import { loadWrapper } from './wrapper.ts'
 
 export const MOST_COMPRESSED_BYTES = 64 * 2 ** 20
 export const LONGEST_COMPRESSED_S = 20 * 60
@@ -36,6 +36,7 @@ export async function decodeInBrowser(file: File, rate: number): Promise<Decoded
   if (seconds === null && file.size > MOST_UNKNOWN_BYTES)
     return { ok: false, reason: `its length is unknown and ${megabytes(file.size)} may decode to far more`, hint: SHORTER }
   try {
+    const { OfflineAudioContext } = await loadWrapper()
     const context = new OfflineAudioContext({ length: 1, numberOfChannels: 1, sampleRate: rate })
     const buffer = await context.decodeAudioData(await file.arrayBuffer())
     if (buffer.length === 0) return { ok: false, reason: 'it holds no samples', hint: 'choose a file with sound in it' }

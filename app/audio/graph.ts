@@ -1,10 +1,11 @@
 // One audio graph: context, processor node, and the messages between them. Made inside a press, replaced as a whole when the rate changes.
-import { AudioContext, AudioWorkletNode, addAudioWorkletModule, type IAudioWorkletNode } from 'standardized-audio-context'
+import type { AudioContext, IAudioWorkletNode } from 'standardized-audio-context'
 import type { ParameterSet } from '../../src/set/types.ts'
 import { BUILD_ID } from './buildId.ts'
 import { type FromProcessor, PROCESSOR_NAME, type ProcessorOptions, type Settings, type ToProcessor } from './worklet/messages.ts'
 import processorUrl from './worklet/processor.ts?worker&url'
 import { SHARED_BYTES } from './worklet/report.ts'
+import { loadWrapper, wrapper } from './wrapper.ts'
 
 export interface Graph {
   readonly context: AudioContext
@@ -21,17 +22,23 @@ export class SoundRefused extends Error {}
 
 const NO_WORKLET = 'Browsers let a page make sound this way only over https or from localhost.'
 
-/** Makes a context at `rate` Hz, or at the device's own rate where that is refused. Call it inside the press, before anything is awaited. */
+/** Makes a context at `rate` Hz, or at the device's own rate where that is refused. Call it inside the press, once the wrapper is there. */
 export function makeContext(rate: number): AudioContext {
-  if (!globalThis.isSecureContext || addAudioWorkletModule === undefined) throw new SoundRefused(NO_WORKLET)
+  const parts = wrapper()
+  if (!parts) throw new RangeError('the audio wrapper has not been loaded')
+  if (!globalThis.isSecureContext || parts.addAudioWorkletModule === undefined) throw new SoundRefused(NO_WORKLET)
   try {
-    return new AudioContext({ sampleRate: rate, latencyHint: 'interactive' })
+    return new parts.AudioContext({ sampleRate: rate, latencyHint: 'interactive' })
   } catch {
     return makeContextAtDeviceRate()
   }
 }
 
-export const makeContextAtDeviceRate = (): AudioContext => new AudioContext({ latencyHint: 'interactive' })
+export function makeContextAtDeviceRate(): AudioContext {
+  const parts = wrapper()
+  if (!parts) throw new RangeError('the audio wrapper has not been loaded')
+  return new parts.AudioContext({ latencyHint: 'interactive' })
+}
 
 export interface GraphOptions {
   readonly askedRate: number
@@ -41,6 +48,7 @@ export interface GraphOptions {
 
 /** Loads the processor into the context and waits until it has answered with the same build. */
 export async function openGraph(context: AudioContext, { askedRate, set, settings }: GraphOptions): Promise<Graph> {
+  const { addAudioWorkletModule, AudioWorkletNode } = await loadWrapper()
   if (addAudioWorkletModule === undefined || AudioWorkletNode === undefined) throw new SoundRefused(NO_WORKLET)
   await addAudioWorkletModule(context, processorUrl)
   const shared = globalThis.crossOriginIsolated ? new SharedArrayBuffer(SHARED_BYTES) : null

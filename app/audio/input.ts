@@ -1,8 +1,9 @@
 // Live input: the device, its permission, the browser's voice processing switched off, and its going away.
-import { type AudioContext, type IMediaStreamAudioSourceNode, MediaStreamAudioSourceNode } from 'standardized-audio-context'
+import type { AudioContext, IMediaStreamAudioSourceNode } from 'standardized-audio-context'
 import { say } from '../shell/messages.ts'
 import { type Device, useSession } from '../state/session.ts'
 import { currentGraph } from './currentGraph.ts'
+import { wrapper } from './wrapper.ts'
 
 interface Opened {
   readonly stream: MediaStream
@@ -42,10 +43,11 @@ export async function openInput(deviceId: string): Promise<{ readonly deviceId: 
 /** Connects the open device to the graph. False when the browser cannot join the device's rate with the context's. */
 export function connectInput(): boolean {
   const graph = currentGraph()
-  if (!graph || !opened) return true
+  const parts = wrapper()
+  if (!graph || !parts || !opened) return true
   opened.node?.disconnect()
   try {
-    opened.node = new MediaStreamAudioSourceNode(graph.context, { mediaStream: opened.stream })
+    opened.node = new parts.MediaStreamAudioSourceNode(graph.context, { mediaStream: opened.stream })
     opened.node.connect(graph.node)
     return true
   } catch {

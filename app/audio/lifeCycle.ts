@@ -11,6 +11,7 @@ import { reloadMaterial } from './material.ts'
 import { chooseOutputDevice, isInterrupted, onContextState } from './nativeContext.ts'
 import { followReports, stopReports } from './reports.ts'
 import { followState, forgetSentSettings, sendSet, sendSettings, settingsNow } from './settings.ts'
+import { loadWrapper, wrapper } from './wrapper.ts'
 
 /** Counts openings: one that was overtaken closes itself. */
 let opening = 0
@@ -48,8 +49,17 @@ export function restartSound(): void {
 /** Makes the context at once, so that it counts as made in the press; the rest follows. `atDevice`: the set's rate was refused. */
 function open(atDevice = false): void {
   const mine = ++opening
-  const askedRate = currentSet().sampleRate
   useSession.setState({ status: 'starting' })
+  if (wrapper() !== null) make(mine, atDevice)
+  else
+    loadWrapper().then(
+      () => mine === opening && make(mine, atDevice),
+      () => mine === opening && fail(new SoundRefused('The audio part of the page could not be fetched: try again.')),
+    )
+}
+
+function make(mine: number, atDevice: boolean): void {
+  const askedRate = currentSet().sampleRate
   let context: AudioContext
   try {
     context = atDevice ? makeContextAtDeviceRate() : makeContext(askedRate)

@@ -51,12 +51,14 @@ export const pageWorkletLive: Bench = {
       await session.send('Tracing.end')
       await complete
       // Time the thread itself worked; by the clock it also counts what the machine did in between.
-      const measured = busy.thread.length > 0 ? busy.thread : busy.clock
+      const ofThread = busy.thread.length > 0
+      const measured = ofThread ? busy.thread : busy.clock
       const p99 = quantile(measured, 0.99)
+      const kind = ofThread ? 'thread time' : 'by the clock'
       return [
-        { what: 'audio thread busy at p99, thread time', value: 100 * p99, unit: '% of the quantum', target: '≤ 10 %', met: p99 <= TARGET },
+        { what: `audio thread busy at p99, ${kind}`, value: 100 * p99, unit: '% of the quantum', target: '≤ 10 %', met: p99 <= TARGET },
         { what: 'the same, median', value: 100 * quantile(measured, 0.5), unit: '% of the quantum' },
-        { what: 'the same by the clock, p99', value: 100 * quantile(busy.clock, 0.99), unit: '% of the quantum' },
+        ...(ofThread ? [{ what: 'the same by the clock, p99', value: 100 * quantile(busy.clock, 0.99), unit: '% of the quantum' }] : []),
         { what: 'quanta measured', value: busy.clock.length, unit: '' },
         { what: `dropouts in ${SECONDS} s`, value: glitches, unit: '', target: '0', met: glitches === 0 },
       ]

@@ -1,6 +1,8 @@
 // What is heard: the right half of the top bar, and the bottom bar of a narrow page.
 import './transport.css'
 import './source.css'
+import { useEffect } from 'react'
+import { prepareSound } from '../../audio/wrapper.ts'
 import { AudioNotices } from './AudioNotices.tsx'
 import { BypassButton, EqualLoudnessButton, MuteButton, PlayButton } from './buttons.tsx'
 import { Caution } from './Caution.tsx'
@@ -10,6 +12,7 @@ import { MeterPair } from './MeterPair.tsx'
 import { SourcePanel } from './SourcePanel.tsx'
 
 export function Transport() {
+  useEffect(prepareSound, [])
   return (
     <section className="cw-transport" aria-label="Sound">
       <SourcePanel />
@@ -26,6 +29,7 @@ export function Transport() {
 }
 
 export function TransportNarrow() {
+  useEffect(prepareSound, [])
   return (
     <section className="cw-transport cw-transport--narrow" aria-label="Sound">
       <PlayButton />
