@@ -27,7 +27,8 @@ export function createBypass(fs: number): Bypass {
 /** Aims everything at a mode; the core's ramps are the caller's to aim. */
 export function aimBypass(bypass: Bypass, mode: BypassMode): void {
   bypass.mode = mode
-  bypass.inputOpen = mode === 'tails' ? 0 : 1
+  // Behind a hard bypass too: the line is empty when the effect comes back, and its input must not begin with a step.
+  bypass.inputOpen = mode === 'tails' || mode === 'hard' ? 0 : 1
   bypass.dryOpen = mode === 'wetOnly' ? 0 : 1
   const { ramps } = bypass
   holdRamps(ramps)
