@@ -130,6 +130,14 @@ describe('sweep', () => {
     })
   })
 
+  it('says that a standing sweep never comes to delays below 0', async () => {
+    writeFileSync(at('deep.set.json'), writeSet({ ...forward, sweep: { ...forward.sweep, depthMs: 5 } }))
+    const { code, stderr } = await run('sweep', 'deep.set.json', '--points', '4')
+    expect(code).toBe(0)
+    expect(stderr).toBe('deep.set.json: delays below 0 are where the sweep never comes: at rate 0 it stands at 0\n')
+    expect((await run('sweep', 'forward.set.json', '--points', '4')).stderr).toBe('')
+  })
+
   it('lists every voice of every channel', async () => {
     const { stdout } = await run('sweep', demoSet('three-slow-voices'), '--points', '2')
     const lines = stdout.trimEnd().split('\n')

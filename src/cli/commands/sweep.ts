@@ -3,7 +3,7 @@ import type { Command } from 'commander'
 import { type SweepTable, sweepTable } from '../../analysis/sweepTable.ts'
 import { readNumberOption } from '../arguments.ts'
 import { readSetFile } from '../files.ts'
-import { printCsv, printJson } from '../output.ts'
+import { printCsv, printJson, talk } from '../output.ts'
 
 interface SweepOptions {
   readonly points: string
@@ -25,7 +25,11 @@ export function addSweep(program: Command): void {
     )
     .action((file: string, options: SweepOptions) => {
       const points = readNumberOption(options.points, { name: '--points', unit: '', min: 1, max: MAX_SWEEP_POINTS, whole: true })
-      const table = sweepTable(readSetFile(file), points)
+      const set = readSetFile(file)
+      const table = sweepTable(set, points)
+      // Only a set that stands still can be valid and yet hold such delays.
+      if (table.voices.some(({ delayMs }) => delayMs.some((ms) => ms < 0)))
+        talk(`${file}: delays below 0 are where the sweep never comes: at rate 0 it stands at ${set.sweep.startPhase}`)
       if (options.json) printJson(table)
       else printCsv(['position', 'channel', 'voice', 'delayMs', 'cents'], rows(table))
     })
