@@ -1,7 +1,8 @@
 import { describe, expect, it } from 'vitest'
 import { axisColumns, columnPoints, frequencyAt } from '../../../app/plots/columns.ts'
 import { traceJob } from '../../../app/workers/analysisJobs/trace.ts'
-import { defaultSet } from '../../../src/set/defaults.ts'
+import { defaultSet, defaultShaper } from '../../../src/set/defaults.ts'
+import type { ParameterSet } from '../../../src/set/types.ts'
 import { comb, combDb } from './combs.ts'
 
 const columns = axisColumns(48000, 700)
@@ -81,8 +82,16 @@ describe('the trace of the response', () => {
     expect(traceJob({ set: comb(), position: 0.1, columns }).differs).toBe(false)
   })
 
-  it('says that shapers count by their slope at zero', () => {
-    expect(traceJob({ set: comb(), position: 0, columns }).smallSignal).toBe(false)
+  it('says what its levels stand for: small signals, a drift taken as a sine, a loop that builds up', () => {
+    const of = (set: ParameterSet) => {
+      const { smallSignal, drifts, unstable } = traceJob({ set, position: 0, columns })
+      return { smallSignal, drifts, unstable }
+    }
+    const loop = (feedback: number) => ({ ...comb(), loop: { ...comb().loop, feedback } })
+    expect(of(loop(0.9))).toEqual({ smallSignal: false, drifts: false, unstable: false })
+    expect(of(loop(-1.05)).unstable).toBe(true)
+    expect(of({ ...comb(), mix: { ...comb().mix, shaper: defaultShaper('tanh') } }).smallSignal).toBe(true)
+    expect(of({ ...comb(), sweep: { ...comb().sweep, shape: 'drift' } }).drifts).toBe(true)
   })
 
   it('goes on where a set rings at the limit: levels stay numbers', () => {
