@@ -5,15 +5,18 @@ test('no sound before the press: no context is made, and the browser itself woul
   await recordAudio(page)
   // From the page's own code: what Playwright evaluates counts as a gesture.
   await page.addInitScript(() => {
+    const Native = Object.getPrototypeOf(window.AudioContext) as typeof AudioContext
     addEventListener('load', () => {
-      const probe = new OfflineAudioContext(1, 1, 48_000)
-      Object.assign(window, { probeState: probe.state, activated: navigator.userActivation.hasBeenActive })
+      const probe = new Native()
+      void probe.resume()
+      setInterval(() => document.documentElement.setAttribute('data-probe', probe.state), 100)
     })
   })
   await page.goto('./')
   await expect(button(page, 'Play')).toBeVisible()
   await page.waitForTimeout(1000)
   expect(await contextStates(page)).toEqual([])
+  await expect(page.locator('html')).toHaveAttribute('data-probe', 'suspended')
 })
 
 test('the first press shows the caution, not sound; declined, nothing sounds and it asks again', async ({ page }) => {
