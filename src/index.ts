@@ -9,10 +9,11 @@ export { defaultSet, defaultShaper } from './set/defaults.ts'
 export { DEMO_SETS, type DemoSet } from './set/demoSets.ts'
 /** A playable beginning for an intent, with a panel. */
 export { startingSet } from './set/intents.ts'
+/** JSON or text in; a complete and valid set out, or every reason why not. */
+export { parseSet } from './set/parse.ts'
 /** One field by its path ("loop.feedback"): look, or a copy with another value. */
 export { getAt, withAt } from './set/path.ts'
-/** Text or JSON in; a complete and valid set out, or every reason why not. */
-export { parseSet, readSet } from './set/read.ts'
+export { readSet } from './set/read.ts'
 export type { Problem, Result } from './set/result.ts'
 export type * from './set/types.ts'
 /** What is wrong between the fields of a set, at its own rate or another. */
@@ -101,7 +102,8 @@ export type { Check, CheckValue, Mend, Status, Verdict, WorkingStep } from './ch
 // Sound to try it on
 
 /** Built-in phrases of our own synthesis, which repeat without a seam. */
-export { PHRASES, type PhraseId, type PhraseInfo, phrase } from './material/phrases.ts'
+export { PHRASES, type PhraseId, type PhraseInfo } from './material/phraseList.ts'
+export { phrase } from './material/phrases.ts'
 /** WAV bytes to samples and back. */
 export { readWav, type WavAudio, writeWav } from './media/wav.ts'
 /** Peak, rms and decibels. */

@@ -1,7 +1,6 @@
 // Opening, starting and saving sets. A file that cannot be read is refused with every reason; what was open stays.
 import type { DemoSet } from '../../src/set/demoSets.ts'
 import { startingSet } from '../../src/set/intents.ts'
-import { readSet } from '../../src/set/read.ts'
 import type { Problem } from '../../src/set/result.ts'
 import type { Intent, ParameterSet } from '../../src/set/types.ts'
 import { writeSet } from '../../src/set/write.ts'
@@ -23,7 +22,7 @@ export async function openSetFile(file: File): Promise<void> {
     return
   }
   try {
-    openText(file.name, await file.text())
+    await openText(file.name, await file.text())
   } catch {
     refuse(file.name, ['the browser could not read it; it may have been moved or changed'])
   }
@@ -34,14 +33,19 @@ export async function openDemoSet(demo: DemoSet): Promise<void> {
   try {
     const response = await fetch(`./${demo.file}`)
     if (!response.ok) throw new Error(response.statusText)
-    openText(demo.name, await response.text())
+    await openText(demo.name, await response.text())
   } catch {
     refuse(demo.name, ['it could not be fetched from where this page came from'])
   }
 }
 
-function openText(name: string, text: string): void {
-  const result = readSet(text)
+/** The reader comes with the first file: its parser with positions is no part of the first load. */
+const loadReader = () => import('../../src/set/read.ts').catch(() => null)
+
+async function openText(name: string, text: string): Promise<void> {
+  const reader = await loadReader()
+  if (reader === null) return refuse(name, ['the part of the page that reads files could not be fetched: try again'])
+  const result = reader.readSet(text)
   if (result.ok) open(`Open ${result.value.name || name}`, result.value)
   else refuse(name, result.problems.map(problemLine))
 }

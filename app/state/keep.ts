@@ -1,5 +1,5 @@
 // Where each key of the page's state is kept, and what is accepted when it is read back. A key that is forgotten here does not compile.
-// The document's sets are judged by src/set/read.ts.
+// The document's sets are judged by src/set/parse.ts.
 import type { DocumentState } from './document.ts'
 import type { SessionState } from './session.ts'
 import type { ViewState } from './view.ts'

@@ -1,7 +1,7 @@
 // The working state across reloads: written to localStorage at each commit and when the page is hidden, under the tab's own id, and
 // read before the first paint. A new tab starts from the state written last. Nothing read here is trusted.
 import { create } from 'zustand'
-import { parseSet } from '../../src/set/read.ts'
+import { parseSet } from '../../src/set/parse.ts'
 import type { ParameterSet } from '../../src/set/types.ts'
 import { type DocumentState, restoreDocument, type SlotId, useDocument } from './document.ts'
 import { accepted, KEEP_DOCUMENT, KEEP_SESSION, KEEP_VIEW, pick } from './keep.ts'

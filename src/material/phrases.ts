@@ -1,32 +1,10 @@
 // The built-in phrases: what an effect is judged on when no recording is at hand. All synthesised here, mono, the same samples each time.
 import { setLevel } from './circular.ts'
 import { drumBar } from './drums.ts'
+import { PHRASES, type PhraseId } from './phraseList.ts'
 import { heldChord, impulses, pinkNoise } from './steady.ts'
 import { bassLine, pluckedChords } from './stringPhrases.ts'
 import { DEFAULT_TONE, type ToneOptions, tone } from './tone.ts'
-
-export type PhraseId = 'pluckedChords' | 'bassLine' | 'drumBar' | 'heldChord' | 'noise' | 'impulse' | 'tone'
-
-export interface PhraseInfo {
-  readonly id: PhraseId
-  readonly label: string
-  /** What it is good for hearing, one sentence. */
-  readonly about: string
-}
-
-export const PHRASES: readonly PhraseInfo[] = [
-  {
-    id: 'pluckedChords',
-    label: 'Plucked chords',
-    about: 'Strummed strings with attack, decay and a wide spectrum: the usual judge of chorus and flanger.',
-  },
-  { id: 'bassLine', label: 'Bass line', about: 'Low notes from 44 Hz: shows what a comb takes from the fundamental.' },
-  { id: 'drumBar', label: 'Drum bar', about: 'Kick, snare and hat: short attacks show echoes and ringing, the noise shows the sweep.' },
-  { id: 'heldChord', label: 'Held chord', about: 'A rich chord that never changes: all that moves is the effect.' },
-  { id: 'noise', label: 'Pink noise', about: 'Equal power in every octave: every notch and peak can be heard.' },
-  { id: 'impulse', label: 'Impulses', about: 'One sample a second: every echo shows in the scope.' },
-  { id: 'tone', label: 'Tone', about: 'A sine of any frequency and level: pitch wobble and steps of the sweep.' },
-]
 
 export const MIN_PHRASE_RATE = 8000
 export const MAX_PHRASE_RATE = 192_000

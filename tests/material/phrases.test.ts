@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import { PHRASES, type PhraseId, phrase } from '../../src/material/phrases.ts'
+import { PHRASES, type PhraseId } from '../../src/material/phraseList.ts'
+import { phrase } from '../../src/material/phrases.ts'
 import { realFft } from '../../src/signal/fft.ts'
 import { peak, rms, toDb } from '../../src/signal/levels.ts'
 import { integratedLoudness } from '../../src/signal/loudness.ts'

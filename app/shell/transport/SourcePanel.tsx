@@ -1,7 +1,7 @@
 // Choosing what is heard: built-in phrases, the user's recording, live input; what goes with each stands beneath.
 import { Popover } from '@base-ui/react/popover'
 import { useState } from 'react'
-import { PHRASES } from '../../../src/material/phrases.ts'
+import { PHRASES } from '../../../src/material/phraseList.ts'
 import { chooseAudioFile, chooseSource } from '../../audio/audition.ts'
 import { ensureMaterial, TONE_ID } from '../../audio/material.ts'
 import { useSession } from '../../state/session.ts'

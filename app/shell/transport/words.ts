@@ -1,5 +1,5 @@
 // Words and numbers of the transport, the same wherever they stand.
-import { PHRASES } from '../../../src/material/phrases.ts'
+import { PHRASES } from '../../../src/material/phraseList.ts'
 import type { Bypass, DelayChange, Source } from '../../state/session.ts'
 
 /** What the source button says. */

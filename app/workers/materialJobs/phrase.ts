@@ -1,5 +1,6 @@
 // Built-in phrases at the context's rate.
-import { PHRASES, phrase } from '../../../src/material/phrases.ts'
+import { PHRASES } from '../../../src/material/phraseList.ts'
+import { phrase } from '../../../src/material/phrases.ts'
 import type { Made } from './memory.ts'
 
 /** Throws RangeError for an id that is no phrase (a mistake of ours, or a kept state of another version). */

@@ -4,7 +4,7 @@ import { measureEqualLoudness } from '../../../app/workers/materialJobs/equalLou
 import { keep, type Made, overviewOf } from '../../../app/workers/materialJobs/memory.ts'
 import { renderPhrase } from '../../../app/workers/materialJobs/phrase.ts'
 import type { Material, MaterialReply } from '../../../app/workers/materialProtocol.ts'
-import { PHRASES } from '../../../src/material/phrases.ts'
+import { PHRASES } from '../../../src/material/phraseList.ts'
 import { writeWav } from '../../../src/media/wav.ts'
 import { defaultSet } from '../../../src/set/defaults.ts'
 import { withAt } from '../../../src/set/path.ts'
