@@ -17,6 +17,7 @@ import {
 import { FLAT_PARAMETERS, flatIndex, flatten } from '../../src/set/flat.ts'
 import { withAt } from '../../src/set/path.ts'
 import type { ParameterSet, Shaper } from '../../src/set/types.ts'
+import { largestDifference } from './close.ts'
 import { changedSet } from './sets.ts'
 
 const FS = 48000
@@ -165,11 +166,8 @@ function clickOf(set: ParameterSet, ...acts: readonly Act[]): number {
   return steepest(y, first - 1, 3 * FS) / steady
 }
 
-function largestDifference(a: readonly Float64Array[], b: readonly Float64Array[], from: number, to: number): number {
-  let most = 0
-  for (const [c, channel] of a.entries()) for (let n = from; n < to; n++) most = Math.max(most, Math.abs(channel[n]! - b[c]![n]!))
-  return most
-}
+const apart = (a: readonly Float64Array[], b: readonly Float64Array[], from: number, to: number): number =>
+  Math.max(...a.map((channel, c) => largestDifference(channel, b[c]!, from, to)))
 
 /** Glides bend the tone up by half, and two signals that cross-fade may each be at their steepest; more would be a break. */
 const NO_CLICK = 2
@@ -266,7 +264,7 @@ describe('a change that was accepted arrives', () => {
     retargetEngine(engine, flatten(to))
     processEngine(engine, input, edited, length - 1000, 1000)
     processEngine(createEngine(to), input, fresh, length)
-    expect(largestDifference(edited, fresh, length - FS / 2, length)).toBeLessThan(1e-7)
+    expect(apart(edited, fresh, length - FS / 2, length)).toBeLessThan(1e-7)
   })
 
   it('before the first sample a change is no change: the result is that of the new set, bit for bit', () => {
@@ -333,7 +331,7 @@ describe('bypass', () => {
   it('hard passes the input as it is, and comes back empty', () => {
     const input = tone(1)
     const { engine, y } = played('hard', input)
-    expect(largestDifference(y, input, FS / 2 + 960, FS)).toBe(0)
+    expect(apart(y, input, FS / 2 + 960, FS)).toBe(0)
     setBypass(engine, 'off')
     const after = [new Float64Array(FS / 2), new Float64Array(FS / 2)]
     processEngine(engine, [], after, FS / 2)
@@ -348,7 +346,7 @@ describe('bypass', () => {
     expect(rms(FS - 500, FS)).toBeLessThan(1e-6)
     const steady = tone(1)
     const { y: dry } = played('tails', steady)
-    expect(largestDifference(dry, steady, FS - 1000, FS)).toBeLessThan(1e-6)
+    expect(apart(dry, steady, FS - 1000, FS)).toBeLessThan(1e-6)
   })
 
   it('wetOnly shuts the dry path and nothing else', () => {
@@ -356,7 +354,7 @@ describe('bypass', () => {
     const { y } = played('wetOnly', input)
     const wet = [new Float64Array(FS), new Float64Array(FS)]
     processEngine(createEngine(changed(start, { 'mix.dry': 0 })), input, wet, FS)
-    expect(largestDifference(y, wet, FS - 1000, FS)).toBeLessThan(1e-9)
+    expect(apart(y, wet, FS - 1000, FS)).toBeLessThan(1e-9)
   })
 })
 
