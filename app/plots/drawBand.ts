@@ -17,24 +17,14 @@ export function bandFill(box: PlotBox, levels: Levels, { low, high }: Band, coun
 }
 
 /** Its two edges as lines. */
-export function bandEdges(box: PlotBox, levels: Levels, { low, high }: Band, count: number, dash?: Dash): Path2D {
+export function bandEdges(box: PlotBox, levels: Levels, { low, high }: Band, count: number): Path2D {
   const path = new Path2D()
-  for (const values of [high, low]) {
-    if (dash) dashedEdge(path, box, levels, values, count, dash)
-    else edge(path, box, levels, values, count, 1, true)
-  }
+  for (const values of [high, low]) edge(path, box, levels, values, count, 1, true)
   return path
 }
 
-/** Columns drawn and left out, in turns: dashes that go by the axis, not by the length of a steep line. */
-export interface Dash {
-  readonly on: number
-  readonly off: number
-}
-
-export const DASH: Dash = { on: 5, off: 4 }
-
-export const isDrawn = ({ on, off }: Dash, column: number): boolean => column % (on + off) < on
+/** Of a second quantity, CSS pixels along its line. */
+export const DASH_PX = [5, 4] as const
 
 /** Adds an edge to a path, from left to right (direction 1) or back (−1); it reaches from the first column's start to the last one's end. */
 function edge(path: Path2D, box: PlotBox, levels: Levels, values: Float64Array, count: number, direction: 1 | -1, anew = false): void {
@@ -49,17 +39,6 @@ function edge(path: Path2D, box: PlotBox, levels: Levels, values: Float64Array, 
   else path.lineTo(ends[direction === 1 ? 0 : 1] as number, first)
   for (let i = from; i >= 0 && i < length; i += direction) path.lineTo(start + (i + 0.5) * width, levelY(box, levels, values[i] as number))
   path.lineTo(ends[direction === 1 ? 1 : 0] as number, levelY(box, levels, values[to] as number))
-}
-
-function dashedEdge(path: Path2D, box: PlotBox, levels: Levels, values: Float64Array, count: number, dash: Dash): void {
-  const width = box.width / count
-  const before = count - values.length
-  for (let i = 0; i + 1 < values.length; i++) {
-    if (!isDrawn(dash, before + i)) continue
-    const x = box.left + (before + i + 0.5) * width
-    if (i === 0 || !isDrawn(dash, before + i - 1)) path.moveTo(x, levelY(box, levels, values[i] as number))
-    path.lineTo(x + width, levelY(box, levels, values[i + 1] as number))
-  }
 }
 
 const WASH = 0.12

@@ -29,8 +29,8 @@ export interface FrequencyPlotSpec<L extends LiveKind, W extends WholeKind> {
   levels(live: JobReply<L> | null, whole: JobReply<W> | null): Levels
   drawWhole(on: Surface, whole: JobReply<W>): void
   drawLive(on: Surface, live: JobReply<L>): void
-  /** Words in the top right corner. */
-  corner(live: JobReply<L>): string
+  /** What lines and shades mean. */
+  legend(live: JobReply<L>): string
   /** What is read at a frequency. */
   cursorWords(at: Under<L>): string
   restWords(live: JobReply<L>, whole: JobReply<W> | null): string
@@ -53,7 +53,6 @@ export interface Surface {
   readonly levels: Levels
 }
 
-const NARROW_PX = 480
 const COMPUTED = 'being computed'
 
 export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec: FrequencyPlotSpec<L, W>, place: PlotPlace): MountedPlot {
@@ -63,7 +62,7 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
   let live: JobReply<L> | null = null
   let whole: JobReply<W> | null = null
   let problem = ''
-  let corner = ''
+  let legend = ''
   let asked = { set: currentSet(), position: -1, columns }
   let dirty = false
   let cursor: number | null = null
@@ -79,9 +78,9 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
       problem = ''
       dirty = true
       if (whole === null) fitLevels()
-      const words = spec.corner(reply)
-      if (words !== corner) plot.redraw()
-      corner = words
+      const words = spec.legend(reply)
+      if (words !== legend) plot.redraw()
+      legend = words
     },
     failed,
   )
@@ -118,9 +117,8 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
     },
     over: (ctx, box, theme) => {
       cornerText(ctx, box, theme, 'topLeft', 'dB')
-      // Where it is narrow the words would run into marks at the top.
-      cornerText(ctx, box, theme, box.width < NARROW_PX * box.ratio ? 'bottomLeft' : 'topRight', corner)
     },
+    legend: () => legend,
     live: (ctx, box, theme) => {
       if (problem !== '') middleText(ctx, box, theme, problem)
       else if (live) spec.drawLive({ ctx, box, theme, levels }, live)

@@ -4,6 +4,7 @@ import uPlot from 'uplot'
 import 'uplot/dist/uPlot.min.css'
 import './plot.css'
 import { canvasFont } from './corner.ts'
+import { drawLegend, legendRoomPx } from './legend.ts'
 import { onPlotTheme, type PlotTheme, plotTheme } from './theme.ts'
 
 /** The plotting area in canvas pixels; `ratio` canvas pixels make a CSS pixel. */
@@ -26,6 +27,8 @@ export interface PlotSpec {
   /** Drawn with axes and series, when they are: what changes with the set. */
   readonly under?: Layer
   readonly over?: Layer
+  /** What lines and shades mean. */
+  legend?(): string
   /** Drawn on a canvas of its own in front, as often as drawLive is called: what changes with the sound. The small text is set. */
   readonly live?: Layer
   /** Part of the width where the cursor stands, 0 to 1; null when it left. */
@@ -77,6 +80,9 @@ export function createPlot(element: HTMLElement, spec: PlotSpec): HostedPlot {
     frontFont = font
     layer(spec.live, frontCtx)(u)
   }
+  const legend: Layer = (ctx, box, theme, plot) => {
+    if (spec.legend) drawLegend(ctx, box, theme, plot, spec.legend())
+  }
   let over = false
   const size = sizeOf(element)
   const u = new uPlot(
@@ -86,11 +92,11 @@ export function createPlot(element: HTMLElement, spec: PlotSpec): HostedPlot {
       axes: spec.axes,
       series: [{}, ...(spec.series ?? [])],
       legend: { show: false },
-      padding: [6, 16, 0, 0],
+      padding: [6, 16, (plot) => (spec.legend ? legendRoomPx(plot, plotTheme()) : 0), 0],
       cursor: { y: false, points: { show: false }, drag: { x: false, y: false } },
       hooks: {
         drawAxes: [layer(spec.under, null)],
-        draw: [layer(spec.over, null), drawLive],
+        draw: [layer(spec.over, null), layer(legend, null), drawLive],
         setCursor: [
           (plot) => {
             const left = plot.cursor.left ?? -1

@@ -1,7 +1,7 @@
 // The open loop at this instant, the limit it must stay under, and the poles it makes.
 import type { LoopTrace, PoleMark } from '../../workers/analysisJobs/loop.ts'
 import { type Columns, partOf } from '../columns.ts'
-import { clipTo, DASH } from '../drawBand.ts'
+import { clipTo, DASH_PX } from '../drawBand.ts'
 import type { Surface } from '../frequencyPlot.ts'
 import { middleText } from '../host/corner.ts'
 import { levelY } from '../levels.ts'
@@ -28,14 +28,14 @@ export function drawLoop(surface: Surface, trace: LoopTrace): void {
   if (second && trace.differs) {
     ctx.strokeStyle = theme.second
     ctx.lineWidth = box.ratio
-    ctx.setLineDash([DASH.on * box.ratio, DASH.off * box.ratio])
+    ctx.setLineDash(DASH_PX.map((px) => px * box.ratio))
     ctx.stroke(curve(surface, second))
   }
   ctx.restore()
   drawPoles(surface, trace.columns, trace.poles)
 }
 
-export function loopCorner({ differs, largest }: LoopTrace): string {
+export function loopLegend({ differs, largest }: LoopTrace): string {
   if (largest === null) return ''
   const parts = ['dots: poles', 'shaded: wherever the sweep stands']
   if (differs) parts.unshift('dashed: second line')

@@ -5,7 +5,7 @@ import { drawWash } from '../drawBand.ts'
 import { type FrequencyPlotSpec, mountFrequencyPlot } from '../frequencyPlot.ts'
 import type { Levels } from '../levels.ts'
 import type { MountPlot } from '../plotTypes.ts'
-import { drawLoop, loopCorner } from './drawLoop.ts'
+import { drawLoop, loopLegend } from './drawLoop.ts'
 import { loopCursorWords, loopNumbers, loopRestWords, loopSummary, loopTable } from './loopWords.ts'
 
 const STEP_DB = 6
@@ -33,7 +33,7 @@ const LOOP: FrequencyPlotSpec<'loop', 'loopReach'> = {
     if (reach.high.length > 0) drawWash(surface, reach)
   },
   drawLive: drawLoop,
-  corner: loopCorner,
+  legend: loopLegend,
   cursorWords: ({ hz, live }) => loopCursorWords(live, hz),
   restWords: loopRestWords,
   summary: loopSummary,

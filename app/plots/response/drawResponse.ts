@@ -1,12 +1,13 @@
-// The response at this instant: line and band, the second channel dashed where it is another one, marks, corner words.
+// The response at this instant: line and band, the second channel dashed where it is another one, marks, legend.
 import type { Trace } from '../../workers/analysisJobs/trace.ts'
-import { bandEdges, bandFill, clipTo, DASH } from '../drawBand.ts'
+import { bandEdges, bandFill, clipTo, DASH_PX } from '../drawBand.ts'
 import type { Surface } from '../frequencyPlot.ts'
 import { drawMarks } from './drawMarks.ts'
 import { traceLine } from './drawTrace.ts'
 
 const BAND = 0.62
 const LINE_PX = 1.75
+const SECOND_PX = 1.25
 
 export function drawResponse(surface: Surface, trace: Trace): void {
   const { ctx, box, theme, levels } = surface
@@ -31,16 +32,17 @@ export function drawResponse(surface: Surface, trace: Trace): void {
   }
   if (second && secondBand && trace.differs) {
     ctx.strokeStyle = theme.second
-    ctx.lineWidth = box.ratio
-    ctx.stroke(traceLine(box, levels, second, trace.dense, DASH))
-    ctx.stroke(bandEdges(box, levels, secondBand, count, DASH))
+    ctx.lineWidth = SECOND_PX * box.ratio
+    ctx.setLineDash(DASH_PX.map((px) => px * box.ratio))
+    ctx.stroke(traceLine(box, levels, second, count - secondBand.low.length))
+    ctx.stroke(bandEdges(box, levels, secondBand, count))
   }
   ctx.restore()
   drawMarks(surface, trace.columns, trace.marks)
 }
 
-/** What stands in the corners: changes seldom, drawn with the axes. */
-export function responseCorner({ differs, smallSignal, drifts, unstable }: Trace): string {
+/** Changes seldom, drawn with the axes. */
+export function responseLegend({ differs, smallSignal, drifts, unstable }: Trace): string {
   const parts = ['shaded: everywhere the sweep reaches']
   if (differs) parts.unshift('dashed: second channel')
   if (drifts) parts.unshift('drift stands as a sine')

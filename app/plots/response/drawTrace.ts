@@ -1,20 +1,18 @@
 // The line of the response where its teeth can be told apart.
 import type { TraceChannel } from '../../workers/analysisJobs/trace.ts'
-import { type Dash, isDrawn } from '../drawBand.ts'
 import type { PlotBox } from '../host/createPlot.ts'
 import { type Levels, levelY } from '../levels.ts'
 
 /** The line over the columns before `dense`; notches and peaks between its points are not cut off. */
-export function traceLine(box: PlotBox, levels: Levels, { db, low, high }: TraceChannel, dense: number, dash?: Dash): Path2D {
+export function traceLine(box: PlotBox, levels: Levels, { db, low, high }: TraceChannel, dense: number): Path2D {
   const path = new Path2D()
   const half = box.width / (2 * low.length)
   const y = (level: number) => levelY(box, levels, level)
   for (let i = 0; i < dense; i++) {
-    if (dash && !isDrawn(dash, i)) continue
     const x = box.left + 2 * i * half
     const start = db[2 * i] as number
     const end = db[2 * i + 2] as number
-    if (i === 0 || (dash && !isDrawn(dash, i - 1))) path.moveTo(x, y(start))
+    if (i === 0) path.moveTo(x, y(start))
     path.lineTo(x + half, y(sharpest(start, db[2 * i + 1] as number, end, low[i] as number, high[i] as number)))
     path.lineTo(x + 2 * half, y(end))
   }

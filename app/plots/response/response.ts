@@ -4,7 +4,7 @@ import { drawWash } from '../drawBand.ts'
 import { type FrequencyPlotSpec, mountFrequencyPlot } from '../frequencyPlot.ts'
 import { levelRange } from '../levels.ts'
 import type { MountPlot } from '../plotTypes.ts'
-import { drawResponse, responseCorner } from './drawResponse.ts'
+import { drawResponse, responseLegend } from './drawResponse.ts'
 import { responseNumbers, responseTable } from './responseTable.ts'
 import { cursorWords, restWords, summaryWords } from './responseWords.ts'
 
@@ -18,7 +18,7 @@ const RESPONSE: FrequencyPlotSpec<'trace', 'reach'> = {
   },
   drawWhole: drawWash,
   drawLive: drawResponse,
-  corner: responseCorner,
+  legend: responseLegend,
   cursorWords,
   restWords,
   summary: summaryWords,

@@ -61,7 +61,7 @@ export function mountSweep({ element, reading }: PlotPlace): MountedPlot {
       axis({
         scale: 'cents',
         side: 1,
-        splits: (min, max, length) => evenSplits(min, max, length, 40),
+        splits: (min, max, length) => (set.sweep.shape === 'drift' ? [] : evenSplits(min, max, length, 40)),
         label: (ct) => `${signedNumber(ct)} ct`,
         colour: 'second',
         grid: false,
@@ -76,8 +76,8 @@ export function mountSweep({ element, reading }: PlotPlace): MountedPlot {
     under: faintVoices,
     over: (ctx, box, theme) => {
       cornerText(ctx, box, theme, 'topLeft', 'ms', theme.now)
-      cornerText(ctx, box, theme, 'topRight', corner(set))
     },
+    legend: () => legend(set),
     onCursor: (part) => {
       cursor = part
       read()
@@ -116,7 +116,7 @@ export function mountSweep({ element, reading }: PlotPlace): MountedPlot {
   const stopView = useView.subscribe(line.changed)
 
   return {
-    summary: () => summary(curves, set.sweep.rateHz),
+    summary: () => summary(curves, set),
     table: () => table(curves),
     numbers: () => ({
       head: [
@@ -143,11 +143,10 @@ function data({ positions, voices }: SweepCurves): [Float64Array, Float64Array, 
   return [positions, voices[0]?.cents ?? empty, voices[0]?.delayMs ?? empty]
 }
 
-function corner({ sweep, voices, layout }: ParameterSet): string {
-  const parts = ['dashed: detune']
+function legend({ sweep, voices, layout }: ParameterSet): string {
+  const parts = sweep.shape === 'drift' ? ['drift stands as a sine'] : ['dashed: detune']
   if (voices.count > 1) parts.push('faint: the other voices')
   else if (layout !== 'mono' && sweep.stereoPhase % 360 !== 0) parts.push('faint: the second channel')
-  if (sweep.shape === 'drift') parts.push('drift stands as a sine')
   return parts.join(' · ')
 }
 
@@ -155,9 +154,10 @@ const shortNumber = (value: number): string => decimal(value, Math.min(4, Math.m
 const signedNumber = (value: number): string => decimal(value, Math.min(4, Math.max(0, decimalsOf(value))), true)
 const decimalsOf = (value: number): number => (String(value).split('.')[1] ?? '').length
 
-function summary({ minMs, maxMs, maxCents, voices }: SweepCurves, rateHz: number): string {
+function summary({ minMs, maxMs, maxCents, voices }: SweepCurves, { sweep }: ParameterSet): string {
   const many = voices.length > 1 ? ` of ${voices.length} voices` : ''
-  return `Sweep: delay${many} from ${milliseconds(minMs)} to ${milliseconds(maxMs)} over a cycle at ${decimal(rateHz, 2)} Hz, the first voice detuned by up to ${decimal(maxCents, 1)} cents.`
+  const bend = sweep.shape === 'drift' ? 'drifting' : `the first voice detuned by up to ${decimal(maxCents, 1)} cents`
+  return `Sweep: delay${many} from ${milliseconds(minMs)} to ${milliseconds(maxMs)} over a cycle at ${decimal(sweep.rateHz, 2)} Hz, ${bend}.`
 }
 
 const ROWS = 32

@@ -9,7 +9,7 @@ export interface VoiceCurve {
   readonly channel: number
   readonly voice: number
   readonly delayMs: Float64Array
-  /** NaN where the read stalls or runs backwards. */
+  /** NaN where the read stalls or runs backwards, and of a drift: the sine in its place bends otherwise. */
   readonly cents: Float64Array
 }
 
@@ -26,9 +26,15 @@ const POINTS = 512
 
 export function sweepCurves(set: ParameterSet): SweepCurves {
   const table = sweepTable(set, POINTS)
+  const drifts = set.sweep.shape === 'drift'
   const closed = (values: readonly (number | null)[]) => Float64Array.from([...values, values[0] ?? null], (value) => value ?? Number.NaN)
   const voices = table.voices.map(
-    ({ channel, voice, delayMs, cents }): VoiceCurve => ({ channel, voice, delayMs: closed(delayMs), cents: closed(cents) }),
+    ({ channel, voice, delayMs, cents }): VoiceCurve => ({
+      channel,
+      voice,
+      delayMs: closed(delayMs),
+      cents: closed(drifts ? cents.map(() => null) : cents),
+    }),
   )
   const delays = voices.flatMap(({ delayMs }) => [Math.min(...delayMs), Math.max(...delayMs)])
   const first = voices[0]?.cents ?? new Float64Array()
@@ -50,7 +56,9 @@ export function sweepAt(set: ParameterSet, position: number): { readonly delayMs
 /** "position 0.38 · 5.21 ms · +4.5 cents" */
 export function sweepWords(set: ParameterSet, position: number): string {
   const at = sweepAt(set, position)
-  return `position ${decimal(position, 2)} · ${milliseconds(at.delayMs)} · ${at.cents === null ? 'not played forwards' : cents(at.cents)}`
+  const place = `position ${decimal(position, 2)} · ${milliseconds(at.delayMs)}`
+  if (set.sweep.shape === 'drift') return place
+  return `${place} · ${at.cents === null ? 'not played forwards' : cents(at.cents)}`
 }
 
 /** A range with a little air, never empty. */

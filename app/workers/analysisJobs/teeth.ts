@@ -18,8 +18,10 @@ const LABEL_APART_PX = 40
 const MARK_APART_PX = 14
 /** Teeth narrower than this are drawn as a band. */
 const DENSE_PX = 4
-/** Over how many pixels the teeth are counted. */
-const WINDOW_PX = 24
+/** A dashed line needs wider ones to be followed. */
+export const DENSE_DASHED_PX = 12
+/** Over how many teeth's width they are counted. */
+const WINDOW_TEETH = 6
 
 /** Marks of one channel's extremes (rising frequency), thinned from the left, each kind by itself; none where teeth are closer than marks. */
 export function marksOf(extremes: readonly Extreme[], columns: Columns): Mark[] {
@@ -59,8 +61,8 @@ export function spacingOf(extremes: readonly Extreme[]): number | null {
   return even ? mean : null
 }
 
-/** The first column from which on teeth are narrower than DENSE_PX everywhere; `count` when there is none. */
-export function denseColumn(extremes: readonly Extreme[], columns: Columns): number {
+/** The first column from which on teeth are narrower than `narrowPx` everywhere; `count` when there is none. */
+export function denseColumn(extremes: readonly Extreme[], columns: Columns, narrowPx = DENSE_PX): number {
   const { count } = columns
   const channels = new Set(extremes.map((extreme) => extreme.channel))
   let dense = count
@@ -70,20 +72,21 @@ export function denseColumn(extremes: readonly Extreme[], columns: Columns): num
       const i = Math.floor(partOf(columns, extreme.frequencyHz) * count)
       if (extreme.channel === channel && i >= 0 && i < count) perColumn[i] = (perColumn[i] ?? 0) + 1
     }
-    dense = Math.min(dense, denseFrom(perColumn))
+    dense = Math.min(dense, denseFrom(perColumn, narrowPx))
   }
   return dense
 }
 
 /** A tooth is one notch and one peak. */
-function denseFrom(perColumn: Uint32Array): number {
+function denseFrom(perColumn: Uint32Array, narrowPx: number): number {
   const count = perColumn.length
-  const least = (2 * WINDOW_PX) / DENSE_PX
+  const windowPx = WINDOW_TEETH * narrowPx
+  const least = 2 * WINDOW_TEETH
   let inWindow = 0
   for (let i = count - 1; i >= 0; i--) {
     inWindow += perColumn[i] ?? 0
-    if (i + WINDOW_PX < count) inWindow -= perColumn[i + WINDOW_PX] ?? 0
-    if (i + WINDOW_PX <= count && inWindow < least) return i + WINDOW_PX
+    if (i + windowPx < count) inWindow -= perColumn[i + windowPx] ?? 0
+    if (i + windowPx <= count && inWindow < least) return i + windowPx
   }
   return 0
 }

@@ -8,7 +8,7 @@ import type { ParameterSet } from '../../../src/set/types.ts'
 import { type Columns, columnPoints, partOf, sameColumns } from '../../plots/columns.ts'
 import { outline } from './outline.ts'
 import { powerDb } from './powerDb.ts'
-import { denseColumn, type Mark, marksOf, spacingOf } from './teeth.ts'
+import { DENSE_DASHED_PX, denseColumn, type Mark, marksOf, spacingOf } from './teeth.ts'
 
 export interface TraceRequest {
   readonly set: ParameterSet
@@ -25,7 +25,7 @@ export interface TraceChannel {
   readonly high: Float64Array
 }
 
-/** Smooth outlines around the columns from `dense` on: never inside any column's levels. */
+/** Smooth outlines around the last columns, from `dense` on or, of the second channel, sooner: never inside any column's levels. */
 export interface DenseBand {
   readonly low: Float64Array
   readonly high: Float64Array
@@ -79,14 +79,21 @@ export function traceJob({ set, position, columns }: TraceRequest): Trace {
     marks: marksOf(first, columns),
     spacingHz: spacingOf(first),
     dense,
-    bands: columnBands.map(({ low, high }) => ({
-      low: outline(low.subarray(dense), Math.min),
-      high: outline(high.subarray(dense), Math.max),
-    })),
+    bands: columnBands.map((band, channel) => (channel === 0 ? outlines(band, dense) : dashedOutlines(band, extremes, columns))),
     smallSignal: frozen.smallSignal,
     drifts: set.sweep.shape === 'drift',
     unstable: buildsUp(frozen),
   }
+}
+
+function outlines({ low, high }: TraceChannel, from: number, widen?: number): DenseBand {
+  return { low: outline(low.subarray(from), Math.min, widen), high: outline(high.subarray(from), Math.max, widen) }
+}
+
+/** Teeth that a dashed line could not follow are outlined, wide enough to bridge them. */
+function dashedOutlines(band: TraceChannel, extremes: readonly Extreme[], columns: Columns): DenseBand {
+  const own = extremes.filter(({ channel }) => channel === 1)
+  return outlines(band, denseColumn(own, columns, DENSE_DASHED_PX), DENSE_DASHED_PX / 2)
 }
 
 /** No read and no filter of the loop gives back more than it gets: below 1, the gain alone decides. */

@@ -61,11 +61,14 @@ describe('the trace of the response', () => {
       position: 0.3,
       columns,
     })
+    expect(bands[0]?.low).toHaveLength(columns.count - dense)
     channels.forEach(({ low, high }, c) => {
-      expect(bands[c]?.low).toHaveLength(columns.count - dense)
-      for (let i = dense; i < columns.count; i++) {
-        expect(bands[c]?.low[i - dense]).toBeLessThanOrEqual((low[i] as number) + 1e-9)
-        expect(bands[c]?.high[i - dense]).toBeGreaterThanOrEqual((high[i] as number) - 1e-9)
+      const from = columns.count - (bands[c]?.low.length ?? 0)
+      // A dashed line is given up sooner than a solid one.
+      if (c === 1) expect(from).toBeLessThan(dense)
+      for (let i = from; i < columns.count; i++) {
+        expect(bands[c]?.low[i - from]).toBeLessThanOrEqual((low[i] as number) + 1e-9)
+        expect(bands[c]?.high[i - from]).toBeGreaterThanOrEqual((high[i] as number) - 1e-9)
       }
     })
     const few = traceJob({ set: comb(), position: 0, columns })
