@@ -32,9 +32,9 @@ function frozenDelayMs(set: ParameterSet, phi: number, voice: number): number {
   return delayMs(set, { offsetMs: voiceOffsetMs(set.voices, voice), sweep: frozenShapeValue(set.sweep, phi) })
 }
 
-/** Cents by which a delay growing at `slope` seconds a second bends pitch, null from 1 on, where nothing is played forwards. Source: J. O. Smith, PASP, "Time-Varying Delay-Line Reads". */
+/** Cents by which a delay growing at `slope` seconds a second bends pitch, null from 1 on, where nothing is played forwards, and for a jump without an edge. Source: J. O. Smith, PASP, "Time-Varying Delay-Line Reads". */
 export function centsOfSlope(slope: number): number | null {
-  if (!(slope < 1)) return null
+  if (!(slope < 1 && slope > -Infinity)) return null
   return slope === 0 ? 0 : (1200 * Math.log1p(-slope)) / Math.LN2
 }
 
