@@ -1,4 +1,4 @@
-// The audio wrapper, loaded after the first paint: the page can be read and edited before it can sound. Once it is there, a press finds it at
+// The audio wrapper, loaded when a hand comes near: the page can be read and edited before it can sound. Once it is there, a press finds it at
 // once; a press that comes before waits for it, which the browser's memory of the press outlasts.
 type Wrapper = typeof import('standardized-audio-context')
 
@@ -21,11 +21,4 @@ export function loadWrapper(): Promise<Wrapper> {
     },
   )
   return loading
-}
-
-/** Fetches it while nothing else is to be done. */
-export function prepareSound(): void {
-  const load = () => void loadWrapper().catch(() => {})
-  if (typeof requestIdleCallback === 'function') requestIdleCallback(load, { timeout: 2000 })
-  else setTimeout(load, 200)
 }

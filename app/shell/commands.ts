@@ -5,8 +5,7 @@ import { dropGesture, useDraft } from '../state/draft.ts'
 import { holdAt, shownPosition } from '../state/position.ts'
 import { useView } from '../state/view.ts'
 import { announce } from './announce.ts'
-import { chooseSetFile } from './SetMenu.tsx'
-import { saveSet } from './setFiles.ts'
+import { chooseSetFile, saveSet } from './setFiles.ts'
 
 export interface Command {
   readonly keys: string

@@ -7,13 +7,19 @@ import { writeSet } from '../../src/set/write.ts'
 import { commit, committedSet } from '../state/document.ts'
 import { endGesture } from '../state/draft.ts'
 import { announce } from './announce.ts'
-import { canPickPlace, download, type PickedPlace, pickPlace, writeTo } from './fileAccess.ts'
+import { canPickPlace, chooseFile, download, type PickedPlace, pickPlace, writeTo } from './fileAccess.ts'
 import { say } from './messages.ts'
 
 /** Nothing this long is a set: it is refused before it is read. */
 const LARGEST_FILE_BYTES = 1024 * 1024
 
 let place: PickedPlace | null = null
+
+/** Lets the user choose a set file and opens it. */
+export async function chooseSetFile(): Promise<void> {
+  const file = await chooseFile('.json,application/json')
+  if (file) await openSetFile(file)
+}
 
 /** Opens a chosen or dropped set file as one step of history. */
 export async function openSetFile(file: File): Promise<void> {

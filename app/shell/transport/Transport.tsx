@@ -2,19 +2,19 @@
 import './transport.css'
 import './source.css'
 import { useEffect } from 'react'
-import { prepareSound } from '../../audio/wrapper.ts'
+import { loadWrapper } from '../../audio/wrapper.ts'
+import { useSession } from '../../state/session.ts'
 import { AudioNotices } from './AudioNotices.tsx'
 import { BypassButton, EqualLoudnessButton, MuteButton, PlayButton } from './buttons.tsx'
-import { Caution } from './Caution.tsx'
+import { Caution, loadCaution } from './Caution.tsx'
 import { LevelControl } from './LevelControl.tsx'
 import { ListeningMenu } from './ListeningMenu.tsx'
 import { MeterPair } from './MeterPair.tsx'
 import { SourcePanel } from './SourcePanel.tsx'
 
 export function Transport() {
-  useEffect(prepareSound, [])
   return (
-    <section className="cw-transport" aria-label="Sound">
+    <Sound>
       <SourcePanel />
       <PlayButton />
       <BypassGroup />
@@ -22,16 +22,13 @@ export function Transport() {
       <LevelControl />
       <MeterPair />
       <MuteButton />
-      <Caution />
-      <AudioNotices />
-    </section>
+    </Sound>
   )
 }
 
 export function TransportNarrow() {
-  useEffect(prepareSound, [])
   return (
-    <section className="cw-transport cw-transport--narrow" aria-label="Sound">
+    <Sound narrow>
       <PlayButton />
       <SourcePanel>
         <div className="cw-source-listening">
@@ -42,10 +39,39 @@ export function TransportNarrow() {
       </SourcePanel>
       <LevelControl />
       <MuteButton />
+    </Sound>
+  )
+}
+
+interface SoundProps {
+  readonly narrow?: boolean
+  readonly children: React.ReactNode
+}
+
+/** What sound needs comes when a hand or the focus is near, at the latest with the first press or key anywhere: not with the page itself. */
+function Sound({ narrow = false, children }: SoundProps) {
+  useEffect(() => {
+    const done = new AbortController()
+    for (const sign of ['pointerdown', 'keydown']) addEventListener(sign, fetchSound, { capture: true, once: true, signal: done.signal })
+    return () => done.abort()
+  }, [])
+  return (
+    <section
+      className={narrow ? 'cw-transport cw-transport--narrow' : 'cw-transport'}
+      aria-label="Sound"
+      onPointerEnter={fetchSound}
+      onFocus={fetchSound}
+    >
+      {children}
       <Caution />
       <AudioNotices />
     </section>
   )
+}
+
+function fetchSound(): void {
+  void loadWrapper().catch(() => {})
+  if (!useSession.getState().cautionRead) void loadCaution().catch(() => {})
 }
 
 const BypassGroup = () => (

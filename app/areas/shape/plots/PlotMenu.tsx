@@ -1,12 +1,11 @@
 // What can be had of a plot besides looking at it.
-import { Menu } from '@base-ui/react/menu'
-import { useState } from 'react'
 import type { MountedPlot } from '../../../plots/plotTypes.ts'
-import { csvText, plotFileName, saveFile, savePicture } from '../../../plots/saveFile.ts'
-import { currentSet } from '../../../state/current.ts'
+import { usePopup } from '../../../shell/usePopup.ts'
 import type { PlotId } from '../../../state/view.ts'
 
-interface PlotMenuProps {
+const loadPopup = () => import('./PlotPopup.tsx').then((part) => part.PlotPopup)
+
+export interface PlotMenuProps {
   readonly id: PlotId
   readonly label: string
   readonly mounted: MountedPlot | null
@@ -14,42 +13,12 @@ interface PlotMenuProps {
   onTable(asTable: boolean): void
 }
 
-export function PlotMenu({ id, label, mounted, asTable, onTable }: PlotMenuProps) {
-  const [problem, setProblem] = useState('')
-  const name = (ending: string) => plotFileName(currentSet().name, id, ending)
-  const numbers = () => {
-    if (mounted) saveFile(name('csv'), new Blob([csvText(mounted.numbers())], { type: 'text/csv' }))
-  }
-  const picture = () => {
-    if (!mounted) return
-    setProblem('')
-    savePicture(name('png'), mounted.picture()).catch((error: Error) => setProblem(`The picture was not saved: ${error.message}`))
-  }
-  return (
-    <>
-      <Menu.Root>
-        <Menu.Trigger className="cw-button cw-plot-more" aria-label={`${label}: table and files`}>
-          ⋯
-        </Menu.Trigger>
-        <Menu.Portal>
-          <Menu.Positioner align="end" sideOffset={4} className="cw-plot-menu-place">
-            <Menu.Popup className="cw-plot-menu">
-              <Menu.Item className="cw-plot-menu-item" onClick={() => onTable(!asTable)}>
-                {asTable ? 'Show the plot' : 'Show as a table'}
-              </Menu.Item>
-              <Menu.Item className="cw-plot-menu-item" onClick={picture}>
-                Save the picture (PNG)
-              </Menu.Item>
-              <Menu.Item className="cw-plot-menu-item" onClick={numbers}>
-                Save the numbers (CSV)
-              </Menu.Item>
-            </Menu.Popup>
-          </Menu.Positioner>
-        </Menu.Portal>
-      </Menu.Root>
-      <p className="cw-unseen" role="status">
-        {problem}
-      </p>
-    </>
+export function PlotMenu(props: PlotMenuProps) {
+  const [Popup, closed] = usePopup(loadPopup, 'menu')
+  const button = (
+    <button type="button" className="cw-button cw-plot-more" aria-label={`${props.label}: table and files`} {...closed}>
+      ⋯
+    </button>
   )
+  return Popup ? <Popup {...props} button={button} /> : button
 }

@@ -1,13 +1,13 @@
 // One plot with its tabs, its reading line, and its menu: table, picture, numbers.
-import { Tabs } from '@base-ui/react/tabs'
-import { useState } from 'react'
-import { PLOTS, plotEntry } from '../../../plots/plotList.ts'
+import { useId, useState } from 'react'
+import { plotEntry } from '../../../plots/plotList.ts'
 import type { MountedPlot } from '../../../plots/plotTypes.ts'
 import { type PlotId, useView } from '../../../state/view.ts'
 import { HoldButton } from './HoldButton.tsx'
 import { PlotBody } from './PlotBody.tsx'
 import { PlotMenu } from './PlotMenu.tsx'
 import { PlotTableView } from './PlotTableView.tsx'
+import { PlotTabs, plotTabId } from './PlotTabs.tsx'
 
 /** Shows a plot in a pane; the other pane takes over what stood there when it showed the same. */
 function showPlot(index: 0 | 1, id: PlotId): void {
@@ -32,25 +32,25 @@ export function PlotPane({ index, alone }: PlotPaneProps) {
   const releases = useView(({ held, plots }) => held !== null && index === 0 && (alone || plots[1] !== 'sweep'))
   const [mounted, setMounted] = useState<MountedPlot | null>(null)
   const [reading, setReading] = useState<HTMLElement | null>(null)
+  const panelId = useId()
   const [asTable, setAsTable] = useState(false)
   return (
-    <Tabs.Root className="cw-plot-pane" value={id} onValueChange={(value: PlotId) => showPlot(index, value)}>
+    <div className="cw-plot-pane">
       <div className="cw-plot-head">
-        <Tabs.List className="cw-plot-tabs" activateOnFocus aria-label={index === 0 ? 'Upper plot' : 'Lower plot'}>
-          {PLOTS.map((plot) => (
-            <Tabs.Tab key={plot.id} value={plot.id} className="cw-plot-tab">
-              {plot.label}
-            </Tabs.Tab>
-          ))}
-        </Tabs.List>
+        <PlotTabs
+          label={index === 0 ? 'Upper plot' : 'Lower plot'}
+          chosen={id}
+          panelId={panelId}
+          onChoose={(value) => showPlot(index, value)}
+        />
         <p className="cw-plot-reading" ref={setReading} />
         {id === 'sweep' || releases ? <HoldButton /> : null}
         <PlotMenu id={id} label={label} mounted={mounted} asTable={asTable} onTable={setAsTable} />
       </div>
-      <Tabs.Panel className="cw-plot-panel" value={id} tabIndex={-1} keepMounted={false}>
+      <div className="cw-plot-panel" role="tabpanel" id={panelId} aria-labelledby={plotTabId(panelId, id)}>
         {reading ? <PlotBody key={id} id={id} label={label} reading={reading} hidden={asTable} onMounted={setMounted} /> : null}
         {asTable && mounted ? <PlotTableView mounted={mounted} /> : null}
-      </Tabs.Panel>
-    </Tabs.Root>
+      </div>
+    </div>
   )
 }
