@@ -32,7 +32,7 @@ export function noteWords(hz: number): string {
 
 /** Milliseconds with as many digits as mean something: "5.21 ms", "0.052 ms". */
 export function milliseconds(ms: number): string {
-  return `${decimal(ms, Math.abs(ms) < 0.1 ? 3 : Math.abs(ms) < 100 ? 2 : 1)} ms`
+  return `${decimal(ms, Math.abs(ms) < 0.0995 ? 3 : Math.abs(ms) < 100 ? 2 : 1)} ms`
 }
 
 /** Cents: one decimal below 100. */

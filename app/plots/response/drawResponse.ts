@@ -42,8 +42,8 @@ export function drawResponse(surface: Surface, trace: Trace): void {
 }
 
 /** Changes seldom, drawn with the axes. */
-export function responseLegend({ differs, smallSignal, drifts, unstable }: Trace): string {
-  const parts = ['shaded: everywhere the sweep reaches']
+export function responseLegend({ differs, smallSignal, drifts, stands, unstable }: Trace): string {
+  const parts = stands ? ['the sweep stands still'] : ['shaded: everywhere the sweep reaches']
   if (differs) parts.unshift('dashed: second channel')
   if (drifts) parts.unshift('drift stands as a sine')
   if (unstable) parts.unshift('the loop builds up here')

@@ -16,7 +16,9 @@ const RESPONSE: FrequencyPlotSpec<'trace', 'reach'> = {
     const seen = reach ?? trace?.channels[0]
     return seen ? levelRange(Math.min(...seen.low), Math.max(...seen.high)) : levelRange(-18, 6)
   },
-  drawWhole: drawWash,
+  drawWhole(surface, reach) {
+    if (!reach.stands) drawWash(surface, reach)
+  },
   drawLive: drawResponse,
   legend: responseLegend,
   cursorWords,

@@ -18,6 +18,8 @@ export interface Reach {
   readonly columns: Columns
   readonly low: Float64Array
   readonly high: Float64Array
+  /** Nothing moves: the trace is all there is. */
+  readonly stands: boolean
 }
 
 /** Frequencies a slice takes, so that a newer request waits some milliseconds at most. */
@@ -53,7 +55,11 @@ export function* reachJob({ set, columns }: ReachRequest): Generator<undefined, 
   const from = crowded(set, columns)
   low.set(outline(low.subarray(from), Math.min), from)
   high.set(outline(high.subarray(from), Math.max), from)
-  return { columns, low, high }
+  return { columns, low, high, stands: sweepStands(set) }
+}
+
+export function sweepStands({ sweep }: ParameterSet): boolean {
+  return sweep.rateHz === 0 || (sweep.law === 'time' ? sweep.depthMs : sweep.depthOctaves) === 0
 }
 
 /** Teeth of the longest delay are narrower than this from the column on which `crowded` gives: between its points a column then hides some. */

@@ -8,6 +8,7 @@ import type { ParameterSet } from '../../../src/set/types.ts'
 import { type Columns, columnPoints, partOf, sameColumns } from '../../plots/columns.ts'
 import { outline } from './outline.ts'
 import { powerDb } from './powerDb.ts'
+import { sweepStands } from './reach.ts'
 import { DENSE_DASHED_PX, denseColumn, type Mark, marksOf, spacingOf } from './teeth.ts'
 
 export interface TraceRequest {
@@ -49,6 +50,7 @@ export interface Trace {
   readonly smallSignal: boolean
   /** The sweep drifts: its position is that of a sine in its place. */
   readonly drifts: boolean
+  readonly stands: boolean
   /** Held here the loop builds up: no steady sound has these levels. */
   readonly unstable: boolean
 }
@@ -82,6 +84,7 @@ export function traceJob({ set, position, columns }: TraceRequest): Trace {
     bands: columnBands.map((band, channel) => (channel === 0 ? outlines(band, dense) : dashedOutlines(band, extremes, columns))),
     smallSignal: frozen.smallSignal,
     drifts: set.sweep.shape === 'drift',
+    stands: sweepStands(set),
     unstable: buildsUp(frozen),
   }
 }

@@ -33,7 +33,7 @@ export interface Geometry {
   readonly wires: readonly Wire[]
   /** Where one wire leaves another. */
   readonly dots: readonly { readonly x: number; readonly y: number }[]
-  /** The two loops cross: box of the crossing; null with one line. */
+  /** Box of the two loops' crossing; null where none goes over to the other. */
   readonly cross: Box | null
   readonly labels: Readonly<Record<'in' | 'out' | 'dry' | 'loopReads', { readonly x: number; readonly y: number }>>
 }
@@ -121,7 +121,7 @@ export function geometryOf(set: ParameterSet, width: number): Geometry {
   const loopTapX = Math.min(right(line) - 1, Math.max(right(damping) + d.loopGap, line.x + line.width * 0.9))
 
   const boxes = { inputShaper, line, voices, wetTone, mix, outputShaper, feedback, loopShaper, lowCut, damping }
-  const points: Points = { inX: d.in, inputTap, sumX, lineTap, loopTapX, end, cross: stereo ? cross : null }
+  const points: Points = { inX: d.in, inputTap, sumX, lineTap, loopTapX, end, cross: stereo && set.loop.crossFeed > 0 ? cross : null }
   const dryFrom = set.mix.dryTap === 'input' ? inputTap : lineTap
   return {
     width: end + d.in,

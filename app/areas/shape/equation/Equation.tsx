@@ -46,11 +46,24 @@ const inputName = (set: ParameterSet) => (hasInput(set) ? 'u' : 'x')
 const manyVoices = (set: ParameterSet) => set.voices.count > 1
 const voiceSub = (set: ParameterSet) => (manyVoices(set) ? 'v' : '')
 
-function Line({ label, children }: { readonly label: string; readonly children: ReactNode }) {
+interface LineParts {
+  readonly label: string
+  readonly children: ReactNode
+  /** What may stand on a line of its own where the width is short: browsers break no formula by themselves. */
+  readonly more?: readonly ReactNode[]
+}
+
+function Line({ label, children, more = [] }: LineParts) {
   return (
-    <math className="cw-eq" aria-label={label}>
-      <mrow>{children}</mrow>
-    </math>
+    // biome-ignore lint/a11y/useSemanticElements: an equation is no set of form fields.
+    <div className="cw-eq" role="group" aria-label={label}>
+      {[children, ...more].map((part, i) => (
+        // biome-ignore lint/suspicious/noArrayIndexKey: the parts of one equation keep their order.
+        <math key={i}>
+          <mrow>{part}</mrow>
+        </math>
+      ))}
+    </div>
   )
 }
 
@@ -92,13 +105,36 @@ function OutputLine({ set }: LineProps) {
       </mrow>,
     )
   const inside = terms.length === 0 ? <mn>0</mn> : <Row>{terms}</Row>
-  return (
-    <Line label="Output">
+  const start = (
+    <>
       <Signal of="y" sub={outSub(set)} />
       <mo>=</mo>
       {gain !== 1 && <Now value={gain} />}
-      {gain !== 1 && set.mix.shaper === null ? <Call name={<mrow />}>{inside}</Call> : shaped(set.mix.shaper, inside)}
+    </>
+  )
+  if (set.mix.shaper !== null)
+    return (
+      <Line label="Output" more={[shaped(set.mix.shaper, inside)]}>
+        {start}
+      </Line>
+    )
+  const [first = <mn>0</mn>, ...rest] = terms
+  const last = rest.length - 1
+  return (
+    <Line label="Output" more={gain === 1 ? rest : rest.map((term, i) => (i === last ? closed(term) : term))}>
+      {start}
+      {gain !== 1 && <mo stretchy="false">(</mo>}
+      {gain !== 1 && last < 0 ? closed(first) : first}
     </Line>
+  )
+}
+
+function closed(term: ReactNode): ReactNode {
+  return (
+    <>
+      {term}
+      <mo stretchy="false">)</mo>
+    </>
   )
 }
 
@@ -132,34 +168,54 @@ function WriteLine({ set }: LineProps) {
   const { loop } = set
   const sub = lineSub(set)
   const cross = set.layout === 'stereo' ? loop.crossFeed : 0
+  const fedBack: ReactNode[] = []
+  if (loop.feedback !== 0 && cross === 0)
+    fedBack.push(
+      <mrow>
+        <Signed value={loop.feedback} />
+        <mo form="infix">·</mo>
+        <LoopRead set={set} sub={sub} />
+      </mrow>,
+    )
+  if (loop.feedback !== 0 && cross > 0) {
+    const over = (
+      <mrow>
+        <Now value={cross} />
+        <LoopRead set={set} sub="1−c" />
+        <mo stretchy="false">)</mo>
+      </mrow>
+    )
+    const start = (
+      <>
+        <Signed value={loop.feedback} />
+        <mo stretchy="false">(</mo>
+      </>
+    )
+    if (cross === 1)
+      fedBack.push(
+        <mrow>
+          {start}
+          {over}
+        </mrow>,
+      )
+    else
+      fedBack.push(
+        <mrow>
+          {start}
+          <Now value={1 - cross} />
+          <LoopRead set={set} sub={sub} />
+        </mrow>,
+        <mrow>
+          <mo form="infix">+</mo>
+          {over}
+        </mrow>,
+      )
+  }
   return (
-    <Line label="Line">
+    <Line label="Line" more={fedBack}>
       <Signal of="w" sub={sub} />
       <mo>=</mo>
       <Signal of={inputName(set)} sub={sub} />
-      {loop.feedback !== 0 && (
-        <>
-          <Signed value={loop.feedback} />
-          {cross > 0 ? (
-            <Call name={<mrow />}>
-              {cross < 1 && (
-                <>
-                  <Now value={1 - cross} />
-                  <LoopRead set={set} sub={sub} />
-                  <mo>+</mo>
-                </>
-              )}
-              <Now value={cross} />
-              <LoopRead set={set} sub="1−c" />
-            </Call>
-          ) : (
-            <mrow>
-              <mo>·</mo>
-              <LoopRead set={set} sub={sub} />
-            </mrow>
-          )}
-        </>
-      )}
     </Line>
   )
 }
@@ -187,33 +243,50 @@ function DelayLine({ set }: LineProps) {
       )}
     </mrow>
   )
-  return (
-    <Line label="Delay">
+  const unit = <mtext className="cw-eq-unit">samples</mtext>
+  const start = (
+    <>
       <DelayName sub={`${outSub(set) ?? ''}${voiceSub(set)}`} />
       <mo>=</mo>
-      {depth === 0 ? (
-        middle
-      ) : sweep.law === 'time' ? (
+    </>
+  )
+  if (depth === 0)
+    return (
+      <Line label="Delay">
+        {start}
+        {middle}
+        {unit}
+      </Line>
+    )
+  if (sweep.law === 'time')
+    return (
+      <Line
+        label="Delay"
+        more={[
+          <mrow key="sweep">
+            <mo form="infix">+</mo>
+            <Now value={depth} unit="samples" />
+            {shape}
+          </mrow>,
+          unit,
+        ]}
+      >
+        {start}
+        {middle}
+      </Line>
+    )
+  return (
+    <Line label="Delay" more={[unit]}>
+      {start}
+      {spread ? <Call name={<mrow />}>{middle}</Call> : middle}
+      <mo>·</mo>
+      <msup>
+        <mn>2</mn>
         <mrow>
-          {middle}
-          <mo>+</mo>
-          <Now value={depth} unit="samples" />
+          <Now value={depth} />
           {shape}
         </mrow>
-      ) : (
-        <mrow>
-          {spread ? <Call name={<mrow />}>{middle}</Call> : middle}
-          <mo>·</mo>
-          <msup>
-            <mn>2</mn>
-            <mrow>
-              <Now value={depth} />
-              {shape}
-            </mrow>
-          </msup>
-        </mrow>
-      )}
-      <mtext className="cw-eq-unit">samples</mtext>
+      </msup>
     </Line>
   )
 }
