@@ -15,7 +15,7 @@ import {
 import { MAX_DELAY_MS } from '../../../src/set/delayRange.ts'
 import { FLAT_LENGTH, FLAT_PARAMETERS, flatIndex, flatten } from '../../../src/set/flat.ts'
 import type { ParameterSet } from '../../../src/set/types.ts'
-import { applyGuard, createGuard, forgetLatch, type Guard, resumeGuard } from './guard.ts'
+import { applyGuard, createGuard, forgetLatch, type Guard, guardRests, resumeGuard } from './guard.ts'
 import {
   applyListening,
   createListening,
@@ -166,9 +166,14 @@ function renderPiece(audition: Audition, input: readonly Float32Array[], output:
   const outRight = audition.output[1]
   renderPlayer(player, inLeft, inRight, input, at, count)
   meterInput(meters, inLeft, inRight, count)
-  processEngine(engine, audition.input, audition.output, count)
-  if (audition.settings.equalLive) measureLive(audition, count)
-  if (applyGuard(guard, outLeft, outRight, count)) resetEngine(engine)
+  if (guardRests(guard, count)) {
+    outLeft.fill(0, 0, count)
+    outRight.fill(0, 0, count)
+  } else {
+    processEngine(engine, audition.input, audition.output, count)
+    if (audition.settings.equalLive) measureLive(audition, count)
+    if (applyGuard(guard, outLeft, outRight, count)) resetEngine(engine)
+  }
   meterOutput(meters, outLeft, outRight, count)
   applyListening(listening, outLeft, outRight, output, at, count)
 }

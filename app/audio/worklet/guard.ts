@@ -2,10 +2,10 @@
 // listening level, so that neither a hidden tab nor a busy page switches it off.
 //
 // Limit: +12 dBFS at the effect's output (4.0), or a sample that is no number. The first sample beyond it starts a fade that is
-// silent 5 ms later (a sample that is no number is never passed on). The effect's memory is then cleared, and the effect runs on unheard
-// ("probing"). It is heard again, over 200 ms, when its output has stayed 6 dB below the limit for one second. An output that runs away
-// again within ten seconds of that stays muted until the set changes or somebody resumes it: otherwise a slowly growing loop would come
-// back every few seconds. Until the fade ends, the cap in listening.ts holds what is heard to +6 dB above the listening level.
+// silent 5 ms later (a sample that is no number is never passed on). The effect's memory is then cleared, which takes a while for long lines,
+// so the effect rests for a quarter of a second before it runs on unheard ("probing"). It is heard again, over 200 ms, when its output has
+// stayed 6 dB below the limit for one second. An output that runs away again within ten seconds of that stays muted until the set changes or
+// somebody resumes it: otherwise a slowly growing loop would come back every few seconds. Until the fade ends, the cap in listening.ts holds what is heard to +6 dB above the listening level.
 import { createRamp, multiplyByRamp, type Ramp, rampTo } from './ramp.ts'
 
 export const GUARD_LIMIT_DB = 12
@@ -15,6 +15,7 @@ const CLOSE_S = 0.005
 const OPEN_S = 0.2
 const PROBE_S = 1
 const AGAIN_S = 10
+const REST_S = 0.25
 
 export const GUARD_OPEN = 0
 export const GUARD_CLOSING = 1
@@ -35,6 +36,8 @@ export interface Guard {
   /** Largest finite |sample| seen since it tripped. */
   peak: number
   safeFrames: number
+  /** Frames for which the effect is not run after it was cleared. */
+  restFrames: number
   sinceOpened: number
   /** The ten seconds, in frames. */
   readonly againFrames: number
@@ -51,6 +54,7 @@ export function createGuard(sampleRate: number, maxFrames: number): Guard {
     trips: 0,
     peak: 0.5,
     safeFrames: 0,
+    restFrames: 0,
     sinceOpened: Math.round(AGAIN_S * sampleRate),
     againFrames: Math.round(AGAIN_S * sampleRate),
     gain: createRamp(1),
@@ -73,7 +77,19 @@ export function applyGuard(guard: Guard, left: Float64Array, right: Float64Array
   right.fill(0, 0, frames)
   guard.safeFrames = unsafe ? 0 : guard.safeFrames + frames
   if (!guard.latched && guard.safeFrames >= PROBE_S * guard.sampleRate) open(guard)
+  if (beyond) rest(guard)
   return beyond
+}
+
+/** Whether the effect rests for these frames: it need not be run, and what stands in for its output is silence. */
+export function guardRests(guard: Guard, frames: number): boolean {
+  if (guard.restFrames <= 0) return false
+  guard.restFrames -= frames
+  return true
+}
+
+function rest(guard: Guard): void {
+  guard.restFrames = Math.round(REST_S * guard.sampleRate)
 }
 
 /** The set changed: what ran away before may not any more. */
@@ -127,12 +143,14 @@ function close(guard: Guard, left: Float64Array, right: Float64Array, from: numb
   if (gain.left > 0) return false
   guard.state = GUARD_PROBING
   guard.safeFrames = 0
+  rest(guard)
   return true
 }
 
 function open(guard: Guard): void {
   guard.state = GUARD_OPEN
   guard.sinceOpened = 0
+  guard.restFrames = 0
   rampTo(guard.gain, 1, OPEN_S * guard.sampleRate)
 }
 

@@ -22,6 +22,8 @@ class AuditionProcessor extends AudioWorkletProcessor {
   /** The page has read the last report and can be seen. */
   private mayReport = true
   private hidden = false
+  /** A report came while the last was still unread: it goes with the answer, so that the one saying "paused" is never lost. */
+  private waiting = false
 
   constructor({ processorOptions }: { readonly processorOptions: ProcessorOptions }) {
     super()
@@ -47,15 +49,22 @@ class AuditionProcessor extends AudioWorkletProcessor {
     else if (this.mayReport) {
       this.mayReport = false
       this.port.postMessage(report)
-    }
+    } else this.waiting = true
   }
 
   private take(message: ToProcessor): void {
     if (message.type === 'close') this.closed = true
-    else if (message.type === 'read') this.mayReport = true
+    else if (message.type === 'read') this.read()
     else if (message.type === 'hidden') this.hidden = message.hidden
     else if (this.audition !== null) receive(this.audition, message)
     this.returnUnused()
+  }
+
+  private read(): void {
+    this.mayReport = true
+    if (!this.waiting || this.audition === null) return
+    this.waiting = false
+    this.publish(this.audition.report)
   }
 
   /** Between quanta, with whatever message comes next: memory that is no longer read goes home. */
