@@ -1,4 +1,5 @@
-// loop.poles: the largest pole radius over the sweep, for small signals. A value, not judged.
+// loop.poles: the largest pole radius over the sweep, for small signals. A value, judged under loop.stability;
+// at 1 and above it is at least a note, because nothing that grows should read as holding.
 import type { SweptPole } from '../analysis/polesSweep.ts'
 import { labelOf } from './limits.ts'
 import { loopFigures, noLoopReason } from './loopFigures.ts'
@@ -13,6 +14,7 @@ export const loopPoles: CheckFunction = (input): Check => {
   const searched = pole.bound > pole.radius
   return {
     ...base,
+    status: pole.radius >= 1 ? 'note' : 'holds',
     value: searched ? [pole.radius, pole.bound] : pole.radius,
     text: poleText(input, pole, searched),
     working: [
