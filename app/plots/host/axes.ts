@@ -8,7 +8,8 @@ export interface AxisSpec {
   readonly side: 1 | 2 | 3
   /** Where the lines and labels stand. */
   splits(min: number, max: number, lengthPx: number): number[]
-  label(value: number): string
+  /** `all`: everything that is labelled beside it. */
+  label(value: number, all: readonly number[]): string
   /** Colour token of the labels; soft when absent. */
   readonly colour?: 'soft' | 'now' | 'second'
   readonly grid?: boolean
@@ -30,7 +31,7 @@ export function axis({ scale, side, splits, label, colour = 'soft', grid = true,
     border: { show: false },
     splits: (u, _axis, min, max) => splits(min, max, side === 2 ? u.bbox.width / devicePixelRatio : u.bbox.height / devicePixelRatio),
     filter: (_u, values) => values,
-    values: (_u, values) => values.map(label),
+    values: (_u, values) => values.map((value) => label(value, values)),
   }
 }
 

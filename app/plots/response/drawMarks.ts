@@ -7,6 +7,8 @@ import { hertz } from '../words.ts'
 
 const SIZE_PX = 4
 const AWAY_PX = 5
+/** Of the corner's words. */
+const WORDS_PX = 16
 
 export function drawMarks({ ctx, box, theme, levels }: Surface, columns: Columns, marks: readonly Mark[]): void {
   const { ratio } = box
@@ -21,7 +23,7 @@ export function drawMarks({ ctx, box, theme, levels }: Surface, columns: Columns
     const x = box.left + box.width * partOf(columns, mark.frequencyHz)
     const room = (SIZE_PX * 2 + AWAY_PX + (mark.labelled ? theme.textPx + 2 : 0)) * ratio
     const level = levelY(box, levels, mark.db)
-    const y = under ? Math.min(level, box.top + box.height - room) : Math.max(level, box.top + room)
+    const y = under ? Math.min(level, box.top + box.height - room) : Math.max(level, box.top + room + WORDS_PX * ratio)
     const tip = y + AWAY_PX * away
     const base = tip + 1.75 * SIZE_PX * away
     ctx.fillStyle = theme.now

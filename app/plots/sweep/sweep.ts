@@ -57,12 +57,18 @@ export function mountSweep({ element, reading }: PlotPlace): MountedPlot {
         splits: () => [0, 0.25, 0.5, 0.75, 1],
         label: (part) => decimal(part, part % 0.5 === 0 ? (part % 1 === 0 ? 0 : 1) : 2),
       }),
-      axis({ scale: 'delay', side: 3, splits: (min, max, length) => evenSplits(min, max, length, 36), label: shortNumber, colour: 'now' }),
+      axis({
+        scale: 'delay',
+        side: 3,
+        splits: (min, max, length) => evenSplits(min, max, length, 36),
+        label: (ms, all) => decimal(ms, decimalsIn(all)),
+        colour: 'now',
+      }),
       axis({
         scale: 'cents',
         side: 1,
         splits: (min, max, length) => (set.sweep.shape === 'drift' ? [] : evenSplits(min, max, length, 40)),
-        label: (ct) => `${signedNumber(ct)} ct`,
+        label: (ct, all) => `${decimal(ct, decimalsIn(all), true)} ct`,
         colour: 'second',
         grid: false,
         room: 4.2,
@@ -150,8 +156,8 @@ function legend({ sweep, voices, layout }: ParameterSet): string {
   return parts.join(' · ')
 }
 
-const shortNumber = (value: number): string => decimal(value, Math.min(4, Math.max(0, decimalsOf(value))))
-const signedNumber = (value: number): string => decimal(value, Math.min(4, Math.max(0, decimalsOf(value))), true)
+/** As many decimals as the longest of an axis' numbers has. */
+const decimalsIn = (all: readonly number[]): number => Math.min(4, Math.max(0, ...all.map(decimalsOf)))
 const decimalsOf = (value: number): number => (String(value).split('.')[1] ?? '').length
 
 function summary({ minMs, maxMs, maxCents, voices }: SweepCurves, { sweep }: ParameterSet): string {
