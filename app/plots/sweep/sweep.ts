@@ -60,7 +60,7 @@ export function mountSweep({ element, reading }: PlotPlace): MountedPlot {
       axis({
         scale: 'delay',
         side: 3,
-        splits: (min, max, length) => evenSplits(min, max, length, 36),
+        splits: (min, max, length) => evenSplits(min, max, length, 28),
         label: (ms, all) => decimal(ms, decimalsIn(all)),
         colour: 'now',
       }),
