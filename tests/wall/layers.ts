@@ -25,7 +25,13 @@ const CLIENTS = [
 ]
 const VIEW = ['react', '@base-ui/react', 'zustand']
 // What the shell offers to everyone: each a layer of its own, so that none of them can lead back to areas or sound.
-const SERVICES = ['app/shell/messages.ts', 'app/shell/announce.ts', 'app/shell/fileAccess.ts', 'app/shell/layout.ts']
+const SERVICES = [
+  'app/shell/messages.ts',
+  'app/shell/announce.ts',
+  'app/shell/fileAccess.ts',
+  'app/shell/layout.ts',
+  'app/shell/usePopup.ts',
+]
 const AREA = [...SERVICES, 'app/plots', 'app/fields', 'app/midi', 'app/audio', 'app/state', 'app/styles', ...CLIENTS, ...PURE]
 
 export const LAYERS: readonly Layer[] = [
