@@ -1,23 +1,11 @@
 // Runs in the browser: renders the same effect offline by the page's own processor and by native nodes, and gives the seconds each took.
 import { BUILD_ID } from '../../../app/audio/buildId.ts'
-import { PROCESSOR_NAME, type ProcessorOptions, type Settings, type ToProcessor } from '../../../app/audio/worklet/messages.ts'
+import { PROCESSOR_NAME, type ProcessorOptions, type ToProcessor } from '../../../app/audio/worklet/messages.ts'
 import processorUrl from '../../../app/audio/worklet/processor.ts?worker&url'
 import type { ParameterSet } from '../../../src/set/types.ts'
+import { LISTENER } from '../../app/audio/worklet/listener.ts'
 
 const FS = 48_000
-
-const SETTINGS: Settings = {
-  playing: true,
-  muted: false,
-  level: 1,
-  bypass: 'off',
-  delayChange: 'glide',
-  held: null,
-  toneHz: 440,
-  equalDb: 0,
-  equalLive: false,
-  inputOpen: false,
-}
 
 export interface Rendered {
   readonly seconds: number
@@ -47,7 +35,7 @@ async function timed(context: OfflineAudioContext): Promise<Rendered> {
 async function byWorklet(set: ParameterSet, length: number): Promise<Rendered> {
   const context = new OfflineAudioContext(2, length, FS)
   await context.audioWorklet.addModule(processorUrl)
-  const processorOptions: ProcessorOptions = { buildId: BUILD_ID, set, settings: SETTINGS, shared: null }
+  const processorOptions: ProcessorOptions = { buildId: BUILD_ID, set, settings: LISTENER, shared: null }
   const node = new AudioWorkletNode(context, PROCESSOR_NAME, { numberOfInputs: 1, outputChannelCount: [2], processorOptions })
   const ready = new Promise((resolve) => {
     node.port.onmessage = resolve

@@ -1,27 +1,15 @@
 import { describe, expect, it } from 'vitest'
 import { type Audition, createAudition, receive, render, takeUnused } from '../../../../app/audio/worklet/audition.ts'
 import { GUARD_LIMIT, GUARD_OPEN } from '../../../../app/audio/worklet/guard.ts'
-import { REPORT, SCOPE_FRAMES, type Settings } from '../../../../app/audio/worklet/messages.ts'
+import { REPORT, SCOPE_FRAMES } from '../../../../app/audio/worklet/messages.ts'
 import { renderSet } from '../../../../src/dsp/render.ts'
 import { defaultSet } from '../../../../src/set/defaults.ts'
 import { flatten } from '../../../../src/set/flat.ts'
 import { withAt } from '../../../../src/set/path.ts'
 import type { ParameterSet } from '../../../../src/set/types.ts'
+import { LISTENER } from './listener.ts'
 
 const FS = 48_000
-
-const SETTINGS: Settings = {
-  playing: true,
-  muted: false,
-  level: 1,
-  bypass: 'off',
-  delayChange: 'glide',
-  held: null,
-  toneHz: 440,
-  equalDb: 0,
-  equalLive: false,
-  inputOpen: false,
-}
 
 const withFields = (fields: Readonly<Record<string, unknown>>): ParameterSet =>
   Object.entries(fields).reduce((set, [path, value]) => withAt(set, path, value), defaultSet())
@@ -63,7 +51,7 @@ const peakOf = (samples: Float32Array) => samples.reduce((peak, x) => Math.max(p
 describe('what is heard', () => {
   it('is what render gives for the same sound, to single precision', () => {
     const set = withFields({ 'loop.feedback': 0.4, 'loop.dampingHz': 4000 })
-    const audition = createAudition(set, FS, SETTINGS)
+    const audition = createAudition(set, FS, LISTENER)
     // The fades from silence and into playing are taken out of the way, so that the sound begins with its first frame.
     const sound = noise(FS)
     receive(audition, sampleOf([sound]))
@@ -81,7 +69,7 @@ describe('what is heard', () => {
 
   it.each([64, 256, 192, 1000])('does not depend on the quantum: %i frames give what 128 give', (quantum) => {
     const make = () => {
-      const audition = createAudition(withFields({ 'loop.feedback': 0.5 }), FS, SETTINGS)
+      const audition = createAudition(withFields({ 'loop.feedback': 0.5 }), FS, LISTENER)
       receive(audition, sampleOf([noise(20_000)]))
       return audition
     }
@@ -91,10 +79,10 @@ describe('what is heard', () => {
   })
 
   it('starts silent and rises within 0.4 s of the first Play: no step above one sample of the fade', () => {
-    const audition = createAudition(withFields({ 'mix.wet': 0, 'mix.dry': 1 }), FS, { ...SETTINGS, playing: false })
+    const audition = createAudition(withFields({ 'mix.wet': 0, 'mix.dry': 1 }), FS, { ...LISTENER, playing: false })
     receive(audition, sampleOf([new Float32Array(FS).fill(0.5)]))
     expect(peakOf(run(audition, 0.1).left)).toBe(0)
-    receive(audition, { type: 'settings', settings: SETTINGS })
+    receive(audition, { type: 'settings', settings: LISTENER })
     const { left } = run(audition, 0.5)
     const steps = left.slice(1).map((x, n) => Math.abs(x - (left[n] as number)))
     expect(left[0]).toBeLessThan(1e-3)
@@ -103,10 +91,10 @@ describe('what is heard', () => {
   })
 
   it('fades out within 40 ms of Pause, then stands: neither sweep nor sound moves on', () => {
-    const audition = createAudition(defaultSet(), FS, SETTINGS)
+    const audition = createAudition(defaultSet(), FS, LISTENER)
     receive(audition, sampleOf([noise(FS)]))
     run(audition, 0.5)
-    receive(audition, { type: 'settings', settings: { ...SETTINGS, playing: false } })
+    receive(audition, { type: 'settings', settings: { ...LISTENER, playing: false } })
     const { left } = run(audition, 0.2)
     expect(peakOf(left.subarray(Math.round(0.045 * FS)))).toBe(0)
     const { frame } = audition.player.now
@@ -115,34 +103,34 @@ describe('what is heard', () => {
   })
 
   it('mutes within 20 ms and goes on underneath', () => {
-    const audition = createAudition(defaultSet(), FS, SETTINGS)
+    const audition = createAudition(defaultSet(), FS, LISTENER)
     receive(audition, sampleOf([noise(FS)]))
     run(audition, 0.5)
-    receive(audition, { type: 'settings', settings: { ...SETTINGS, muted: true } })
+    receive(audition, { type: 'settings', settings: { ...LISTENER, muted: true } })
     const { left } = run(audition, 0.2)
     expect(peakOf(left.subarray(Math.round(0.021 * FS)))).toBe(0)
     expect(audition.meters.peaks[2]).toBeGreaterThan(0)
   })
 
   it('never exceeds +6 dB of the listening level nor full scale, whatever the effect gives', () => {
-    const audition = createAudition(withFields({ 'mix.outputGainDb': 22, 'mix.wet': 0, 'mix.dry': 1 }), FS, { ...SETTINGS, level: 0.1 })
+    const audition = createAudition(withFields({ 'mix.outputGainDb': 22, 'mix.wet': 0, 'mix.dry': 1 }), FS, { ...LISTENER, level: 0.1 })
     receive(audition, sampleOf([new Float32Array(FS).fill(0.25)]))
     // 0.25 at +22 dB is 3.15: under the guard's limit, over the cap.
     expect(peakOf(run(audition, 0.9).left)).toBeCloseTo(0.2, 6)
-    receive(audition, { type: 'settings', settings: { ...SETTINGS, level: 1 } })
+    receive(audition, { type: 'settings', settings: { ...LISTENER, level: 1 } })
     expect(peakOf(run(audition, 0.9).left)).toBe(1)
   })
 
   it('adds equal loudness to the effect, 12 dB at most', () => {
-    const audition = createAudition(withFields({ 'mix.wet': 0, 'mix.dry': 0.1 }), FS, { ...SETTINGS, equalDb: 6 })
+    const audition = createAudition(withFields({ 'mix.wet': 0, 'mix.dry': 0.1 }), FS, { ...LISTENER, equalDb: 6 })
     receive(audition, sampleOf([new Float32Array(FS).fill(0.5)]))
     expect(run(audition, 0.9).left.at(-1)).toBeCloseTo(0.05 * 10 ** (6 / 20), 6)
-    receive(audition, { type: 'settings', settings: { ...SETTINGS, equalDb: 40 } })
+    receive(audition, { type: 'settings', settings: { ...LISTENER, equalDb: 40 } })
     expect(run(audition, 0.9).left.at(-1)).toBeCloseTo(0.05 * 10 ** (12 / 20), 6)
   })
 
   it('brings live input to equal loudness within 3 s: half the level is raised by 6 dB', () => {
-    const audition = createAudition(withFields({ 'mix.wet': 0, 'mix.dry': 0.5 }), FS, { ...SETTINGS, equalLive: true, inputOpen: true })
+    const audition = createAudition(withFields({ 'mix.wet': 0, 'mix.dry': 0.5 }), FS, { ...LISTENER, equalLive: true, inputOpen: true })
     receive(audition, { type: 'source', source: { type: 'input' } })
     const input = [Float32Array.from({ length: 128 }, (_, n) => 0.2 * Math.sin((2 * Math.PI * n) / 32))]
     run(audition, 4, { input })
@@ -155,7 +143,7 @@ describe('a loop that runs away', () => {
   const runaway = withFields({ 'line.baseMs': 10, 'sweep.depthMs': 2, 'loop.feedback': 1.3, 'loop.interpolation': 'linear' })
 
   it('is muted within 50 ms of passing the limit, says so, and sounds again once the set is safe', () => {
-    const audition = createAudition(runaway, FS, SETTINGS)
+    const audition = createAudition(runaway, FS, LISTENER)
     receive(audition, sampleOf([noise(FS)]))
     const quantum = 128
     let passedAt = -1
@@ -178,7 +166,7 @@ describe('a loop that runs away', () => {
   })
 
   it('keeps everything heard at or under full scale and finite, set by set', () => {
-    const audition = createAudition(runaway, FS, SETTINGS)
+    const audition = createAudition(runaway, FS, LISTENER)
     receive(audition, sampleOf([noise(FS)]))
     for (let g = -2; g <= 2; g += 0.5) {
       receive(audition, { type: 'set', flat: flatten(withAt(runaway, 'loop.feedback', g)) })
@@ -190,7 +178,7 @@ describe('a loop that runs away', () => {
 
 describe('messages', () => {
   it('the last set within a quantum wins, and a set of the wrong length is left alone', () => {
-    const audition = createAudition(withFields({ 'mix.wet': 0, 'mix.dry': 1 }), FS, SETTINGS)
+    const audition = createAudition(withFields({ 'mix.wet': 0, 'mix.dry': 1 }), FS, LISTENER)
     receive(audition, sampleOf([new Float32Array(FS).fill(0.5)]))
     receive(audition, { type: 'set', flat: flatten(withFields({ 'mix.wet': 0, 'mix.dry': 0.2 })) })
     receive(audition, { type: 'set', flat: flatten(withFields({ 'mix.wet': 0, 'mix.dry': 0.6 })) })
@@ -199,7 +187,7 @@ describe('messages', () => {
   })
 
   it('gives back each sample memory once, when the next has taken over', () => {
-    const audition = createAudition(defaultSet(), FS, SETTINGS)
+    const audition = createAudition(defaultSet(), FS, LISTENER)
     receive(audition, sampleOf([noise(1000)], 1))
     receive(audition, sampleOf([noise(1000)], 2))
     receive(audition, sampleOf([noise(1000)], 3))
@@ -210,7 +198,7 @@ describe('messages', () => {
   })
 
   it('a region of a memory that no longer plays changes nothing', () => {
-    const audition = createAudition(defaultSet(), FS, SETTINGS)
+    const audition = createAudition(defaultSet(), FS, LISTENER)
     receive(audition, sampleOf([noise(FS)], 2))
     receive(audition, { type: 'region', id: 1, start: 100, end: 200 })
     expect([audition.player.start, audition.player.end]).toEqual([0, FS])
@@ -221,7 +209,7 @@ describe('messages', () => {
 
 describe('reports', () => {
   it('come every 32 ms while it runs, once more when it stops, and then no more', () => {
-    const audition = createAudition(defaultSet(), FS, SETTINGS)
+    const audition = createAudition(defaultSet(), FS, LISTENER)
     let reports = 0
     const count = (_frame: number, due: boolean) => {
       if (due) reports++
@@ -229,7 +217,7 @@ describe('reports', () => {
     run(audition, 3.2, { each: count })
     expect(Math.abs(reports - 100)).toBeLessThanOrEqual(1)
     reports = 0
-    receive(audition, { type: 'settings', settings: { ...SETTINGS, playing: false } })
+    receive(audition, { type: 'settings', settings: { ...LISTENER, playing: false } })
     run(audition, 1, { each: count })
     expect(reports).toBeLessThanOrEqual(3)
     expect(audition.report[REPORT.running]).toBe(0)
@@ -238,19 +226,19 @@ describe('reports', () => {
 
   it('carry the sweep position of their frame and how it moves', () => {
     const set = withFields({ 'sweep.rateHz': 2, 'sweep.startPhase': 0.25 })
-    const audition = createAudition(set, FS, SETTINGS)
+    const audition = createAudition(set, FS, LISTENER)
     run(audition, 0.6)
     const { report } = audition
     const wanted = 0.25 + ((report[REPORT.frame] as number) * 2) / FS
     expect(report[REPORT.position]).toBeCloseTo(wanted - Math.floor(wanted), 9)
     expect(report[REPORT.positionStep]).toBe(2 / FS)
-    receive(audition, { type: 'settings', settings: { ...SETTINGS, held: 0.75 } })
+    receive(audition, { type: 'settings', settings: { ...LISTENER, held: 0.75 } })
     run(audition, 0.2)
     expect([report[REPORT.position], report[REPORT.positionStep]]).toEqual([0.75, 0])
   })
 
   it('carry input and output of the same frames: a bare dry path shows the same window twice', () => {
-    const audition = createAudition(withFields({ 'mix.wet': 0, 'mix.dry': 1 }), FS, SETTINGS)
+    const audition = createAudition(withFields({ 'mix.wet': 0, 'mix.dry': 1 }), FS, LISTENER)
     receive(audition, sampleOf([noise(FS)]))
     run(audition, 0.3)
     const scopeIn = audition.report.slice(REPORT.scope, REPORT.scope + SCOPE_FRAMES)
@@ -260,7 +248,7 @@ describe('reports', () => {
   })
 
   it('count output samples beyond full scale', () => {
-    const audition = createAudition(withFields({ 'mix.wet': 0, 'mix.dry': 4 }), FS, SETTINGS)
+    const audition = createAudition(withFields({ 'mix.wet': 0, 'mix.dry': 4 }), FS, LISTENER)
     receive(audition, sampleOf([new Float32Array(FS).fill(0.2)]))
     run(audition, 0.3)
     expect(audition.report[REPORT.overs]).toBe(0)

@@ -6,22 +6,10 @@ import { defaultSet } from '../../../../src/set/defaults.ts'
 import { flatten } from '../../../../src/set/flat.ts'
 import { withAt } from '../../../../src/set/path.ts'
 import type { ParameterSet } from '../../../../src/set/types.ts'
+import { LISTENER } from './listener.ts'
 
 const FS = 48_000
 const QUANTUM = 128
-const SETTINGS: Settings = {
-  playing: true,
-  muted: false,
-  level: 0.5,
-  bypass: 'off',
-  delayChange: 'glide',
-  held: null,
-  toneHz: 440,
-  equalDb: 3,
-  equalLive: false,
-  inputOpen: true,
-}
-
 const fields = (list: Readonly<Record<string, unknown>>): ParameterSet =>
   Object.entries(list).reduce((set, [path, value]) => withAt(set, path, value), defaultSet())
 
@@ -36,7 +24,7 @@ const full = fields({
 })
 
 function made(set: ParameterSet, settings: Partial<Settings> = {}): Audition {
-  const audition = createAudition(set, FS, { ...SETTINGS, ...settings })
+  const audition = createAudition(set, FS, { ...LISTENER, equalDb: 3, inputOpen: true, ...settings })
   const noise = Float32Array.from({ length: FS }, (_, n) => 0.2 * Math.sin(n * n))
   receive(audition, { type: 'source', source: { type: 'sample', id: 1, channels: [noise, noise], circular: true, start: 0, end: 20_000 } })
   return audition

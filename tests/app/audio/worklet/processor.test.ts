@@ -1,8 +1,9 @@
 import { beforeAll, describe, expect, it } from 'vitest'
 import { BUILD_ID } from '../../../../app/audio/buildId.ts'
-import { type ProcessorOptions, REPORT, REPORT_LENGTH, type Settings, type ToProcessor } from '../../../../app/audio/worklet/messages.ts'
+import { type ProcessorOptions, REPORT, REPORT_LENGTH, type ToProcessor } from '../../../../app/audio/worklet/messages.ts'
 import { openSharedReport, SHARED_BYTES } from '../../../../app/audio/worklet/report.ts'
 import { defaultSet } from '../../../../src/set/defaults.ts'
+import { LISTENER } from './listener.ts'
 
 // A worklet's scope, as far as the processor uses it (W3C Web Audio, AudioWorkletGlobalScope).
 class FakePort {
@@ -33,21 +34,8 @@ beforeAll(async () => {
   await import('../../../../app/audio/worklet/processor.ts')
 })
 
-const SETTINGS: Settings = {
-  playing: true,
-  muted: false,
-  level: 1,
-  bypass: 'off',
-  delayChange: 'glide',
-  held: null,
-  toneHz: 440,
-  equalDb: 0,
-  equalLive: false,
-  inputOpen: false,
-}
-
 const make = (options: Partial<ProcessorOptions> = {}) =>
-  new Made({ processorOptions: { buildId: BUILD_ID, set: defaultSet(), settings: SETTINGS, shared: null, ...options } })
+  new Made({ processorOptions: { buildId: BUILD_ID, set: defaultSet(), settings: LISTENER, shared: null, ...options } })
 
 const say = (processor: Processor, message: ToProcessor) => processor.port.onmessage?.({ data: message })
 
@@ -81,7 +69,7 @@ describe('the processor', () => {
   it('loses no report that says “paused”, even when the one before was not yet read', () => {
     const processor = make()
     run(processor, 100)
-    say(processor, { type: 'settings', settings: { ...SETTINGS, playing: false } })
+    say(processor, { type: 'settings', settings: { ...LISTENER, playing: false } })
     run(processor, 100)
     say(processor, { type: 'read' })
     expect(reports(processor).at(-1)?.[REPORT.running]).toBe(0)

@@ -1,10 +1,10 @@
 import { describe, expect, it } from 'vitest'
 import { createAudition, receive, render } from '../../../../app/audio/worklet/audition.ts'
-import type { Settings } from '../../../../app/audio/worklet/messages.ts'
 import { defaultSet } from '../../../../src/set/defaults.ts'
 import { FLAT_PARAMETERS, flatten } from '../../../../src/set/flat.ts'
 import type { Parameter } from '../../../../src/set/parameters.ts'
 import { createRandom } from '../../../../src/signal/random.ts'
+import { LISTENER } from './listener.ts'
 
 const FS = 48_000
 const QUANTUM = 128
@@ -28,19 +28,7 @@ describe('ten minutes of random live edits', () => {
     'never give a sample that is no number or above full scale, seed %i',
     (seed) => {
       const u = createRandom(seed)
-      const settings: Settings = {
-        playing: true,
-        muted: false,
-        level: 1,
-        bypass: 'off',
-        delayChange: 'glide',
-        held: null,
-        toneHz: 440,
-        equalDb: 0,
-        equalLive: false,
-        inputOpen: true,
-      }
-      const audition = createAudition(defaultSet(), FS, settings)
+      const audition = createAudition(defaultSet(), FS, LISTENER)
       const sound = Float32Array.from({ length: FS }, () => u() - 0.5)
       receive(audition, { type: 'source', source: { type: 'sample', id: 1, channels: [sound, sound], circular: true, start: 0, end: FS } })
       const flat = flatten(defaultSet())
@@ -62,7 +50,7 @@ describe('ten minutes of random live edits', () => {
             const delayChange = u() < 0.5 ? 'glide' : 'crossfade'
             receive(audition, {
               type: 'settings',
-              settings: { ...settings, bypass, delayChange, held: u() < 0.2 ? u() : null, equalDb: 24 * u() - 12 },
+              settings: { ...LISTENER, bypass, delayChange, held: u() < 0.2 ? u() : null, equalDb: 24 * u() - 12 },
             })
           }
           if (u() < 0.05) receive(audition, { type: 'region', id: 1, start: u() * FS, end: u() * FS })
