@@ -116,6 +116,6 @@ function toneWet({ ramps, states, wet }: Core, c: number, n: number, moving: boo
     highPassMoving(m, 0, n, ramps, ramps.elapsed, WET_LOW_CUT, states.wetLowCut, 2 * c)
     return
   }
-  if (ramps.target[WET_HIGH_CUT + 1]) lowPass(m, 0, n, ramps.target[WET_HIGH_CUT]!, states.wetHighCut, c)
-  if (ramps.target[WET_LOW_CUT + 1]) highPass(m, 0, n, ramps.target[WET_LOW_CUT]!, states.wetLowCut, 2 * c)
+  if (ramps.target[WET_HIGH_CUT + 1]) lowPass(m, 0, n, ramps, WET_HIGH_CUT, states.wetHighCut, c)
+  if (ramps.target[WET_LOW_CUT + 1]) highPass(m, 0, n, ramps, WET_LOW_CUT, states.wetLowCut, 2 * c)
 }

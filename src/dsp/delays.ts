@@ -50,10 +50,9 @@ function breakRuns(t: Trajectory, s: Settings, n: number): void {
   runs.starts[n] = n
   runs.count = n
   runs.part = 0
-  t.gliding = t.offset.some(isLeft)
+  t.gliding = false
+  for (let r = 0; r < READS; r++) if (t.offset[r] !== 0) t.gliding = true
 }
-
-const isLeft = (offset: number): boolean => offset !== 0
 
 function breakRead(t: Trajectory, s: Settings, r: number, n: number): void {
   const { runs, delays } = t

@@ -1,9 +1,11 @@
 // The first-order filters over a chunk, in place. Each comes as it stands and as it moves: with coefficient and amount running along
-// their ramps, where amount 1 is the filter and amount 0 what went into it.
+// their ramps, where amount 1 is the filter and amount 0 what went into it. Coefficients are looked up here: given as numbers to a function
+// that the machine does not inline they would be boxed, which allocates.
 import type { Ramps } from './ramps.ts'
 
-/** y[n] = (1 − a) x[n] + a y[n−1]; the state is y. */
-export function lowPass(x: Float64Array, at: number, n: number, a: number, states: Float64Array, s: number): void {
+/** y[n] = (1 − a) x[n] + a y[n−1]; a is the settled value of slot `c`, the state is y. */
+export function lowPass(x: Float64Array, at: number, n: number, r: Ramps, c: number, states: Float64Array, s: number): void {
+  const a = r.target[c]!
   const b = 1 - a
   let y = states[s]!
   for (let j = at; j < at + n; j++) {
@@ -13,8 +15,9 @@ export function lowPass(x: Float64Array, at: number, n: number, a: number, state
   states[s] = y
 }
 
-/** y[n] = (1 + b)/2 (x[n] − x[n−1]) + b y[n−1]; the states are x at `s` and y at `s + 1`. */
-export function highPass(x: Float64Array, at: number, n: number, b: number, states: Float64Array, s: number): void {
+/** y[n] = (1 + b)/2 (x[n] − x[n−1]) + b y[n−1]; b is the settled value of slot `c`, the states are x at `s` and y at `s + 1`. */
+export function highPass(x: Float64Array, at: number, n: number, r: Ramps, c: number, states: Float64Array, s: number): void {
+  const b = r.target[c]!
   const half = (1 + b) / 2
   let before = states[s]!
   let y = states[s + 1]!

@@ -53,8 +53,8 @@ function readLoop(core: Core, c: number, k: number, j: number, end: number, movi
     shapeMoving(shaper, s, j, n, ramps, since, SHAPERS + LOOP * SHAPER_VALUES, states.shapers, 2 * LOOP + c)
     return
   }
-  if (ramps.target[DAMPING + 1]) lowPass(s, j, n, ramps.target[DAMPING]!, states.damping, c)
-  if (ramps.target[LOW_CUT + 1]) highPass(s, j, n, ramps.target[LOW_CUT]!, states.lowCut, 2 * c)
+  if (ramps.target[DAMPING + 1]) lowPass(s, j, n, ramps, DAMPING, states.damping, c)
+  if (ramps.target[LOW_CUT + 1]) highPass(s, j, n, ramps, LOW_CUT, states.lowCut, 2 * c)
   shape(shaper, s, j, n, states.shapers, 2 * LOOP + c)
 }
 

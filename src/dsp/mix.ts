@@ -1,7 +1,7 @@
 // The mix: outputGain · outputShaper(dry · d ± wet · m).
 import type { Channel, Core } from './core.ts'
 import { DRY, OUTPUT_GAIN, rampsMove, SHAPER_VALUES, SHAPERS, scale, WET } from './ramps.ts'
-import { OUTPUT, type Settings } from './settings.ts'
+import { OUTPUT } from './settings.ts'
 import { shape, shapeMoving } from './shaperPass.ts'
 
 /** y of channel c, outputGain · outputShaper(dry · d ± wet · m), into `output`. */
@@ -67,15 +67,9 @@ export const notFinite = (v: number): number => (Math.abs(v) < Number.POSITIVE_I
 function dryOf({ settings, lines, dryLines, input }: Core, c: number): Float64Array {
   const line = settings.lines === 2 ? c : 0
   if (settings.dryFromLine) return lines[line]!
-  return dryDelay(settings) === 0 ? input[line]! : dryLines[line]!
+  return settings.dryDelay === 0 ? input[line]! : dryLines[line]!
 }
 
 function dryAt({ settings, position }: Core): number {
-  const delay = dryDelay(settings)
-  return delay === 0 && !settings.dryFromLine ? 0 : position - delay
-}
-
-/** Dry delay in whole samples, rounded half up, at most `longest`. */
-function dryDelay({ dryDelayMs, fs, longest }: Settings): number {
-  return Math.min(Math.floor((dryDelayMs * fs) / 1000 + 0.5), Math.floor(longest)) | 0
+  return settings.dryDelay === 0 && !settings.dryFromLine ? 0 : position - settings.dryDelay
 }

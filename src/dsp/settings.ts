@@ -2,6 +2,7 @@
 // from sample to sample. Written in place, so that a live edit allocates nothing.
 import { smallestDelay, voiceOffsetMs } from '../set/delayRange.ts'
 import { flatIndex, flatPointsOffset } from '../set/flat.ts'
+import { sweepEdge } from '../set/sweepShape.ts'
 import type { Curve, Interpolation, Layout, ParameterSet, SweepLaw, SweepShape } from '../set/types.ts'
 import { choicesOf } from './flatRules.ts'
 import { createPointStore, type PointStore, takePoints } from './points.ts'
@@ -25,6 +26,8 @@ export interface Settings {
   /** Samples by which the loop is read sooner because its shaper delays by them: ½ with adaa1. */
   loopLess: number
   readonly sweep: Mutable<ParameterSet['sweep']>
+  /** Edge of squares and ramps, cycles. */
+  edge: number
   baseMs: number
   readonly voices: Mutable<ParameterSet['voices']>
   /** Base and spread offset of each voice, ms. */
@@ -39,7 +42,8 @@ export interface Settings {
   voiceScale: number
   loopMoves: boolean
   dryFromLine: boolean
-  dryDelayMs: number
+  /** Whole samples, rounded half up, at most `longest`. */
+  dryDelay: number
   /** Input, loop, output. */
   readonly shapers: readonly EngineShaper[]
   readonly sweepStore: PointStore
@@ -80,6 +84,7 @@ export function createSettings(fs: number, longest: number): Settings {
       updateEvery: 1,
       between: 'ramp',
     },
+    edge: 0.5,
     baseMs: 0.5,
     voices: { count: 1, phaseSpread: 0.5, spreadMs: 0.5 },
     centreMs: new Float64Array(MAX_VOICES),
@@ -90,7 +95,7 @@ export function createSettings(fs: number, longest: number): Settings {
     voiceScale: 0.5,
     loopMoves: true,
     dryFromLine: false,
-    dryDelayMs: 0.5,
+    dryDelay: 0,
     shapers: shaperStores.map(
       ({ views }): EngineShaper => ({
         on: false,
@@ -159,7 +164,7 @@ export function takeStructure(s: Settings, flat: Float64Array): void {
   s.voices.count = flat[AT.voices]! | 0
   s.voiceScale = 1 / Math.sqrt(s.voices.count)
   s.dryFromLine = flat[AT.dryTap] === FROM_LINE
-  s.dryDelayMs = flat[AT.dryDelay]!
+  s.dryDelay = Math.min(Math.floor((flat[AT.dryDelay]! * s.fs) / 1000 + 0.5), Math.floor(s.longest)) | 0
   for (let i = 0; i < s.shapers.length; i++) {
     const shaper = s.shapers[i]!
     const curve = flat[CURVE_AT[i]!]!
@@ -188,6 +193,7 @@ export function takeDelays(s: Settings, flat: Float64Array): void {
   sweep.updateEvery = flat[AT.updateEvery]! | 0
   sweep.between = BETWEEN[flat[AT.between]!]!
   sweep.points = takePoints(s.sweepStore, flat, SWEEP_POINTS_AT)
+  s.edge = sweepEdge(sweep)
   s.loopMoves = flat[AT.loopDelay] !== FIXED
   const { voices } = s
   voices.phaseSpread = flat[AT.phaseSpread]!

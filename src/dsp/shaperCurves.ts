@@ -1,126 +1,79 @@
-// The one-sided curves k(t), t ≥ 0, k(0) = 0, their antiderivatives, and their mean over an interval, which is what
-// antiderivative anti-aliasing plays. All exact; the tables of twins and C are made from these.
+// The one-sided curves k(t), t ≥ 0, k(0) = 0, exact; the tables of twins and C are made from these.
+//
+// They work in place on arrays: a number handed to or from a function that the machine does not inline is boxed, which allocates, and the
+// audio thread must not.
 import type { Point, Shaper } from '../set/types.ts'
 
 /** A curve with what shapes it: the dead zone's width, or the drawn points [t, k], t ascending from [0, 0]. */
 export type CurveParameters = Pick<Shaper, 'curve' | 'deadZone' | 'points'>
 
 /** Resistor into a Shockley pair: t − v = DIODE_I sinh(v/DIODE_V). */
-const DIODE_I = 0.002
-const DIODE_V = 0.12
+export const DIODE_I = 0.002
+export const DIODE_V = 0.12
 
-/** v ≥ 0 with v + 0.002 sinh(v/0.12) = t. Newton from above on a convex function, so it only ever descends to the root. */
-export function diodeVoltage(t: number): number {
-  // Both terms are at most t, so each alone bounds v; the smaller start is within a few steps of the root.
-  let v = Math.min(t, DIODE_V * Math.asinh(t / DIODE_I))
-  for (let i = 0; i < 40; i++) {
-    const f = v + DIODE_I * Math.sinh(v / DIODE_V) - t
-    const step = f / (1 + (DIODE_I / DIODE_V) * Math.cosh(v / DIODE_V))
-    v -= step
-    if (Math.abs(step) <= 2e-16 * v) break
-  }
-  return v
-}
-
-function drawnCurve(points: readonly Point[], t: number): number {
-  const count = points.length
-  if (count === 0) return 0
-  let i = 1
-  while (i < count && (points[i] as Point)[0] < t) i++
-  const [t1, k1] = points[i - 1] as Point
-  if (i === count) return k1
-  const [t2, k2] = points[i] as Point
-  return k1 + ((k2 - k1) * (t - t1)) / (t2 - t1)
-}
-
-/** k(t) for t ≥ 0. Curves: DESIGN 4. */
-export function curveValue(p: CurveParameters, t: number): number {
+/** x[at … at + n), each ≥ 0, become k of themselves. Curves: DESIGN 4. */
+export function applyCurve(p: CurveParameters, x: Float64Array, at: number, n: number): void {
+  const end = at + n
   switch (p.curve) {
     case 'hardClip':
-      return Math.min(t, 1)
+      for (let i = at; i < end; i++) x[i] = Math.min(x[i]!, 1)
+      break
     case 'arctan':
-      return (2 / Math.PI) * Math.atan((Math.PI / 2) * t)
+      for (let i = at; i < end; i++) x[i] = (2 / Math.PI) * Math.atan((Math.PI / 2) * x[i]!)
+      break
     case 'tanh':
-      return Math.tanh(t)
+      for (let i = at; i < end; i++) x[i] = Math.tanh(x[i]!)
+      break
     case 'cubic':
-      return t < 1.5 ? t - (4 * t * t * t) / 27 : 1
+      for (let i = at; i < end; i++) x[i] = x[i]! < 1.5 ? x[i]! - (4 * x[i]! * x[i]! * x[i]!) / 27 : 1
+      break
     case 'diode':
-      return diodeVoltage(t)
+      diodeVoltages(x, at, n)
+      break
     case 'deadZone':
-      return Math.max(0, t - p.deadZone)
+      for (let i = at; i < end; i++) x[i] = Math.max(0, x[i]! - p.deadZone)
+      break
     case 'drawn':
-      return drawnCurve(p.points, t)
+      drawnCurve(p.points, x, at, n)
+      break
   }
 }
 
-/** K(t) = ∫₀ᵗ k for t ≥ 0. arctan and tanh: calculus (FACTS 7); diode by parts along v; drawn by trapezia. */
-export function curveIntegral(p: CurveParameters, t: number): number {
-  switch (p.curve) {
-    case 'hardClip':
-      return t < 1 ? (t * t) / 2 : t - 0.5
-    case 'arctan': {
-      const u = (Math.PI / 2) * t
-      return (4 / (Math.PI * Math.PI)) * (u * Math.atan(u) - Math.log1p(u * u) / 2)
+const one = new Float64Array(1)
+
+/** k(t) for t ≥ 0. */
+export function curveValue(p: CurveParameters, t: number): number {
+  one[0] = t
+  applyCurve(p, one, 0, 1)
+  return one[0]
+}
+
+/** Each t ≥ 0 becomes the v ≥ 0 with v + 0.002 sinh(v/0.12) = t. Newton from above on a convex function, so it only ever descends to the root. */
+export function diodeVoltages(x: Float64Array, at: number, n: number): void {
+  for (let i = at; i < at + n; i++) {
+    const t = x[i]!
+    // Both terms are at most t, so each alone bounds v; the smaller start is within a few steps of the root.
+    let v = Math.min(t, DIODE_V * Math.asinh(t / DIODE_I))
+    for (let k = 0; k < 40; k++) {
+      const step = (v + DIODE_I * Math.sinh(v / DIODE_V) - t) / (1 + (DIODE_I / DIODE_V) * Math.cosh(v / DIODE_V))
+      v -= step
+      if (Math.abs(step) <= 2e-16 * v) break
     }
-    case 'tanh':
-      // ln cosh t, written so that it neither overflows nor loses t² near 0.
-      return t < 0.01 ? (t * t) / 2 - (t * t * t * t) / 12 + t ** 6 / 45 : t + Math.log1p(Math.exp(-2 * t)) - Math.LN2
-    case 'cubic':
-      return t < 1.5 ? (t * t) / 2 - (t * t * t * t) / 27 : t - 0.5625
-    case 'diode': {
-      const v = diodeVoltage(t)
-      const u = v / DIODE_V
-      const half = Math.sinh(u / 2)
-      return (v * v) / 2 + DIODE_I * (v * Math.sinh(u) - 2 * DIODE_V * half * half)
-    }
-    case 'deadZone': {
-      const over = Math.max(0, t - p.deadZone)
-      return (over * over) / 2
-    }
-    case 'drawn':
-      return piecewiseIntegral(p, 0, t)
+    x[i] = v
   }
 }
 
-/** Corners of the piecewise polynomial curves, in ascending t: the i-th, or Infinity past the last. */
-function corner(p: CurveParameters, i: number): number {
-  if (p.curve === 'drawn') return i < p.points.length ? (p.points[i] as Point)[0] : Number.POSITIVE_INFINITY
-  if (i > 0) return Number.POSITIVE_INFINITY
-  if (p.curve === 'hardClip') return 1
-  return p.curve === 'cubic' ? 1.5 : p.deadZone
-}
-
-/** Simpson's rule over [a, b]: exact for polynomials up to the third degree. */
-function simpson(p: CurveParameters, a: number, b: number): number {
-  return ((b - a) * (curveValue(p, a) + 4 * curveValue(p, (a + b) / 2) + curveValue(p, b))) / 6
-}
-
-/** ∫ k over [a, b], 0 ≤ a ≤ b, of a piecewise polynomial curve of at most third degree: exact but for rounding, however short the interval. */
-function piecewiseIntegral(p: CurveParameters, a: number, b: number): number {
-  let sum = 0
-  let from = a
-  for (let i = 0; from < b; i++) {
-    const to = Math.min(b, corner(p, i))
-    if (to > from) {
-      sum += simpson(p, from, to)
-      from = to
-    }
+/** Each t becomes k on straight lines through the points; the last k held; no points: 0. */
+function drawnCurve(points: readonly Point[], x: Float64Array, at: number, n: number): void {
+  const count = points.length
+  for (let i = at; i < at + n; i++) {
+    const t = x[i]!
+    let k = 1
+    while (k < count && points[k]![0] < t) k++
+    if (count === 0) x[i] = 0
+    else if (k === count) x[i] = points[k - 1]![1]
+    else x[i] = points[k - 1]![1] + ((points[k]![1] - points[k - 1]![1]) * (t - points[k - 1]![0])) / (points[k]![0] - points[k - 1]![0])
   }
-  return sum
-}
-
-/** Below this width a difference of antiderivatives loses more digits than Simpson's rule does on the smooth curves. */
-const SMOOTH_WIDTH = 1e-3
-
-/** Mean of k over [a, b], 0 ≤ a ≤ b: (K(b) − K(a))/(b − a), k(a) when a = b, without the cancellation of the difference. */
-export function curveMean(p: CurveParameters, a: number, b: number): number {
-  const width = b - a
-  // A width of a few last places is a point, and dividing by it would be noise.
-  if (width <= 1e-14 * b) return curveValue(p, b)
-  const smooth = p.curve === 'arctan' || p.curve === 'tanh' || p.curve === 'diode'
-  if (!smooth) return piecewiseIntegral(p, a, b) / width
-  if (width < SMOOTH_WIDTH) return simpson(p, a, b) / width
-  return (curveIntegral(p, b) - curveIntegral(p, a)) / width
 }
 
 /** k'(0+): slope of the curve for the smallest signals. */

@@ -1,7 +1,8 @@
 // A shaper over a chunk, in place, with the memory that antiderivative anti-aliasing needs.
 import type { Shaper } from '../set/types.ts'
 import { type Ramps, SHAPER_VALUES } from './ramps.ts'
-import { shaperMean, shaperValue } from './shaper.ts'
+import { applyShaper, halvesMean } from './shaper.ts'
+import { createMeanCell } from './shaperMeans.ts'
 
 /** The engine's own copy of a shaper: `on` false is none. Its five numbers follow the ramps. */
 export type EngineShaper = {
@@ -15,18 +16,25 @@ export type EngineShaper = {
 /** x[at …] = shaper(x[at …]); `states[s]` is the input before x[at], used and kept only by the mean. */
 export function shape(p: EngineShaper, x: Float64Array, at: number, n: number, states: Float64Array, s: number): void {
   if (!p.on) return
-  if (!p.mean) {
-    for (let j = at; j < at + n; j++) x[j] = shaperValue(p, x[j]!)
-    return
-  }
+  if (p.mean) shapeByMean(p, x, at, n, states, s)
+  else applyShaper(p, x, at, n)
+}
+
+function shapeByMean(p: EngineShaper, x: Float64Array, at: number, n: number, states: Float64Array, s: number): void {
+  const { drive, ceiling } = p
   let before = states[s]!
   for (let j = at; j < at + n; j++) {
     const v = x[j]!
-    x[j] = shaperMean(p, before, v)
+    cell[0] = drive * before
+    cell[1] = drive * v
+    halvesMean(p, cell)
+    x[j] = ceiling * cell[2]!
     before = v
   }
   states[s] = before
 }
+
+const cell = createMeanCell()
 
 /** shape while the ramps move: the shaper's values start at slot `c`; `k` samples of the ramp before x[at]. */
 export function shapeMoving(

@@ -19,34 +19,36 @@ export function createSineTables(): SineTables {
 /** Fills the tables and says whether they may be used: also, no read may come so near its limits that rounding could pass them. */
 export function takeSine(s: Settings): boolean {
   if (s.sweep.shape !== 'sine' || s.sweep.law !== 'time' || !isContinuous(s.voiceRead) || !isContinuous(s.loopRead)) return false
+  const { centre, inSine, inCosine } = s.sineTables
   const samples = s.fs / 1000
   const depth = s.sweep.depthMs * samples
-  let inside = true
   for (let c = 0; c < 2; c++) {
     for (let v = 0; v < s.voices.count; v++) {
-      const centre = s.centreMs[v]! * samples
-      setRead(s.sineTables, c * MAX_VOICES + v, centre, depth, s.voicePhase[v]! + s.channelPhase[c]!)
-      inside &&= staysInside(s, centre, depth, s.voiceLeast)
+      const angle = 2 * Math.PI * (s.voicePhase[v]! + s.channelPhase[c]!)
+      const r = c * MAX_VOICES + v
+      centre[r] = s.centreMs[v]! * samples
+      inSine[r] = depth * Math.cos(angle)
+      inCosine[r] = depth * Math.sin(angle)
     }
-    const centre = s.baseMs * samples - s.loopLess
-    setRead(s.sineTables, LOOPS + c, centre, s.loopMoves ? depth : 0, s.channelPhase[c]!)
-    inside &&= staysInside(s, centre, s.loopMoves ? depth : 0, s.loopLeast)
+    const angle = 2 * Math.PI * s.channelPhase[c]!
+    const loopDepth = s.loopMoves ? depth : 0
+    centre[LOOPS + c] = s.baseMs * samples - s.loopLess
+    inSine[LOOPS + c] = loopDepth * Math.cos(angle)
+    inCosine[LOOPS + c] = loopDepth * Math.sin(angle)
   }
-  return inside
+  return staysInside(s)
 }
 
 /** Whether a read moves without a step when its delay does. */
 const isContinuous = (kind: Interpolation): boolean => kind === 'linear' || kind === 'lagrange3' || kind === 'hermite4'
 
-function setRead({ centre, inSine, inCosine }: SineTables, r: number, at: number, depth: number, phase: number): void {
-  centre[r] = at
-  inSine[r] = depth * Math.cos(2 * Math.PI * phase)
-  inCosine[r] = depth * Math.sin(2 * Math.PI * phase)
-}
-
 /** More than rounding can take away, samples. */
 const MARGIN = 1e-6
 
-function staysInside({ longest }: Settings, centre: number, depth: number, least: number): boolean {
-  return centre - depth >= least + MARGIN && centre + depth <= longest - MARGIN
+function staysInside({ sineTables, voices, sweep, fs, loopMoves, longest, voiceLeast, loopLeast }: Settings): boolean {
+  const { centre } = sineTables
+  const depth = (sweep.depthMs * fs) / 1000 + MARGIN
+  const loopDepth = loopMoves ? depth : MARGIN
+  for (let v = 0; v < voices.count; v++) if (centre[v]! - depth < voiceLeast || centre[v]! + depth > longest) return false
+  return centre[LOOPS]! - loopDepth >= loopLeast && centre[LOOPS]! + loopDepth <= longest
 }

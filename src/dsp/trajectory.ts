@@ -4,7 +4,8 @@ import { flatIndex } from '../set/flat.ts'
 import { CHUNK } from './line.ts'
 import { createRuns, LOOPS, MAX_VOICES, READS, type Runs } from './runs.ts'
 import type { Settings } from './settings.ts'
-import { frozenShapeValue, sweepShapeValue, wrapPhase } from './sweep.ts'
+import { shapeValues } from './shapeValues.ts'
+import { wrapPhase } from './sweep.ts'
 
 const RATE = flatIndex('sweep.rateHz')
 const START_PHASE = flatIndex('sweep.startPhase')
@@ -28,6 +29,8 @@ export interface Trajectory {
   phase: number
   since: number
   held: boolean
+  /** The phase last asked for. */
+  readonly now: Float64Array
   /** Whether the loops are read. */
   loops: boolean
   /** The reads in use. */
@@ -37,6 +40,8 @@ export interface Trajectory {
   heldDelays: number
   /** The chunk at hand in straight runs. */
   readonly runs: Runs
+  /** Scratch: phase, then shape of every voice, and the edge. */
+  readonly shapes: Float64Array
   /** Scratch: D of one read for each sample of the chunk. */
   readonly delays: Float64Array
 }
@@ -55,18 +60,26 @@ export function createTrajectory(fs: number): Trajectory {
     phase: 0.5,
     since: 0,
     held: false,
+    now: new Float64Array(1),
     loops: false,
     used: new Int32Array(READS),
     usedCount: 0,
     heldDelays: 0,
     runs: createRuns(),
+    shapes: new Float64Array(2 * MAX_VOICES + 1),
     delays: new Float64Array(CHUNK),
   }
 }
 
 /** Unwrapped phase of voice 0 of channel 0 at sample n, in cycles. */
 export function phaseAt(t: Trajectory, s: Settings, n: number): number {
-  return t.held ? t.phase : ((n - t.since) * s.sweep.rateHz) / t.fs + t.phase
+  putPhase(t, s, n)
+  return t.now[0]!
+}
+
+/** phaseAt into `now`: a number that is returned may be boxed, which allocates. */
+function putPhase(t: Trajectory, s: Settings, n: number): void {
+  t.now[0] = t.held ? t.phase : ((n - t.since) * s.sweep.rateHz) / t.fs + t.phase
 }
 
 /** Before a change is taken from `flat` at sample n: keeps the phase where it is through a new rate, and moves it with a new start. `s`: the old settings. */
@@ -116,23 +129,43 @@ export function evaluate(t: Trajectory, s: Settings, n: number, every: number, r
 
 /** Any shape, one row. Order of operations: sweepPhase. */
 function evaluateShape(t: Trajectory, s: Settings, n: number, into: Float64Array, row: number): boolean {
-  const { sweep, voices, outputs, lines, centreMs, voicePhase, channelPhase } = s
-  const phase = phaseAt(t, s, n)
+  const { sweep, voices, outputs, lines, voicePhase, channelPhase } = s
+  const { count } = voices
+  const { shapes } = t
+  putPhase(t, s, n)
+  const phase = t.now[0]!
+  for (let c = 0; c < outputs; c++) for (let v = 0; v < count; v++) shapes[c * count + v] = phase + voicePhase[v]! + channelPhase[c]!
+  shapes[outputs * count] = s.edge
+  shapeValues(sweep, shapes, outputs * count, count, t.held)
+  for (let c = 0; c < outputs; c++) for (let v = 0; v < count; v++) putVoice(s, v, shapes, c * count + v, into, row + c * MAX_VOICES + v)
+  if (t.loops) for (let c = 0; c < lines; c++) putLoop(s, shapes, c * count, into, row + LOOPS + c)
   let inside = true
-  for (let c = 0; c < outputs; c++) {
-    for (let v = 0; v < voices.count; v++) {
-      const at = phase + voicePhase[v]! + channelPhase[c]!
-      const shape = t.held ? frozenShapeValue(sweep, at) : sweepShapeValue(sweep, at, v)
-      const delay = toSamples(t, s, centreMs[v]!, shape)
-      into[row + c * MAX_VOICES + v] = delay
-      if (!(delay >= s.voiceLeast && delay <= s.longest)) inside = false
-      if (v > 0 || c >= lines || !t.loops) continue
-      const loop = (s.loopMoves ? toSamples(t, s, s.baseMs, shape) : (s.baseMs * t.fs) / 1000) - s.loopLess
-      into[row + LOOPS + c] = loop
-      if (!(loop >= s.loopLeast && loop <= s.longest)) inside = false
-    }
+  for (let i = 0; i < t.usedCount; i++) {
+    const delay = into[row + t.used[i]!]!
+    if (!(delay >= (t.used[i]! < LOOPS ? s.voiceLeast : s.loopLeast) && delay <= s.longest)) inside = false
   }
   return inside
+}
+
+/** D of voice v where its shape is shapes[i]. */
+function putVoice({ sweep, centreMs, fs }: Settings, v: number, shapes: Float64Array, i: number, into: Float64Array, at: number): void {
+  const { law, depthMs, depthOctaves } = sweep
+  const ms = law === 'time' ? centreMs[v]! + depthMs * shapes[i]! : centreMs[v]! * 2 ** (depthOctaves * shapes[i]!)
+  into[at] = (ms * fs) / 1000
+}
+
+/** D of a loop where voice 0's shape is shapes[i]. */
+function putLoop(
+  { sweep, baseMs, fs, loopMoves, loopLess }: Settings,
+  shapes: Float64Array,
+  i: number,
+  into: Float64Array,
+  at: number,
+): void {
+  const { law, depthMs, depthOctaves } = sweep
+  let ms = baseMs
+  if (loopMoves) ms = law === 'time' ? baseMs + depthMs * shapes[i]! : baseMs * 2 ** (depthOctaves * shapes[i]!)
+  into[at] = (ms * fs) / 1000 - loopLess
 }
 
 /** The sine: see sine.ts. */
@@ -140,7 +173,8 @@ function evaluateSine(t: Trajectory, s: Settings, n: number, every: number, rows
   const { used, usedCount } = t
   const { centre, inSine, inCosine } = s.sineTables
   for (let i = 0; i < rows; i++) {
-    const angle = 2 * Math.PI * wrapPhase(phaseAt(t, s, n + i * every))
+    putPhase(t, s, n + i * every)
+    const angle = 2 * Math.PI * (t.now[0]! - Math.floor(t.now[0]!))
     const sine = Math.sin(angle)
     const cosine = Math.cos(angle)
     const at = row + i * READS
@@ -149,12 +183,6 @@ function evaluateSine(t: Trajectory, s: Settings, n: number, every: number, rows
       into[at + r] = centre[r]! + inSine[r]! * sine + inCosine[r]! * cosine
     }
   }
-}
-
-function toSamples(t: Trajectory, s: Settings, centreMs: number, shape: number): number {
-  const { law, depthMs, depthOctaves } = s.sweep
-  const ms = law === 'time' ? centreMs + depthMs * shape : centreMs * 2 ** (depthOctaves * shape)
-  return (ms * t.fs) / 1000
 }
 
 export const rampsBetween = ({ sweep }: Settings): boolean => sweep.between === 'ramp' && sweep.updateEvery > 1

@@ -28,30 +28,33 @@ export function sweepShapeValue(sweep: Sweep, phase: number, voice = 0): number 
       return rampUp(phi, sweepEdge(sweep))
     case 'rampDown':
       return -rampUp(phi, sweepEdge(sweep))
-    case 'drift': {
-      const from = driftValue(sweep.seed, voice, cycle)
-      const to = driftValue(sweep.seed, voice, cycle + 1)
-      return from + ((to - from) * (1 - Math.cos(Math.PI * phi))) / 2
-    }
+    case 'drift':
+      return drift(sweep.seed, voice, cycle, phi)
     case 'drawn':
       return drawn(sweep.points, phi)
   }
 }
 
-function triangle(phi: number): number {
+export function triangle(phi: number): number {
   if (phi < 0.25) return 4 * phi
   return phi < 0.75 ? 2 - 4 * phi : 4 * phi - 4
 }
 
-function square(phi: number, edge: number): number {
+export function square(phi: number, edge: number): number {
   if (edge === 0) return phi < 0.5 ? 1 : -1
   return Math.max(-1, Math.min(1, triangle(phi) / (2 * edge)))
 }
 
-function rampUp(phi: number, edge: number): number {
+export function rampUp(phi: number, edge: number): number {
   const fromJump = phi < 0.5 ? phi : phi - 1
   if (Math.abs(fromJump) < edge / 2) return (-2 * fromJump) / edge
   return (2 * phi - 1) / (1 - edge)
+}
+
+export function drift(seed: number, voice: number, cycle: number, phi: number): number {
+  const from = driftValue(seed, voice, cycle)
+  const to = driftValue(seed, voice, cycle + 1)
+  return from + ((to - from) * (1 - Math.cos(Math.PI * phi))) / 2
 }
 
 /** r_k = int32(fmix32(seed + 0x9E3779B9 v + 0x85EBCA6B k mod 2³²)) / 2³¹, in [−1, 1). fmix32: the 32-bit MurmurHash3 finaliser. */
@@ -65,15 +68,15 @@ export function driftValue(seed: number, voice: number, cycle: number): number {
   return h / 2147483648
 }
 
-/** Straight lines through the points; past the last one towards the first, one cycle later. No points: 0. */
-function drawn(points: readonly Point[], phi: number): number {
+/** Straight lines through the points; past the last one towards the first, one cycle later. No points: 0. Makes no array: the audio thread evaluates it. */
+export function drawn(points: readonly Point[], phi: number): number {
   const count = points.length
   if (count === 0) return 0
   let next = 0
   while (next < count && (points[next] as Point)[0] <= phi) next++
-  const [x0, y0] = next > 0 ? (points[next - 1] as Point) : shifted(points[count - 1] as Point, -1)
-  const [x1, y1] = next < count ? (points[next] as Point) : shifted(points[0] as Point, 1)
-  return x1 === x0 ? y0 : y0 + ((y1 - y0) * (phi - x0)) / (x1 - x0)
+  const before = points[next > 0 ? next - 1 : count - 1] as Point
+  const after = points[next < count ? next : 0] as Point
+  const x0 = next > 0 ? before[0] : before[0] - 1
+  const x1 = next < count ? after[0] : after[0] + 1
+  return x1 === x0 ? before[1] : before[1] + ((after[1] - before[1]) * (phi - x0)) / (x1 - x0)
 }
-
-const shifted = ([x, y]: Point, cycles: number): Point => [x + cycles, y]
