@@ -1,3 +1,4 @@
+import { fileURLToPath } from 'node:url'
 import react from '@vitejs/plugin-react'
 import type { Plugin } from 'vite'
 import { defineConfig } from 'vitest/config'
@@ -13,7 +14,8 @@ const contentPolicy: Plugin = {
 }
 
 export default defineConfig({
-  root: 'app',
+  // Absolute, so that a build started in another folder finds the page.
+  root: fileURLToPath(new URL('app', import.meta.url)),
   publicDir: '../public',
   base: './',
   plugins: [react(), contentPolicy],
@@ -21,5 +23,11 @@ export default defineConfig({
   build: { outDir: '../dist', emptyOutDir: true, assetsInlineLimit: 0, target: 'es2023', modulePreload: { polyfill: false } },
   worker: { format: 'es' },
   preview: { headers: SERVED_HEADERS },
-  test: { root: '.', include: ['tests/**/*.test.ts', 'tests/**/*.test.tsx'], testTimeout: 60_000, maxWorkers: 2 },
+  test: {
+    root: fileURLToPath(new URL('.', import.meta.url)),
+    setupFiles: ['tests/seed.ts'],
+    include: ['tests/**/*.test.ts', 'tests/**/*.test.tsx'],
+    testTimeout: 60_000,
+    maxWorkers: 2,
+  },
 })
