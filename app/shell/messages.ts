@@ -23,6 +23,11 @@ export function dismiss(id: number): void {
   useMessages.setState(({ messages }) => ({ messages: messages.filter((m) => m.id !== id) }))
 }
 
+/** Something of the kind went well after all: what was refused before no longer stands in the way. */
+export function dismissRefusals(): void {
+  useMessages.setState(({ messages }) => ({ messages: messages.filter((m) => m.kind !== 'refusal') }))
+}
+
 /** Dismisses the newest; false when there is none. */
 export function dismissNewest(): boolean {
   const newest = useMessages.getState().messages.at(-1)

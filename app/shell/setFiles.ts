@@ -8,7 +8,7 @@ import { commit, committedSet } from '../state/document.ts'
 import { endGesture } from '../state/draft.ts'
 import { announce } from './announce.ts'
 import { canPickPlace, chooseFile, download, type PickedPlace, pickPlace, writeTo } from './fileAccess.ts'
-import { say } from './messages.ts'
+import { dismissRefusals, say } from './messages.ts'
 
 /** Nothing this long is a set: it is refused before it is read. */
 const LARGEST_FILE_BYTES = 1024 * 1024
@@ -64,6 +64,7 @@ export function newSet(intent: Intent): void {
 function open(step: string, set: ParameterSet): void {
   endGesture()
   place = null
+  dismissRefusals()
   commit(step, set)
   announce(`${step}: done`)
 }
