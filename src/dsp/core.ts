@@ -101,10 +101,7 @@ export function createCore({ fs, maxDelay, keepsDry }: CoreOptions): Core {
 /** Below this the live engine takes a value of line or filters for 0: −600 dB; denormal numbers, which are slow, begin at −6150 dB. */
 const LEAST = 1e-30
 
-/**
- * Sets the last CHUNK samples of the lines and the recursive parts' memory to 0 where they have nearly died. Called every CHUNK samples,
- * whatever the cuts; even a fast decay does not come near denormal numbers in between.
- */
+/** Sets the last FLUSH_EVERY samples of the lines and the recursive parts' memory to 0 where they have nearly died. */
 export function flushCore({ lines, position, settings, states }: Core): void {
   for (let c = 0; c < settings.lines; c++) flushLine(lines[c]!, position, LEAST)
   flushSlots(states.damping)

@@ -62,8 +62,9 @@ export function endChunk(core: Core, n: number): void {
   if (!rampsMove(core.ramps)) settleCore(core)
 }
 
+/** A line that is not in use is left behind; a change of layout copies the other one over it. */
 function rewind(core: Core): void {
-  for (let c = 0; c < 2; c++) {
+  for (let c = 0; c < core.settings.lines; c++) {
     rewindLine(core.lines[c]!, core.length)
     if (core.keepsDry) rewindLine(core.dryLines[c]!, core.length)
   }

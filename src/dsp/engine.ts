@@ -6,9 +6,9 @@ import { blendStraight, pathIsSilent, STRAIGHT } from './bypass.ts'
 import { type Channel, type Core, clearCore, flushCore } from './core.ts'
 import { beginChunk, chunkRoom, endChunk, runCore } from './corePass.ts'
 import type { Engine, EngineCounters } from './engineState.ts'
-import { CHUNK } from './line.ts'
+import { FLUSH_EVERY } from './line.ts'
 import { endFade, loadAtOnce } from './liveChanges.ts'
-import { mix, mixesPlainly, mixTo } from './mix.ts'
+import { countNotFinite, mix, mixesPlainly, mixTo } from './mix.ts'
 import { isOneVoice, oneVoice } from './oneVoice.ts'
 import { advanceRamps, rampsMove, settleRamps } from './ramps.ts'
 import { wrapPhase } from './sweep.ts'
@@ -44,7 +44,7 @@ function room(engine: Engine): number {
   let most = chunkRoom(core)
   if (engine.fading && idle) most = Math.min(most, chunkRoom(idle), engine.fadeLength - engine.fadeElapsed)
   if (rampsMove(bypass.ramps)) most = Math.min(most, bypass.ramps.length - bypass.ramps.elapsed)
-  return live ? Math.min(most, CHUNK - (n % CHUNK)) : most
+  return live ? Math.min(most, FLUSH_EVERY - (n % FLUSH_EVERY)) : most
 }
 
 function run(engine: Engine, input: readonly Channel[], output: readonly Channel[], at: number, n: number): void {
@@ -144,21 +144,16 @@ function fadeInto(y: Float64Array, old: Float64Array, elapsed: number, length: n
   }
 }
 
-/** Writes y out and returns how many of its samples were not finite. */
+/** Writes y out and returns how many of its samples are not finite. */
 function give(y: Float64Array, to: Channel, at: number, n: number): number {
-  let bad = 0
-  for (let j = 0; j < n; j++) {
-    const v = y[j]!
-    if (!(Math.abs(v) < Number.POSITIVE_INFINITY)) bad++
-    to[at + j] = v
-  }
-  return bad
+  for (let j = 0; j < n; j++) to[at + j] = y[j]!
+  return countNotFinite(y, 0, n)
 }
 
 function advance(engine: Engine, n: number): void {
   const { bypass, core, live } = engine
   engine.n += n
-  if (live && engine.n % CHUNK === 0) {
+  if (live && engine.n % FLUSH_EVERY === 0) {
     flushCore(core)
     if (engine.fading && engine.idle) flushCore(engine.idle)
   }

@@ -5,7 +5,7 @@
 // Invariant: w[n − i] = samples[position − i] for 1 ≤ i ≤ length, with `position` that of n.
 
 /** Most samples processed between two looks at what moves. Cuts never change a result; this only sizes the scratch memory. */
-export const CHUNK = 256
+export const CHUNK = 512
 
 /** Samples a line must keep for delays up to `maxDelay`: the oldest point of a cubic too. */
 export function lineLength(maxDelay: number): number {
@@ -27,7 +27,10 @@ export function writeLine(line: Float64Array, position: number, from: Float64Arr
   for (let i = 0; i < n; i++) line[position + i] = from[j + i]!
 }
 
-/** Sets the last CHUNK samples before `position` to 0 where they are smaller than `least`. */
+/** How often, in samples, a live engine looks for values that have nearly died. Even a fast decay does not come near denormal numbers in between. */
+export const FLUSH_EVERY = 128
+
+/** Sets the last FLUSH_EVERY samples before `position` to 0 where they are smaller than `least`. */
 export function flushLine(line: Float64Array, position: number, least: number): void {
-  for (let i = Math.max(0, position - CHUNK); i < position; i++) if (Math.abs(line[i]!) < least) line[i] = 0
+  for (let i = Math.max(0, position - FLUSH_EVERY); i < position; i++) if (Math.abs(line[i]!) < least) line[i] = 0
 }

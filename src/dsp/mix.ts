@@ -42,26 +42,31 @@ export function mixTo(core: Core, c: number, y: Channel, yAt: number, n: number,
   const gain = gained ? ramps.target[OUTPUT_GAIN]! : 1
   const dry = gain * ramps.target[DRY]!
   const wet = gain * ramps.target[WET + c]! * settings.voiceScale
-  let bad = 0
+  let sum = 0
   let j = 0
   // Two samples a turn: the turn itself costs as much as a sample.
   for (; j < n - 1; j += 2) {
     const v = dry * d[at + j]! + wet * m[j]!
     const next = dry * d[at + j + 1]! + wet * m[j + 1]!
-    if (!(Math.abs(v) + Math.abs(next) < Number.POSITIVE_INFINITY)) bad += notFinite(v) + notFinite(next)
+    sum += v + next
     y[yAt + j] = v
     y[yAt + j + 1] = next
   }
   if (j < n) {
     const v = dry * d[at + j]! + wet * m[j]!
-    bad += notFinite(v)
+    sum += v
     y[yAt + j] = v
   }
-  return bad
+  // A sum is finite when all its parts are.
+  return Math.abs(sum) < Number.POSITIVE_INFINITY ? 0 : countNotFinite(y, yAt, n)
 }
 
-/** 1 for NaN and the infinities, else 0. */
-export const notFinite = (v: number): number => (Math.abs(v) < Number.POSITIVE_INFINITY ? 0 : 1)
+/** How many of y[at … at + n) are not finite. */
+export function countNotFinite(y: Channel, at: number, n: number): number {
+  let count = 0
+  for (let j = at; j < at + n; j++) if (!Number.isFinite(y[j])) count++
+  return count
+}
 
 /** Where the dry signal of channel c stands, and the index there of the chunk's first sample. */
 function dryOf({ settings, lines, dryLines, input }: Core, c: number): Float64Array {

@@ -10,10 +10,12 @@ export interface SineTables {
   readonly centre: Float64Array
   readonly inSine: Float64Array
   readonly inCosine: Float64Array
+  /** Whether any read in use has a part in the cosine. */
+  cosine: boolean
 }
 
 export function createSineTables(): SineTables {
-  return { centre: new Float64Array(READS), inSine: new Float64Array(READS), inCosine: new Float64Array(READS) }
+  return { centre: new Float64Array(READS), inSine: new Float64Array(READS), inCosine: new Float64Array(READS), cosine: true }
 }
 
 /** Fills the tables and says whether they may be used: also, no read may come so near its limits that rounding could pass them. */
@@ -36,6 +38,8 @@ export function takeSine(s: Settings): boolean {
     inSine[LOOPS + c] = loopDepth * Math.cos(angle)
     inCosine[LOOPS + c] = loopDepth * Math.sin(angle)
   }
+  // Alone, voice 0 of channel 0 moves with the sine.
+  s.sineTables.cosine = s.voices.count > 1 || s.outputs > 1
   return staysInside(s)
 }
 

@@ -170,13 +170,13 @@ function putLoop(
 
 /** The sine: see sine.ts. */
 function evaluateSine(t: Trajectory, s: Settings, n: number, every: number, rows: number, into: Float64Array, row: number): void {
-  const { used, usedCount } = t
-  const { centre, inSine, inCosine } = s.sineTables
+  const { used, usedCount, now } = t
+  const { centre, inSine, inCosine, cosine: needed } = s.sineTables
   for (let i = 0; i < rows; i++) {
     putPhase(t, s, n + i * every)
-    const angle = 2 * Math.PI * (t.now[0]! - Math.floor(t.now[0]!))
+    const angle = 2 * Math.PI * (now[0]! - Math.floor(now[0]!))
     const sine = Math.sin(angle)
-    const cosine = Math.cos(angle)
+    const cosine = needed ? Math.cos(angle) : 0
     const at = row + i * READS
     for (let k = 0; k < usedCount; k++) {
       const r = used[k]!

@@ -4,15 +4,17 @@ import { execFileSync } from 'node:child_process'
 import { writeFileSync } from 'node:fs'
 import os from 'node:os'
 import { fileURLToPath } from 'node:url'
-import { allocationBench } from './allocation.ts'
 import type { Bench, Row } from './bench.ts'
-import { engineBench } from './engine.ts'
-import { pageFrame } from './page-frame.ts'
-import { pageSize } from './page-size.ts'
-import { pageWorklet } from './page-worklet.ts'
-import { pageWorkletLive } from './page-worklet-live.ts'
 
-const BENCHES: readonly Bench[] = [engineBench, allocationBench, pageWorklet, pageWorkletLive, pageFrame, pageSize]
+/** Loaded only when they run: what a bench needs, a browser or a bundler, would slow the one beside it. */
+const BENCHES: Readonly<Record<string, () => Promise<Bench>>> = {
+  engine: async () => (await import('./engine.ts')).engineBench,
+  allocation: async () => (await import('./allocation.ts')).allocationBench,
+  'page-worklet': async () => (await import('./page-worklet.ts')).pageWorklet,
+  'page-worklet-live': async () => (await import('./page-worklet-live.ts')).pageWorkletLive,
+  'page-frame': async () => (await import('./page-frame.ts')).pageFrame,
+  'page-size': async () => (await import('./page-size.ts')).pageSize,
+}
 
 interface Outcome {
   readonly title: string
@@ -21,9 +23,10 @@ interface Outcome {
   readonly reason?: string
 }
 
-async function outcomeOf({ title, run }: Bench): Promise<Outcome> {
+async function outcomeOf(bench: Bench): Promise<Outcome> {
+  const { title } = bench
   try {
-    return { title, rows: await run() }
+    return { title, rows: await bench.run() }
   } catch (error) {
     return { title, rows: [], reason: error instanceof Error ? (error.message.split('\n')[0] ?? '') : String(error) }
   }
@@ -76,14 +79,16 @@ function fail(message: string, hint: string): never {
 
 const names = process.argv.slice(2).filter((word) => word !== '--write')
 const write = process.argv.includes('--write')
-const unknown = names.find((name) => !BENCHES.some((bench) => bench.id === name))
-if (unknown !== undefined) fail(`no bench is called ${unknown}`, `there are ${BENCHES.map((bench) => bench.id).join(', ')}`)
+const ids = Object.keys(BENCHES)
+const unknown = names.find((name) => !ids.includes(name))
+if (unknown !== undefined) fail(`no bench is called ${unknown}`, `there are ${ids.join(', ')}`)
 if (write && names.length > 0) fail('--write needs all benches', 'leave the names out')
 
 const outcomes: Outcome[] = []
-for (const bench of BENCHES.filter(({ id }) => names.length === 0 || names.includes(id))) {
-  process.stderr.write(`running ${bench.id} …\n`)
-  const outcome = await outcomeOf(bench)
+for (const [id, load] of Object.entries(BENCHES)) {
+  if (names.length > 0 && !names.includes(id)) continue
+  process.stderr.write(`running ${id} …\n`)
+  const outcome = await outcomeOf(await load())
   outcomes.push(outcome)
   process.stdout.write(`${section(outcome)}\n`)
 }

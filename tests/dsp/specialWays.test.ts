@@ -49,6 +49,7 @@ it.each(seeds)('the single linear voice gives the bits of the general way, seed 
   const set = special(seed, (s) => ({
     ...s,
     layout: seed % 2 === 0 ? 'mono' : 'stereo',
+    input: { gainDb: 0, shaper: null },
     line: { ...s.line, interpolation: 'linear' },
     voices: { ...s.voices, count: 1 },
     loop: { ...s.loop, dampingHz: null, lowCutHz: null },
