@@ -5,7 +5,7 @@
 // Invariant: w[n − i] = samples[position − i] for 1 ≤ i ≤ length, with `position` that of n.
 
 /** Most samples processed between two looks at what moves. Cuts never change a result; this only sizes the scratch memory. */
-export const CHUNK = 512
+export const CHUNK = 1024
 
 /** Samples a line must keep for delays up to `maxDelay`: the oldest point of a cubic too. */
 export function lineLength(maxDelay: number): number {
@@ -14,7 +14,7 @@ export function lineLength(maxDelay: number): number {
 
 /** Memory of a line that keeps `length` samples. Writing begins at `length`. */
 export function createLine(length: number): Float64Array {
-  return new Float64Array(length + Math.max(length, 8 * CHUNK))
+  return new Float64Array(length + Math.max(length, 4 * CHUNK))
 }
 
 /** Moves the last `length` samples before the end to the start, from where writing goes on at `length`. */

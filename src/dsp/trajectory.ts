@@ -170,11 +170,13 @@ function putLoop(
 
 /** The sine: see sine.ts. */
 function evaluateSine(t: Trajectory, s: Settings, n: number, every: number, rows: number, into: Float64Array, row: number): void {
-  const { used, usedCount, now } = t
+  const { used, usedCount } = t
   const { centre, inSine, inCosine, cosine: needed } = s.sineTables
+  const perSample = t.held ? 0 : s.sweep.rateHz / t.fs
   for (let i = 0; i < rows; i++) {
-    putPhase(t, s, n + i * every)
-    const angle = 2 * Math.PI * (now[0]! - Math.floor(now[0]!))
+    // Of the absolute sample, so that cuts do not matter.
+    const phase = (n + i * every - t.since) * perSample + t.phase
+    const angle = 2 * Math.PI * (phase - Math.floor(phase))
     const sine = Math.sin(angle)
     const cosine = needed ? Math.cos(angle) : 0
     const at = row + i * READS
