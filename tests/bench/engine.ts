@@ -20,8 +20,9 @@ const WARM = 200
 
 interface Kernel {
   readonly what: string
-  readonly kind: 'stereo' | 'mono'
-  readonly most: number
+  readonly kind: 'stereo' | 'mono' | 'passes'
+  /** The target; absent for what only informs. */
+  readonly most?: number
   readonly set: ParameterSet
 }
 
@@ -34,19 +35,21 @@ const base = changedSet((s) => {
   s.sweep.updateEvery = 16
 })
 
+const fourVoices: ParameterSet = {
+  ...base,
+  layout: 'stereo',
+  line: { baseMs: 12, interpolation: 'lagrange3' },
+  sweep: { ...base.sweep, depthMs: 2.5, stereoPhase: 90 },
+  voices: { count: 4, phaseSpread: 360, spreadMs: 4 },
+  loop: { ...base.loop, dampingHz: 6000, lowCutHz: 80 },
+}
+
 const KERNELS: readonly Kernel[] = [
   {
     what: 'row 1: stereo, 4 voices, lagrange3, loop filters: time over that of C',
     kind: 'stereo',
     most: 1.25,
-    set: {
-      ...base,
-      layout: 'stereo',
-      line: { baseMs: 12, interpolation: 'lagrange3' },
-      sweep: { ...base.sweep, depthMs: 2.5, stereoPhase: 90 },
-      voices: { count: 4, phaseSpread: 360, spreadMs: 4 },
-      loop: { ...base.loop, dampingHz: 6000, lowCutHz: 80 },
-    },
+    set: fourVoices,
   },
   {
     what: 'row 2: mono, 1 voice, linear: time over that of C',
@@ -60,11 +63,12 @@ const KERNELS: readonly Kernel[] = [
       voices: { count: 1, phaseSpread: 360, spreadMs: 0 },
     },
   },
+  { what: 'row 1 against C in the passes the engine makes, which gcc vectorises', kind: 'passes', set: fourVoices },
 ]
 
 export const engineBench: Bench = {
   id: 'engine',
-  title: 'Engine against the same equations in C, Node',
+  title: 'Engine against the same equations in C, sample by sample in one loop, Node',
   async run() {
     const folder = mkdtempSync(path.join(os.tmpdir(), 'combwright-bench-'))
     try {
@@ -169,8 +173,7 @@ function row({ what, most }: Kernel, ratio: Ratio): Row {
     what,
     value: ratio.median,
     unit: '×',
-    target: `≤ ${two(most)}`,
-    met: ratio.median <= most,
-    how: `median of ${ROUNDS} rounds (half of them ${two(ratio.low)} to ${two(ratio.high)}), each the fastest of ${TURNS} renders of ${FRAMES} frames by either side, side after side; at best ${two(ratio.nsTypeScript)} ns a frame against ${two(ratio.nsC)} ns. C: kernels.c, the same equations sample by sample in one loop, gcc -O3 -march=native; both outputs agree within 1e-12.`,
+    ...(most !== undefined && { target: `≤ ${two(most)}`, met: ratio.median <= most }),
+    how: `median of ${ROUNDS} rounds (half of them ${two(ratio.low)} to ${two(ratio.high)}), each the fastest of ${TURNS} renders of ${FRAMES} frames by either side, side after side; at best ${two(ratio.nsTypeScript)} ns a frame against ${two(ratio.nsC)} ns. C: kernels.c, gcc -O3 -march=native, parameters read at run time; both outputs agree within 1e-12.`,
   }
 }

@@ -4,6 +4,7 @@
  *
  * stereo: two lines, any number of voices read by the third-order Lagrange filter, linear loop with damping and low cut.
  * mono:   one line, one voice and the loop read linearly.
+ * passes: as stereo, but cut into the passes that the engine makes (loop, then voice after voice, then mix), which gcc can vectorise.
  *
  * "kernels KIND FRAMES FILE" reads FRAMES doubles a channel from FILE, then per line on standard input runs them once from silence and prints
  * the nanoseconds it took; the line "dump" makes it write the output as raw doubles instead.
@@ -20,7 +21,7 @@
 typedef struct {
     double fs, base_ms, depth_ms, rate_hz, spread_ms, phase_spread, stereo_phase;
     double feedback, damping, low_cut, dry, wet;
-    int voices, every, channels;
+    int voices, every, channels, passes;
 } settings;
 
 typedef struct {
@@ -102,6 +103,45 @@ static void run_channel(const settings *s, state *st, int c, long into, const do
     st->high[c] = high;
 }
 
+/* The same channel in the engine's passes: while a delay stays between two samples its points follow one another. */
+static void run_passes(const settings *s, state *st, int c, long into, const double *restrict x, double *restrict y, long frames)
+{
+    const double a = s->damping, b = s->low_cut, g = s->feedback, dry = s->dry, wet = s->wet / sqrt(s->voices), part = 1.0 / s->every;
+    const double loop_from = st->loop_from[c], loop_slope = (st->loop_to[c] - loop_from) * part;
+    double low = st->low[c], before = st->before[c], high = st->high[c], m[64] = {0};
+    double *now = st->line[c] + st->position;
+    for (long i = 0; i < frames; i++) {
+        double delay = loop_from + loop_slope * (into + i);
+        int whole = (int)delay;
+        double q = now[i - whole] + (delay - whole) * (now[i - whole - 1] - now[i - whole]);
+        low = (1 - a) * q + a * low;
+        high = (1 + b) / 2 * (low - before) + b * high;
+        before = low;
+        now[i] = x[i] + g * high;
+    }
+    for (int v = 0; v < s->voices; v++) {
+        const double from = st->from[c][v], slope = (st->to[c][v] - from) * part;
+        for (long i = 0; i < frames;) {
+            int whole = (int)(from + slope * (into + i));
+            long stop = frames;
+            if ((int)(from + slope * (into + frames - 1)) != whole) {
+                stop = i + 1;
+                while ((int)(from + slope * (into + stop)) == whole) stop++;
+            }
+            const double *p = now - whole;
+            for (long j = i; j < stop; j++) {
+                double f = from + slope * (into + j) - whole, e = p[j - 1] - p[j], dd = e - (p[j] - p[j + 1]), older = p[j - 2] - p[j - 1] - e;
+                m[j] += p[j] + f * (e + 0.5 * (f - 1) * (dd + (1.0 / 3) * (f + 1) * (older - dd)));
+            }
+            i = stop;
+        }
+    }
+    for (long i = 0; i < frames; i++) y[i] = dry * x[i] + wet * m[i];
+    st->low[c] = low;
+    st->before[c] = before;
+    st->high[c] = high;
+}
+
 static void run_mono(const settings *s, state *st, long into, const double *restrict x, double *restrict y, long frames)
 {
     const double g = s->feedback, dry = s->dry, wet = s->wet, part = 1.0 / s->every;
@@ -126,7 +166,7 @@ static void run(const settings *s, state *st, double *const *x, double *const *y
         long n = room(s, st, into, frames - i);
         if (s->channels == 1) run_mono(s, st, into, x[0] + i, y[0] + i, n);
         else
-            for (int c = 0; c < 2; c++) run_channel(s, st, c, into, x[c] + i, y[c] + i, n);
+            for (int c = 0; c < 2; c++) (s->passes ? run_passes : run_channel)(s, st, c, into, x[c] + i, y[c] + i, n);
         i += n;
         st->n += n;
         st->position += n;
@@ -164,10 +204,11 @@ static settings read_settings(int stereo)
 int main(int argc, char **argv)
 {
     if (argc != 4) return 2;
-    int stereo = strcmp(argv[1], "stereo") == 0;
+    int stereo = strcmp(argv[1], "mono") != 0;
     long frames = atol(argv[2]);
     volatile settings from_outside = read_settings(stereo); /* so that nothing is folded into the loops */
     settings s = from_outside;
+    s.passes = strcmp(argv[1], "passes") == 0;
     double *x[2], *y[2];
     FILE *file = fopen(argv[3], "rb");
     if (!file) return 2;
