@@ -49,6 +49,7 @@ test('typing applies nothing on the way; leaving applies', async ({ page }) => {
 
 test('a value that needs a second change offers it in place; what sounds stays until then', async ({ page }) => {
   await openFile(page, setText({ line: { baseMs: 3.5 }, sweep: { depthMs: 2.5 }, voices: { count: 1 } }))
+  await expect(field(page, 'Base delay')).toHaveValue('3.50')
   await type(page, 'Base delay', '0.75')
   await expect(page.getByRole('alert').filter({ hasText: 'The delay would come to −1.75' })).toBeVisible()
   await expect(block(page, /^Two lines: 1\.00 to 6\.00 ms/)).toBeVisible()
@@ -139,6 +140,7 @@ test('a filter is switched on where it last stood', async ({ page }) => {
 
 test('first notch from … to … sets base and depth so that the response has it there', async ({ page }) => {
   await openFile(page, setText({ line: { baseMs: 3.5 }, sweep: { depthMs: 2.5 }, voices: { count: 1 } }))
+  await expect(field(page, 'Base delay')).toHaveValue('3.50')
   const low = field(page, 'First notch where the delay is largest')
   const high = field(page, 'First notch where the delay is smallest')
   // Oracle: an ideal comb with equal gains has its first notch at 1/(2τ): 83.3 Hz at 6 ms, 500 Hz at 1 ms.
