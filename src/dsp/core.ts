@@ -37,16 +37,18 @@ export interface Core {
   /** Where the next sample is written in every line, up to its end. */
   position: number
   readonly lines: Pair
-  /** u of each line, for a dry path that leaves at the input and is delayed. */
-  readonly dryLines: Pair
-  /** Whether dryLines are written; without, they have no memory. */
-  readonly keepsDry: boolean
+  /**
+   * u of each line: sample j of the chunk is u[c][uAt + j]. Where the dry path may be delayed u is kept like a line, and uAt is `position`;
+   * else there is only the chunk, and uAt is 0.
+   */
+  readonly u: Pair
+  uAt: number
+  readonly keepsInput: boolean
   readonly states: States
   /** x of each line: sample j of the chunk is source[c][sourceAt + j]. */
   readonly source: [Channel, Channel]
   sourceAt: number
-  /** A chunk each: u, s, w, wet and output by channel. */
-  readonly input: Pair
+  /** A chunk each: s, w, wet and output by channel. */
   readonly loop: Pair
   readonly written: Pair
   readonly wet: Pair
@@ -60,10 +62,11 @@ export interface CoreOptions {
   readonly fs: number
   /** Longest delay any read may have, samples. */
   readonly maxDelay: number
-  readonly keepsDry: boolean
+  /** Whether u is kept for a dry path that is delayed. */
+  readonly keepsInput: boolean
 }
 
-export function createCore({ fs, maxDelay, keepsDry }: CoreOptions): Core {
+export function createCore({ fs, maxDelay, keepsInput }: CoreOptions): Core {
   const length = lineLength(maxDelay)
   const trajectory = createTrajectory(fs)
   const states: States = {
@@ -84,12 +87,12 @@ export function createCore({ fs, maxDelay, keepsDry }: CoreOptions): Core {
     length,
     position: length,
     lines,
-    dryLines: keepsDry ? [createLine(length), createLine(length)] : pair(0),
-    keepsDry,
+    u: keepsInput ? [createLine(length), createLine(length)] : pair(CHUNK),
+    uAt: keepsInput ? length : 0,
+    keepsInput,
     states,
     source: [wet[0], wet[1]],
     sourceAt: 0,
-    input: pair(CHUNK),
     loop: pair(CHUNK),
     written: pair(CHUNK),
     wet,
@@ -101,7 +104,7 @@ export function createCore({ fs, maxDelay, keepsDry }: CoreOptions): Core {
 /** Below this the live engine takes a value of line or filters for 0: −600 dB; denormal numbers, which are slow, begin at −6150 dB. */
 const LEAST = 1e-30
 
-/** Sets the last FLUSH_EVERY samples of the lines and the recursive parts' memory to 0 where they have nearly died. */
+/** Sets the last CHUNK samples of the lines and the recursive parts' memory to 0 where they have nearly died. */
 export function flushCore({ lines, position, settings, states }: Core): void {
   for (let c = 0; c < settings.lines; c++) flushLine(lines[c]!, position, LEAST)
   flushSlots(states.damping)
@@ -116,10 +119,10 @@ function flushSlots(states: Float64Array): void {
 }
 
 /** Silence: lines and filters empty. Settings, ramps and phase stay. */
-export function clearCore({ lines, dryLines, states }: Core): void {
+export function clearCore({ lines, u, states }: Core): void {
   for (let c = 0; c < 2; c++) {
     lines[c]!.fill(0)
-    dryLines[c]!.fill(0)
+    u[c]!.fill(0)
   }
   states.damping.fill(0)
   states.lowCut.fill(0)
@@ -146,10 +149,11 @@ export function settleCore({ settings, ramps }: Core): void {
 /** Copies another core's memory and motion, not its settings. */
 export function copyMemory(to: Core, from: Core): void {
   to.position = from.position
+  to.uAt = from.uAt
   copyRamps(to.ramps, from.ramps)
   for (let c = 0; c < 2; c++) {
     to.lines[c]!.set(from.lines[c]!)
-    to.dryLines[c]!.set(from.dryLines[c]!)
+    to.u[c]!.set(from.u[c]!)
   }
   to.states.damping.set(from.states.damping)
   to.states.lowCut.set(from.states.lowCut)
@@ -163,15 +167,15 @@ export function copyMemory(to: Core, from: Core): void {
 }
 
 /** Makes memory copied from a core of another layout fit: one line becomes two alike, two become one by their mean, as inputs do. */
-export function fitMemory({ settings, lines, dryLines, states }: Core, linesBefore: number, outputsBefore: number): void {
+export function fitMemory({ settings, lines, u, states }: Core, linesBefore: number, outputsBefore: number): void {
   if (linesBefore < settings.lines) {
     lines[1].set(lines[0])
-    dryLines[1].set(dryLines[0])
+    u[1].set(u[0])
     copySlots(states.damping, 1)
     copySlots(states.lowCut, 2)
   } else if (linesBefore > settings.lines) {
     meanInto(lines[0], lines[1])
-    meanInto(dryLines[0], dryLines[1])
+    meanInto(u[0], u[1])
   }
   if (outputsBefore < settings.outputs) {
     copySlots(states.wetHighCut, 1)

@@ -44,9 +44,8 @@ export function runCore(core: Core, n: number): void {
   } else {
     for (let c = 0; c < settings.lines; c++) takeInput(core, c, n, moving)
     if (trajectory.loops) writeByPieces(core, moving)
-    else for (let c = 0; c < settings.lines; c++) writeLine(core.lines[c]!, core.position, core.input[c]!, 0, n)
+    else for (let c = 0; c < settings.lines; c++) writeLine(core.lines[c]!, core.position, core.u[c]!, core.uAt, n)
   }
-  if (core.keepsDry) for (let c = 0; c < settings.lines; c++) writeLine(core.dryLines[c]!, core.position, core.input[c]!, 0, n)
   for (let c = 0; c < settings.outputs; c++) {
     readVoices(core, c, n)
     toneWet(core, c, n, moving)
@@ -57,6 +56,7 @@ export function runCore(core: Core, n: number): void {
 export function endChunk(core: Core, n: number): void {
   core.position += n
   if (core.position === core.lines[0].length) rewind(core)
+  if (core.keepsInput) core.uAt = core.position
   if (!rampsMove(core.ramps)) return
   advanceRamps(core.ramps, n)
   if (!rampsMove(core.ramps)) settleCore(core)
@@ -66,7 +66,7 @@ export function endChunk(core: Core, n: number): void {
 function rewind(core: Core): void {
   for (let c = 0; c < core.settings.lines; c++) {
     rewindLine(core.lines[c]!, core.length)
-    if (core.keepsDry) rewindLine(core.dryLines[c]!, core.length)
+    if (core.keepsInput) rewindLine(core.u[c]!, core.length)
   }
   core.position = core.length
 }
@@ -85,15 +85,15 @@ function takeLoopOnOrOff({ settings, ramps, trajectory, states }: Core): void {
 
 /** u of line c from its source. */
 function takeInput(core: Core, c: number, n: number, moving: boolean): void {
-  const { settings, ramps, states, sourceAt } = core
+  const { settings, ramps, states, sourceAt, uAt } = core
   const x = core.source[c]!
-  const u = core.input[c]!
-  for (let j = 0; j < n; j++) u[j] = x[sourceAt + j]!
+  const u = core.u[c]!
+  for (let j = 0; j < n; j++) u[uAt + j] = x[sourceAt + j]!
   const shaper = settings.shapers[INPUT]!
-  scale(u, n, ramps, INPUT_GAIN, moving)
-  if (moving) shapeMoving(shaper, u, 0, n, ramps, ramps.elapsed, SHAPERS + INPUT * SHAPER_VALUES, states.shapers, 2 * INPUT + c)
-  else shape(shaper, u, 0, n, states.shapers, 2 * INPUT + c)
-  scale(u, n, ramps, INPUT_OPEN, moving)
+  scale(u, uAt, n, ramps, INPUT_GAIN, moving)
+  if (moving) shapeMoving(shaper, u, uAt, n, ramps, ramps.elapsed, SHAPERS + INPUT * SHAPER_VALUES, states.shapers, 2 * INPUT + c)
+  else shape(shaper, u, uAt, n, states.shapers, 2 * INPUT + c)
+  scale(u, uAt, n, ramps, INPUT_OPEN, moving)
 }
 
 /** Σ read of channel c. */

@@ -6,7 +6,7 @@ import { blendStraight, pathIsSilent, STRAIGHT } from './bypass.ts'
 import { type Channel, type Core, clearCore, flushCore } from './core.ts'
 import { beginChunk, chunkRoom, endChunk, runCore } from './corePass.ts'
 import type { Engine, EngineCounters } from './engineState.ts'
-import { FLUSH_EVERY } from './line.ts'
+import { CHUNK } from './line.ts'
 import { endFade, loadAtOnce } from './liveChanges.ts'
 import { countNotFinite, mix, mixesPlainly, mixTo } from './mix.ts'
 import { isOneVoice, oneVoice } from './oneVoice.ts'
@@ -44,7 +44,7 @@ function room(engine: Engine): number {
   let most = chunkRoom(core)
   if (engine.fading && idle) most = Math.min(most, chunkRoom(idle), engine.fadeLength - engine.fadeElapsed)
   if (rampsMove(bypass.ramps)) most = Math.min(most, bypass.ramps.length - bypass.ramps.elapsed)
-  return live ? Math.min(most, FLUSH_EVERY - (n % FLUSH_EVERY)) : most
+  return live ? Math.min(most, CHUNK - (n % CHUNK)) : most
 }
 
 function run(engine: Engine, input: readonly Channel[], output: readonly Channel[], at: number, n: number): void {
@@ -153,7 +153,7 @@ function give(y: Float64Array, to: Channel, at: number, n: number): number {
 function advance(engine: Engine, n: number): void {
   const { bypass, core, live } = engine
   engine.n += n
-  if (live && engine.n % FLUSH_EVERY === 0) {
+  if (live && engine.n % CHUNK === 0) {
     flushCore(core)
     if (engine.fading && engine.idle) flushCore(engine.idle)
   }

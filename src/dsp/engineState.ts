@@ -75,7 +75,7 @@ export function createEngine(set: ParameterSet, { sampleRate = set.sampleRate, m
   const options = {
     fs: sampleRate,
     maxDelay: Math.max(4, Math.ceil((longestMs * sampleRate) / 1000) + 1),
-    keepsDry: live || (set.mix.dryTap === 'input' && set.mix.dryDelayMs > 0),
+    keepsInput: live || (set.mix.dryTap === 'input' && set.mix.dryDelayMs > 0),
   }
   const engine: Engine = {
     fs: sampleRate,

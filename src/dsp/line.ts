@@ -4,7 +4,10 @@
 // samples: [ what is still needed … | written later … ], `position` is where the next sample goes; it is the core's, one for all its lines.
 // Invariant: w[n − i] = samples[position − i] for 1 ≤ i ≤ length, with `position` that of n.
 
-/** Most samples processed between two looks at what moves. Cuts never change a result; this only sizes the scratch memory. */
+/**
+ * Most samples processed between two looks at what moves; cuts never change a result. Also how often a live engine looks for values that have
+ * nearly died: what decays slowly does not come near denormal numbers in between, and what decays fast is through them at once.
+ */
 export const CHUNK = 1024
 
 /** Samples a line must keep for delays up to `maxDelay`: the oldest point of a cubic too. */
@@ -27,10 +30,11 @@ export function writeLine(line: Float64Array, position: number, from: Float64Arr
   for (let i = 0; i < n; i++) line[position + i] = from[j + i]!
 }
 
-/** How often, in samples, a live engine looks for values that have nearly died. Even a fast decay does not come near denormal numbers in between. */
-export const FLUSH_EVERY = 128
-
-/** Sets the last FLUSH_EVERY samples before `position` to 0 where they are smaller than `least`. */
+/**
+ * Sets the last CHUNK samples before `position` to 0 where they are smaller than `least`, if the last of them is: a line that sounds is left in
+ * peace.
+ */
 export function flushLine(line: Float64Array, position: number, least: number): void {
-  for (let i = Math.max(0, position - FLUSH_EVERY); i < position; i++) if (Math.abs(line[i]!) < least) line[i] = 0
+  if (Math.abs(line[position - 1]!) >= least) return
+  for (let i = Math.max(0, position - CHUNK); i < position; i++) if (Math.abs(line[i]!) < least) line[i] = 0
 }

@@ -14,11 +14,11 @@ export function isLinearLoop({ settings, ramps, trajectory }: Core, moving: bool
 
 /** Takes u of line c from its source and writes the line, for the whole chunk. */
 export function linearLoop(core: Core, c: number): void {
-  const { ramps, trajectory, states, position, sourceAt } = core
+  const { ramps, trajectory, states, position, sourceAt, uAt } = core
   const { ends, part, starts, into, count } = trajectory.runs
   const x = core.source[c]!
   const line = core.lines[c]!
-  const u = core.input[c]!
+  const u = core.u[c]!
   const gain = ramps.target[INPUT_GAIN]!
   const g = ramps.target[FEEDBACK]!
   const cut = ramps.target[LOW_CUT + 1] !== 0
@@ -60,7 +60,7 @@ export function linearLoop(core: Core, c: number): void {
           s = high
         }
         let v = x[sourceAt + j]! * gain
-        u[j] = v
+        u[uAt + j] = v
         line[at] = v + g * s
         f = from + slope * (since + j + 1) - whole
         x2 = line[i + 1]!
@@ -73,7 +73,7 @@ export function linearLoop(core: Core, c: number): void {
           s = high
         }
         v = x[sourceAt + j + 1]! * gain
-        u[j + 1] = v
+        u[uAt + j + 1] = v
         line[at + 1] = v + g * s
         i = (i + 2) | 0
         at = (at + 2) | 0
@@ -90,7 +90,7 @@ export function linearLoop(core: Core, c: number): void {
           s = high
         }
         const v = x[sourceAt + j]! * gain
-        u[j] = v
+        u[uAt + j] = v
         line[at] = v + g * s
         j++
       }

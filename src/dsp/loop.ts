@@ -59,10 +59,10 @@ function readLoop(core: Core, c: number, k: number, j: number, end: number, movi
 }
 
 /** w = u + g X s for samples j to end. */
-function feed({ settings, ramps, input, loop, written }: Core, first: number, end: number, moving: boolean): void {
+function feed({ settings, ramps, u, uAt, loop, written }: Core, first: number, end: number, moving: boolean): void {
   const { target, start, slope, elapsed } = ramps
-  const u0 = input[0]
-  const u1 = input[1]
+  const u0 = u[0]
+  const u1 = u[1]
   const s0 = loop[0]
   const s1 = loop[1]
   const w0 = written[0]
@@ -76,11 +76,11 @@ function feed({ settings, ramps, input, loop, written }: Core, first: number, en
     }
     const a = s0[j]!
     if (settings.lines === 1) {
-      w0[j] = u0[j]! + g * a
+      w0[j] = u0[uAt + j]! + g * a
     } else {
       const b = s1[j]!
-      w0[j] = u0[j]! + g * ((1 - k) * a + k * b)
-      w1[j] = u1[j]! + g * (k * a + (1 - k) * b)
+      w0[j] = u0[uAt + j]! + g * ((1 - k) * a + k * b)
+      w1[j] = u1[uAt + j]! + g * (k * a + (1 - k) * b)
     }
   }
 }

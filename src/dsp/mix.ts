@@ -25,7 +25,7 @@ export function mix(core: Core, c: number, n: number): void {
     mixTo(core, c, y, 0, n, false)
     shape(shaper, y, 0, n, states.shapers, 2 * OUTPUT + c)
   }
-  scale(y, n, ramps, OUTPUT_GAIN, moving)
+  scale(y, 0, n, ramps, OUTPUT_GAIN, moving)
 }
 
 /** Whether mixTo gives y as it is to be heard. */
@@ -69,12 +69,11 @@ export function countNotFinite(y: Channel, at: number, n: number): number {
 }
 
 /** Where the dry signal of channel c stands, and the index there of the chunk's first sample. */
-function dryOf({ settings, lines, dryLines, input }: Core, c: number): Float64Array {
+function dryOf({ settings, lines, u }: Core, c: number): Float64Array {
   const line = settings.lines === 2 ? c : 0
-  if (settings.dryFromLine) return lines[line]!
-  return settings.dryDelay === 0 ? input[line]! : dryLines[line]!
+  return settings.dryFromLine ? lines[line]! : u[line]!
 }
 
-function dryAt({ settings, position }: Core): number {
-  return settings.dryDelay === 0 && !settings.dryFromLine ? 0 : position - settings.dryDelay
+function dryAt({ settings, position, uAt }: Core): number {
+  return (settings.dryFromLine ? position : uAt) - settings.dryDelay
 }

@@ -13,7 +13,7 @@ export function isOneVoice(core: Core, output: readonly Channel[]): boolean {
   if (rampsMove(ramps) || settings.voices.count !== 1 || settings.voiceRead !== 'linear' || !isLinearLoop(core, false)) return false
   if (target[INPUT_GAIN] !== 1) return false
   if (target[DAMPING + 1] || target[LOW_CUT + 1] || target[WET_HIGH_CUT + 1] || target[WET_LOW_CUT + 1]) return false
-  if (core.keepsDry || settings.dryFromLine || settings.dryDelay > 0 || !mixesPlainly(core)) return false
+  if (core.keepsInput || settings.dryFromLine || settings.dryDelay > 0 || !mixesPlainly(core)) return false
   return settings.lines === settings.outputs && output.length === settings.outputs && (settings.lines === 1 || output[0] !== source[1])
 }
 

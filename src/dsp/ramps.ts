@@ -80,12 +80,12 @@ export function copyRamps(to: Ramps, from: Ramps): void {
   to.elapsed = from.elapsed
 }
 
-/** x · the value at slot `i`, in place. */
-export function scale(x: Float64Array, n: number, { target, start, slope, elapsed }: Ramps, i: number, moving: boolean): void {
+/** x[at … at + n) · the value at slot `i`, in place; `moving` while the ramps move. */
+export function scale(x: Float64Array, at: number, n: number, { target, start, slope, elapsed }: Ramps, i: number, moving: boolean): void {
   if (moving) {
-    for (let j = 0; j < n; j++) x[j] = x[j]! * (start[i]! + slope[i]! * (elapsed + j))
+    for (let j = 0; j < n; j++) x[at + j] = x[at + j]! * (start[i]! + slope[i]! * (elapsed + j))
   } else if (target[i] !== 1) {
     const gain = target[i]!
-    for (let j = 0; j < n; j++) x[j] = x[j]! * gain
+    for (let j = at; j < at + n; j++) x[j] = x[j]! * gain
   }
 }
