@@ -2,7 +2,7 @@
 import { type Core, settleCore } from './core.ts'
 import { planRuns } from './delays.ts'
 import { highPass, highPassMoving, lowPass, lowPassMoving } from './filterPasses.ts'
-import { CHUNK, rewindLine, writeLine } from './line.ts'
+import { CHUNK, type Lines, shareLine } from './line.ts'
 import { isLinearLoop, linearLoop } from './linearLoop.ts'
 import { writeByPieces } from './loop.ts'
 import {
@@ -24,8 +24,8 @@ import { shape, shapeMoving } from './shaperPass.ts'
 import { switchLoops } from './trajectory.ts'
 
 /** Samples that a chunk may have: to the end of the lines and of the ramps. */
-export function chunkRoom({ lines, position, ramps }: Core): number {
-  const room = Math.min(CHUNK, lines[0].length - position)
+export function chunkRoom({ lines, ramps }: Core): number {
+  const room = Math.min(CHUNK, lines.w[0].length - lines.position)
   return rampsMove(ramps) ? Math.min(room, ramps.length - ramps.elapsed) : room
 }
 
@@ -37,38 +37,40 @@ export function beginChunk(core: Core, first: number, n: number): void {
 
 /** Runs the n samples of the chunk from `source` to the lines and to the wet of each channel. The mix follows, then endChunk. */
 export function runCore(core: Core, n: number): void {
-  const { settings, trajectory } = core
+  const { settings, trajectory, lines } = core
   const moving = rampsMove(core.ramps)
   if (isLinearLoop(core, moving)) {
     for (let c = 0; c < settings.lines; c++) linearLoop(core, c)
   } else {
-    for (let c = 0; c < settings.lines; c++) takeInput(core, c, n, moving)
+    for (let c = 0; c < settings.lines; c++) takeInput(core, c, lines.u[c]!, lines.uAt, n)
     if (trajectory.loops) writeByPieces(core, moving)
-    else for (let c = 0; c < settings.lines; c++) writeLine(core.lines[c]!, core.position, core.u[c]!, core.uAt, n)
+    else for (let c = 0; c < settings.lines; c++) writeInput(lines, c, n)
   }
-  for (let c = 0; c < settings.outputs; c++) {
+  if (lines.keepsInput && settings.lines === 1) shareLine(lines, n)
+  readWet(core, n)
+}
+
+/** w = u: a line without a loop. */
+function writeInput({ w, u, uAt, position }: Lines, c: number, n: number): void {
+  const line = w[c]!
+  const from = u[c]!
+  for (let j = 0; j < n; j++) line[position + j] = from[uAt + j]!
+}
+
+/** The wet of each channel, once the lines are written. */
+export function readWet(core: Core, n: number): void {
+  const moving = rampsMove(core.ramps)
+  for (let c = 0; c < core.settings.outputs; c++) {
     readVoices(core, c, n)
     toneWet(core, c, n, moving)
   }
 }
 
-/** Moves on by the n samples of the chunk. */
+/** Moves the ramps on by the n samples of the chunk. */
 export function endChunk(core: Core, n: number): void {
-  core.position += n
-  if (core.position === core.lines[0].length) rewind(core)
-  if (core.keepsInput) core.uAt = core.position
   if (!rampsMove(core.ramps)) return
   advanceRamps(core.ramps, n)
   if (!rampsMove(core.ramps)) settleCore(core)
-}
-
-/** A line that is not in use is left behind; a change of layout copies the other one over it. */
-function rewind(core: Core): void {
-  for (let c = 0; c < core.settings.lines; c++) {
-    rewindLine(core.lines[c]!, core.length)
-    if (core.keepsInput) rewindLine(core.u[c]!, core.length)
-  }
-  core.position = core.length
 }
 
 /** A loop without feedback is not run; when it starts again its filters start from rest. */
@@ -83,25 +85,25 @@ function takeLoopOnOrOff({ settings, ramps, trajectory, states }: Core): void {
   switchLoops(trajectory, settings, on)
 }
 
-/** u of line c from its source. */
-function takeInput(core: Core, c: number, n: number, moving: boolean): void {
-  const { settings, ramps, states, sourceAt, uAt } = core
+/** u of line c from its source, to u[at …]. */
+export function takeInput(core: Core, c: number, u: Float64Array, at: number, n: number): void {
+  const { settings, ramps, states, sourceAt } = core
   const x = core.source[c]!
-  const u = core.u[c]!
-  for (let j = 0; j < n; j++) u[uAt + j] = x[sourceAt + j]!
+  for (let j = 0; j < n; j++) u[at + j] = x[sourceAt + j]!
   const shaper = settings.shapers[INPUT]!
-  scale(u, uAt, n, ramps, INPUT_GAIN, moving)
-  if (moving) shapeMoving(shaper, u, uAt, n, ramps, ramps.elapsed, SHAPERS + INPUT * SHAPER_VALUES, states.shapers, 2 * INPUT + c)
-  else shape(shaper, u, uAt, n, states.shapers, 2 * INPUT + c)
-  scale(u, uAt, n, ramps, INPUT_OPEN, moving)
+  const moving = rampsMove(ramps)
+  scale(u, at, n, ramps, INPUT_GAIN, moving)
+  if (moving) shapeMoving(shaper, u, at, n, ramps, ramps.elapsed, SHAPERS + INPUT * SHAPER_VALUES, states.shapers, 2 * INPUT + c)
+  else shape(shaper, u, at, n, states.shapers, 2 * INPUT + c)
+  scale(u, at, n, ramps, INPUT_OPEN, moving)
 }
 
 /** Σ read of channel c. */
-function readVoices({ settings, lines, position, read, wet }: Core, c: number, n: number): void {
+function readVoices({ settings, lines, read, wet }: Core, c: number, n: number): void {
   const m = wet[c]!
   m.fill(0, 0, n)
-  read.line = lines[settings.lines === 2 ? c : 0]!
-  read.at = position
+  read.line = lines.w[settings.lines === 2 ? c : 0]!
+  read.at = lines.position
   read.out = m
   for (let v = 0; v < settings.voices.count; v++) {
     read.read = c * MAX_VOICES + v

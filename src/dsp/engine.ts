@@ -3,10 +3,11 @@
 
 import type { Layout } from '../set/types.ts'
 import { blendStraight, pathIsSilent, STRAIGHT } from './bypass.ts'
-import { type Channel, type Core, clearCore, flushCore } from './core.ts'
+import { type Channel, type Core, clearCore, flushCore, LEAST } from './core.ts'
 import { beginChunk, chunkRoom, endChunk, runCore } from './corePass.ts'
 import type { Engine, EngineCounters } from './engineState.ts'
-import { CHUNK } from './line.ts'
+import { blend, runFading } from './fade.ts'
+import { advanceLines, CHUNK, clearLines, flushLines } from './line.ts'
 import { endFade, loadAtOnce } from './liveChanges.ts'
 import { countNotFinite, mix, mixesPlainly, mixTo } from './mix.ts'
 import { isOneVoice, oneVoice } from './oneVoice.ts'
@@ -60,11 +61,15 @@ function run(engine: Engine, input: readonly Channel[], output: readonly Channel
       advance(engine, n)
       return
     }
-    runThrough(core, n)
     if (engine.fading && idle) {
       begin(engine, idle, input, at, n)
-      runThrough(idle, n)
-      for (let c = 0; c < 2; c++) fadeInto(core.output[c]!, idle.output[c]!, engine.fadeElapsed, engine.fadeLength, n)
+      runFading(idle, core, n, engine)
+      mixAll(core, n)
+      mixAll(idle, n)
+      for (let c = 0; c < 2; c++) blend(core.output[c]!, 0, idle.output[c]!, n, engine)
+    } else {
+      runCore(core, n)
+      mixAll(core, n)
     }
   }
   if (straightHeard) for (let c = 0; c < 2; c++) blendStraight(bypass, core.output[c]!, straight[c]!, n)
@@ -92,19 +97,17 @@ function runPlainly(core: Core, output: readonly Channel[], at: number, n: numbe
   return bad
 }
 
-/** A chunk to `output`, the second channel like the first where there is one. */
-function runThrough(core: Core, n: number): void {
-  runCore(core, n)
+/** The mix of a core to its `output`, the second channel like the first where there is one, and the chunk's end. */
+function mixAll(core: Core, n: number): void {
   for (let c = 0; c < core.settings.outputs; c++) mix(core, c, n)
   if (core.settings.outputs === 1) core.output[1].set(core.output[0])
   endChunk(core, n)
 }
 
-/** Sets x of each channel of `channels`: the input's own, the last one again where it has fewer, the mean of all where it has more. */
-function route({ mean }: Engine, source: [Channel, Channel], input: readonly Channel[], channels: number, at: number, n: number): void {
-  const count = input.length
-  if (count > 0 && count <= channels) {
-    for (let c = 0; c < channels; c++) source[c] = input[Math.min(c, count - 1)]!
+/** Sets x of both lines, for a layout of `count` lines: the input's own, the last one again where it has fewer, the mean of all where it has more. */
+function route({ mean }: Engine, source: [Channel, Channel], input: readonly Channel[], count: number, at: number, n: number): void {
+  if (input.length > 0 && input.length <= count) {
+    for (let c = 0; c < 2; c++) source[c] = input[Math.min(c, input.length - 1)]!
     return
   }
   takeMean(input, mean, at, n)
@@ -136,14 +139,6 @@ function takeStraight({ straight }: Engine, input: readonly Channel[], lines: nu
   add(input[Math.min(c, count - 1)]!, at, x, n)
 }
 
-/** y = old + (y − old) t, t from 0 to 1 over the fade. The two are alike enough for equal gain. */
-function fadeInto(y: Float64Array, old: Float64Array, elapsed: number, length: number, n: number): void {
-  for (let j = 0; j < n; j++) {
-    const t = (elapsed + j) / length
-    y[j] = (1 - t) * old[j]! + t * y[j]!
-  }
-}
-
 /** Writes y out and returns how many of its samples are not finite. */
 function give(y: Float64Array, to: Channel, at: number, n: number): number {
   for (let j = 0; j < n; j++) to[at + j] = y[j]!
@@ -151,9 +146,11 @@ function give(y: Float64Array, to: Channel, at: number, n: number): number {
 }
 
 function advance(engine: Engine, n: number): void {
-  const { bypass, core, live } = engine
+  const { bypass, core, live, lines } = engine
   engine.n += n
+  if (!pathIsSilent(bypass)) advanceLines(lines, n, live ? 2 : core.settings.lines)
   if (live && engine.n % CHUNK === 0) {
+    flushLines(lines, LEAST)
     flushCore(core)
     if (engine.fading && engine.idle) flushCore(engine.idle)
   }
@@ -173,6 +170,7 @@ function stop(engine: Engine): void {
   engine.pending = false
   loadAtOnce(engine)
   clearCore(engine.core)
+  clearLines(engine.lines)
 }
 
 /** Position of channel 0's voice 0 in its cycle at the next sample, 0 to 1. */

@@ -1,7 +1,7 @@
 // What an engine is made of, and the making of one: everything it will ever need is taken here.
 //
-// Two cores, one sounding. A change of gains, filters or (gliding) delays moves inside it; any other is loaded into the second core, on a
-// copy of the first one's memory, and the two cross-fade. While nothing was changed, phases are closed forms and coefficients constant.
+// Two cores on the same lines, one sounding. A change of gains, filters or (gliding) delays moves inside it; any other is loaded into the
+// second core, and the two cross-fade. While nothing was changed, phases are closed forms and coefficients constant.
 import { delayRange, MAX_DELAY_MS } from '../set/delayRange.ts'
 import { drawnProblems } from '../set/drawnPoints.ts'
 import { FLAT_PARAMETERS, flatten } from '../set/flat.ts'
@@ -11,7 +11,7 @@ import { valueProblem } from '../set/valueProblem.ts'
 import { type Bypass, createBypass } from './bypass.ts'
 import { type Core, createCore, loadCore } from './core.ts'
 import type { Acceptance } from './flatRules.ts'
-import { CHUNK } from './line.ts'
+import { CHUNK, createLines, type Lines } from './line.ts'
 import { rampLength } from './ramps.ts'
 import { startPhase } from './trajectory.ts'
 
@@ -39,6 +39,7 @@ export interface EngineCounters {
 export interface Engine {
   readonly fs: number
   readonly live: boolean
+  readonly lines: Lines
   /** The core that is heard, or fading in. */
   core: Core
   /** The other one; null unless live. */
@@ -72,16 +73,14 @@ export function createEngine(set: ParameterSet, { sampleRate = set.sampleRate, m
   if (!(sampleRate >= 1000 && sampleRate <= 768000)) throw new RangeError(`sampleRate must be in [1000, 768000] Hz, got ${sampleRate}`)
   const longestMs = maxDelayMs ?? longestDelayMs(set, sampleRate)
   if (!(longestMs >= 0 && longestMs <= MAX_DELAY_MS)) throw new RangeError(`maxDelayMs must be in [0, ${MAX_DELAY_MS}], got ${longestMs}`)
-  const options = {
-    fs: sampleRate,
-    maxDelay: Math.max(4, Math.ceil((longestMs * sampleRate) / 1000) + 1),
-    keepsInput: live || (set.mix.dryTap === 'input' && set.mix.dryDelayMs > 0),
-  }
+  const maxDelay = Math.max(4, Math.ceil((longestMs * sampleRate) / 1000) + 1)
+  const lines = createLines(maxDelay, live || (set.mix.dryTap === 'input' && set.mix.dryDelayMs > 0))
   const engine: Engine = {
     fs: sampleRate,
     live,
-    core: createCore(options),
-    idle: live ? createCore(options) : null,
+    lines,
+    core: createCore(sampleRate, maxDelay, lines),
+    idle: live ? createCore(sampleRate, maxDelay, lines) : null,
     fading: false,
     fadeElapsed: 0,
     fadeLength: rampLength(sampleRate),

@@ -14,11 +14,12 @@ export function isLinearLoop({ settings, ramps, trajectory }: Core, moving: bool
 
 /** Takes u of line c from its source and writes the line, for the whole chunk. */
 export function linearLoop(core: Core, c: number): void {
-  const { ramps, trajectory, states, position, sourceAt, uAt } = core
+  const { ramps, trajectory, states, lines, sourceAt } = core
+  const { position, uAt } = lines
   const { ends, part, starts, into, count } = trajectory.runs
   const x = core.source[c]!
-  const line = core.lines[c]!
-  const u = core.u[c]!
+  const line = lines.w[c]!
+  const u = lines.u[c]!
   const gain = ramps.target[INPUT_GAIN]!
   const g = ramps.target[FEEDBACK]!
   const cut = ramps.target[LOW_CUT + 1] !== 0

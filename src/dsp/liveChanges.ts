@@ -2,7 +2,7 @@
 // cross-fade; layout, interpolators, curves, voices and the dry path's place cross-fade. One cross-fade at a time: what comes during one
 // waits, the latest winning. Nothing here throws or allocates.
 import { aimBypass, type BypassMode, pathIsSilent } from './bypass.ts'
-import { type Core, copyMemory, fitMemory, loadCore } from './core.ts'
+import { type Core, copyStates, fitStates, loadCore } from './core.ts'
 import type { DelayChange, Engine } from './engineState.ts'
 import { acceptFlat, DELAY, GAIN, RATE, STRUCTURE } from './flatRules.ts'
 import { setTargets } from './gains.ts'
@@ -100,14 +100,14 @@ function glideDelays({ accepted, n }: Engine, { trajectory, settings }: Core): v
   glideFrom(trajectory, settings, n, trajectory.noted)
 }
 
-/** Makes `next` the sounding core, on a copy of the present one's memory and with the accepted set, and fades the present one out. */
+/** Makes `next` the sounding core, with the accepted set and what the present one remembers, and fades the present one out. */
 function beginFade(engine: Engine, next: Core): void {
   const { core, accepted, bypass, n } = engine
   noteDelays(core.trajectory, core.settings, n)
-  copyMemory(next, core)
+  copyStates(next, core)
   keepPhase(next.trajectory, core.settings, n, accepted)
   loadCore(next, accepted, bypass.inputOpen, bypass.dryOpen)
-  fitMemory(next, core.settings.lines, core.settings.outputs)
+  fitStates(next, core.settings.lines, core.settings.outputs)
   if (engine.delayChange === 'glide') glideFrom(next.trajectory, next.settings, n, core.trajectory.noted)
   engine.core = next
   engine.idle = core

@@ -3,31 +3,38 @@
 import type { Core } from './core.ts'
 import { smallestLoopDelay } from './delays.ts'
 import { highPass, highPassMoving, lowPass, lowPassMoving } from './filterPasses.ts'
-import { writeLine } from './line.ts'
 import { CROSS_FEED, DAMPING, FEEDBACK, LOW_CUT, SHAPER_VALUES, SHAPERS } from './ramps.ts'
 import { addPiece } from './reads.ts'
 import { LOOPS } from './runs.ts'
 import { LOOP } from './settings.ts'
 import { shape, shapeMoving } from './shaperPass.ts'
 
-/** Writes the lines for u[0 … n) as the loops of the chunk need it; `moving` while the ramps move. */
+/** Writes the lines as u and the loops of the chunk need it; `moving` while the ramps move. */
 export function writeByPieces(core: Core, moving: boolean): void {
-  const { settings, trajectory, position, written } = core
+  const { settings, trajectory } = core
   const { count, starts } = trajectory.runs
   const longest = longestPiece(core)
   for (let k = 0; k < count; k++) {
     const runEnd = starts[k + 1]!
     for (let j = starts[k]!; j < runEnd; j += longest) {
       const end = Math.min(j + longest, runEnd)
-      for (let c = 0; c < settings.lines; c++) readLoop(core, c, k, j, end, moving)
-      feed(core, j, end, moving)
-      for (let c = 0; c < settings.lines; c++) writeLine(core.lines[c]!, position + j, written[c]!, j, end - j)
+      feedBack(core, k, j, end, moving)
+      for (let c = 0; c < settings.lines; c++) write(core, c, j, end)
     }
   }
 }
 
+function write({ lines, fed }: Core, c: number, first: number, end: number): void {
+  const { position, uAt } = lines
+  const line = lines.w[c]!
+  const u = lines.u[c]!
+  const back = fed[c]!
+  for (let j = first; j < end; j++) line[position + j] = u[uAt + j]! + back[j]!
+}
+
 /** Samples that can be read before the first of them is written: the newest point of the first read is then still older than the piece. */
-function longestPiece({ settings, trajectory }: Core): number {
+export function longestPiece({ settings, trajectory }: Core): number {
+  if (!trajectory.loops) return Number.POSITIVE_INFINITY
   let smallest = Number.POSITIVE_INFINITY
   for (let c = 0; c < settings.lines; c++) smallest = Math.min(smallest, smallestLoopDelay(trajectory, c))
   const cubic = settings.loopRead === 'lagrange3' || settings.loopRead === 'hermite4'
@@ -42,8 +49,8 @@ function readLoop(core: Core, c: number, k: number, j: number, end: number, movi
   const shaper = settings.shapers[LOOP]!
   s.fill(0, j, end)
   read.read = LOOPS + c
-  read.line = core.lines[c]!
-  read.at = core.position
+  read.line = core.lines.w[c]!
+  read.at = core.lines.position
   read.out = s
   addPiece(settings.loopRead, read, k, j, end)
   if (moving) {
@@ -58,29 +65,35 @@ function readLoop(core: Core, c: number, k: number, j: number, end: number, movi
   shape(shaper, s, j, n, states.shapers, 2 * LOOP + c)
 }
 
-/** w = u + g X s for samples j to end. */
-function feed({ settings, ramps, u, uAt, loop, written }: Core, first: number, end: number, moving: boolean): void {
+/** g X s of both lines for samples first to end, inside run k, into `fed`; the second like the first where there is one line. */
+export function feedBack(core: Core, k: number, first: number, end: number, moving: boolean): void {
+  const { settings, ramps, loop, fed, trajectory } = core
   const { target, start, slope, elapsed } = ramps
-  const u0 = u[0]
-  const u1 = u[1]
   const s0 = loop[0]
   const s1 = loop[1]
-  const w0 = written[0]
-  const w1 = written[1]
+  const w0 = fed[0]
+  const w1 = fed[1]
+  if (!trajectory.loops) {
+    w0.fill(0, first, end)
+    w1.fill(0, first, end)
+    return
+  }
+  for (let c = 0; c < settings.lines; c++) readLoop(core, c, k, first, end, moving)
   let g = target[FEEDBACK]!
-  let k = target[CROSS_FEED]!
+  let cross = target[CROSS_FEED]!
   for (let j = first; j < end; j++) {
     if (moving) {
       g = start[FEEDBACK]! + slope[FEEDBACK]! * (elapsed + j)
-      k = start[CROSS_FEED]! + slope[CROSS_FEED]! * (elapsed + j)
+      cross = start[CROSS_FEED]! + slope[CROSS_FEED]! * (elapsed + j)
     }
     const a = s0[j]!
     if (settings.lines === 1) {
-      w0[j] = u0[uAt + j]! + g * a
+      w0[j] = g * a
+      w1[j] = w0[j]!
     } else {
       const b = s1[j]!
-      w0[j] = u0[uAt + j]! + g * ((1 - k) * a + k * b)
-      w1[j] = u1[uAt + j]! + g * (k * a + (1 - k) * b)
+      w0[j] = g * ((1 - cross) * a + cross * b)
+      w1[j] = g * (cross * a + (1 - cross) * b)
     }
   }
 }

@@ -69,11 +69,10 @@ export function countNotFinite(y: Channel, at: number, n: number): number {
 }
 
 /** Where the dry signal of channel c stands, and the index there of the chunk's first sample. */
-function dryOf({ settings, lines, u }: Core, c: number): Float64Array {
-  const line = settings.lines === 2 ? c : 0
-  return settings.dryFromLine ? lines[line]! : u[line]!
+function dryOf({ settings, lines }: Core, c: number): Float64Array {
+  return (settings.dryFromLine ? lines.w : lines.u)[settings.lines === 2 ? c : 0]!
 }
 
-function dryAt({ settings, position, uAt }: Core): number {
-  return (settings.dryFromLine ? position : uAt) - settings.dryDelay
+function dryAt({ settings, lines }: Core): number {
+  return (settings.dryFromLine ? lines.position : lines.uAt) - settings.dryDelay
 }

@@ -13,17 +13,18 @@ export function isOneVoice(core: Core, output: readonly Channel[]): boolean {
   if (rampsMove(ramps) || settings.voices.count !== 1 || settings.voiceRead !== 'linear' || !isLinearLoop(core, false)) return false
   if (target[INPUT_GAIN] !== 1) return false
   if (target[DAMPING + 1] || target[LOW_CUT + 1] || target[WET_HIGH_CUT + 1] || target[WET_LOW_CUT + 1]) return false
-  if (core.keepsInput || settings.dryFromLine || settings.dryDelay > 0 || !mixesPlainly(core)) return false
+  if (core.lines.keepsInput || settings.dryFromLine || settings.dryDelay > 0 || !mixesPlainly(core)) return false
   return settings.lines === settings.outputs && output.length === settings.outputs && (settings.lines === 1 || output[0] !== source[1])
 }
 
 /** Plays channel c of the chunk that is planned, to y[at …]. Returns how many samples are not finite. */
 export function oneVoice(core: Core, c: number, y: Channel, at: number): number {
-  const { settings, ramps, trajectory, position, sourceAt } = core
+  const { settings, ramps, trajectory, lines, sourceAt } = core
+  const { position } = lines
   const { target } = ramps
   const { ends, part, starts, into, count } = trajectory.runs
   const x = core.source[c]!
-  const line = core.lines[c]!
+  const line = lines.w[c]!
   const g = target[FEEDBACK]!
   const dry = target[OUTPUT_GAIN]! * target[DRY]!
   const wet = target[OUTPUT_GAIN]! * target[WET + c]! * settings.voiceScale

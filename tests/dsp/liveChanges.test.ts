@@ -189,6 +189,39 @@ describe.each<DelayChange>(['glide', 'crossfade'])('no click when delays %s', (h
   })
 })
 
+// The line takes in what the loop gives: a step there would be heard a delay later, long after the 20 ms of the cross-fade.
+describe.each<DelayChange>(['glide', 'crossfade'])('no click a delay later when delays %s', (how) => {
+  const strong = changed(start, {
+    'line.baseMs': 40,
+    'loop.feedback': 0.8,
+    'loop.dampingHz': null,
+    'loop.shaper': { ...shaper, drive: 4, ceiling: 0.25 },
+    'input.shaper': { ...shaper, drive: 3, ceiling: 0.4, antialias: 'adaa1' },
+  })
+  it.each([
+    ['loop.delay', 'fixed'],
+    ['loop.interpolation', 'allpass1'],
+    ['loop.shaper', null],
+    ['loop.shaper.curve', 'hardClip'],
+    ['loop.shaper.antialias', 'adaa1'],
+    ['input.shaper', null],
+    ['layout', 'mono'],
+    ['layout', 'monoToStereo'],
+    ['line.baseMs', 47],
+    ['sweep.startPhase', 0.5],
+  ])('%s %s', (path, value) => {
+    const to = changed(strong, { [path]: value })
+    const send =
+      (set: ParameterSet): Act =>
+      (engine) => {
+        setDelayChange(engine, how)
+        retargetEngine(engine, flatten(set))
+      }
+    expect(clickOf(strong, send(to))).toBeLessThan(NO_CLICK)
+    expect(clickOf(to, send(strong))).toBeLessThan(NO_CLICK)
+  })
+})
+
 it('every parameter that is heard has its change above', () => {
   const heard = FLAT_PARAMETERS.map((p) => p.path).filter((path) => path !== 'sampleRate' && !path.includes('.table'))
   const missing = heard.filter((path) => !(path in changes) && !/^(input|mix)\.shaper\./.test(path))
