@@ -2,7 +2,7 @@
 // in the same order as corePass.ts and loop.ts, so the same bits, but sample after sample, with everything kept at hand.
 import type { Core } from './core.ts'
 import { CROSS_FEED, DAMPING, FEEDBACK, INPUT_GAIN, INPUT_OPEN, LOW_CUT } from './ramps.ts'
-import { LOOPS, READS } from './runs.ts'
+import { LOOPS, READS, stretchEnd } from './runs.ts'
 import { INPUT, LOOP } from './settings.ts'
 
 /** Whether input and loop are those that linearLoop plays. */
@@ -40,11 +40,7 @@ export function linearLoop(core: Core, c: number): void {
     // Cut where the delay passes a whole sample, as in reads.ts.
     for (let j = first; j < end; ) {
       const whole = (from + slope * (since + j)) | 0
-      let stop = end
-      if (((from + slope * (since + end - 1)) | 0) !== whole) {
-        stop = j + 1
-        while (((from + slope * (since + stop)) | 0) === whole) stop++
-      }
+      const stop = stretchEnd(trajectory.runs, LOOPS + c, k, j, end)
       let at = position + j
       let i = at - whole
       let x2 = line[i - 1]!

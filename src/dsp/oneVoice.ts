@@ -1,5 +1,6 @@
-// The smallest effect in one go: one voice and the loop both read linearly, nothing scaled at the input, filtered, shaped,
-// crossed or delayed on the dry path. The same operations in the same order as the general way, so the same bits, but from input to output sample after sample.
+// The smallest effect in one go: one voice and the loop both read linearly; nothing scaled at the input, filtered, shaped, crossed, or
+// delayed on the dry path. The same operations in the same order as the general way, so the same bits, but from input to output, sample
+// after sample.
 import type { Channel, Core } from './core.ts'
 import { isLinearLoop } from './linearLoop.ts'
 import { countNotFinite, mixesPlainly } from './mix.ts'
@@ -36,7 +37,7 @@ export function oneVoice(core: Core, c: number, y: Channel, at: number): number 
     const loopSlope = (ends[(k + 1) * READS + LOOPS + c]! - loopFrom) * part
     const end = starts[k + 1]!
     const since = into[k]! - starts[k]!
-    // Cut where either delay passes a whole sample, as in reads.ts.
+    // Cut where either delay passes a whole sample: two of stretchEnd's in one, since here every step counts.
     for (let j = starts[k]!; j < end; ) {
       const whole = (from + slope * (since + j)) | 0
       const loopWhole = (loopFrom + loopSlope * (since + j)) | 0

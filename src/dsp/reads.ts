@@ -5,7 +5,7 @@
 // While a delay stays between the same two samples, what is read are samples that follow one another: a run is cut where that ends, and
 // each sample is fetched once and handed on. x0 is the newest point, at I − 1, x3 the oldest.
 import type { Interpolation } from '../set/types.ts'
-import { READS, type Runs } from './runs.ts'
+import { READS, type Runs, stretchEnd } from './runs.ts'
 
 export interface Read {
   readonly runs: Runs
@@ -51,11 +51,7 @@ function addLinear({ runs, read, line, at, out }: Read, k: number, first: number
   const into = runs.into[k]! - runs.starts[k]!
   for (let j = first; j < end; ) {
     const whole = (from + slope * (into + j)) | 0
-    let stop = end
-    if (((from + slope * (into + end - 1)) | 0) !== whole) {
-      stop = j + 1
-      while (((from + slope * (into + stop)) | 0) === whole) stop++
-    }
+    const stop = stretchEnd(runs, read, k, j, end)
     let i = at + j - whole
     let x2 = line[i - 1]!
     for (; j < stop; j++) {
@@ -75,11 +71,7 @@ function addLagrange3({ runs, read, line, at, out }: Read, k: number, first: num
   const into = runs.into[k]! - runs.starts[k]!
   for (let j = first; j < end; ) {
     const whole = (from + slope * (into + j)) | 0
-    let stop = end
-    if (((from + slope * (into + end - 1)) | 0) !== whole) {
-      stop = j + 1
-      while (((from + slope * (into + stop)) | 0) === whole) stop++
-    }
+    const stop = stretchEnd(runs, read, k, j, end)
     let i = at + j - whole
     let x1 = line[i]!
     const x2 = line[i - 1]!
@@ -115,11 +107,7 @@ function addHermite4({ runs, read, line, at, out }: Read, k: number, first: numb
   const into = runs.into[k]! - runs.starts[k]!
   for (let j = first; j < end; ) {
     const whole = (from + slope * (into + j)) | 0
-    let stop = end
-    if (((from + slope * (into + end - 1)) | 0) !== whole) {
-      stop = j + 1
-      while (((from + slope * (into + stop)) | 0) === whole) stop++
-    }
+    const stop = stretchEnd(runs, read, k, j, end)
     let i = at + j - whole
     let x1 = line[i]!
     let x2 = line[i - 1]!

@@ -29,3 +29,18 @@ export function createRuns(): Runs {
     part: 0.5,
   }
 }
+
+/**
+ * Index after the last sample, at most `end`, up to which read r stays between the same two samples as at sample j; both inside run k. Whole
+ * numbers in and out, so that nothing is boxed.
+ */
+export function stretchEnd({ ends, part, starts, into }: Runs, r: number, k: number, j: number, end: number): number {
+  const from = ends[k * READS + r]!
+  const slope = (ends[(k + 1) * READS + r]! - from) * part
+  const since = into[k]! - starts[k]!
+  const whole = (from + slope * (since + j)) | 0
+  if (((from + slope * (since + end - 1)) | 0) === whole) return end
+  let stop = j + 1
+  while (((from + slope * (since + stop)) | 0) === whole) stop++
+  return stop
+}
