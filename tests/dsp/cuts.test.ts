@@ -12,6 +12,7 @@ import {
   retargetEngine,
   setBypass,
   setDelayChange,
+  sweepPosition,
 } from '../../src/dsp/engine.ts'
 import { flatten } from '../../src/set/flat.ts'
 import type { ParameterSet } from '../../src/set/types.ts'
@@ -83,6 +84,30 @@ describe('cuts change no bit while live changes are under way', () => {
       expected,
     )
   })
+})
+
+it('half a day in, where sample numbers pass 32 bits, cuts still change no bit and the sweep is where it belongs', () => {
+  const set = randomSet(1004)
+  const from = 2 ** 31 - 700
+  const late = (cuts: (length: number) => readonly number[]) => {
+    const engine = createEngine(set, { live: false })
+    engine.n = from
+    const output = Array.from({ length: outputChannels(set.layout) }, () => new Float64Array(FRAMES))
+    let n = 0
+    for (const length of cuts(FRAMES)) {
+      processEngine(engine, input, output, length, n)
+      n += length
+    }
+    const phase = ((from + FRAMES) * set.sweep.rateHz) / set.sampleRate + set.sweep.startPhase
+    expect(sweepPosition(engine)).toBeCloseTo(phase - Math.floor(phase), 9)
+    return output
+  }
+  const r = random(99)
+  expectSameBits(late(singly), late(whole))
+  expectSameBits(
+    late((n) => cutsOf(r, n)),
+    late(whole),
+  )
 })
 
 function eventOf(r: Random): (engine: Engine) => void {
