@@ -94,15 +94,18 @@ function hold(t: Trajectory, longest: number, n: number, least: number): void {
   }
 }
 
-/** Smallest delay at which the loop of line c reads in the chunk, samples: a run is smallest at one of its ends. */
-export function smallestLoopDelay({ runs }: Trajectory, c: number): number {
-  const r = LOOPS + c
+/**
+ * Largest whole number of samples, at least 1, by which even the newest point of every loop read of line c in the chunk stays behind; a `cubic` takes
+ * one that is nearer. A run is smallest at one of its ends. No fractions in or out: those may be boxed, which allocates.
+ */
+export function loopReach({ runs }: Trajectory, c: number, cubic: boolean): number {
+  const { ends, part, starts, into, count } = runs
   let smallest = Number.POSITIVE_INFINITY
-  for (let k = 0; k < runs.count; k++) {
-    const from = runs.ends[k * READS + r]!
-    const slope = (runs.ends[(k + 1) * READS + r]! - from) * runs.part
-    const into = runs.into[k]!
-    smallest = Math.min(smallest, from + slope * into, from + slope * (into + runs.starts[k + 1]! - runs.starts[k]! - 1))
+  for (let k = 0; k < count; k++) {
+    const from = ends[k * READS + LOOPS + c]!
+    const slope = (ends[(k + 1) * READS + LOOPS + c]! - from) * part
+    const last = into[k]! + starts[k + 1]! - starts[k]! - 1
+    smallest = Math.min(smallest, from + slope * into[k]!, from + slope * last)
   }
-  return smallest
+  return Math.max(1, smallest - (cubic ? 1 : 0.5)) | 0
 }

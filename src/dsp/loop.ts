@@ -1,8 +1,9 @@
 // The loop and the write: s = loopShaper(lowCut(damping(q))), q the line read before w[n] is written, and w = u + g X s. Worked in pieces
 // no longer than the shortest loop delay allows, so that all a piece reads was written before it.
 import type { Core } from './core.ts'
-import { smallestLoopDelay } from './delays.ts'
+import { loopReach } from './delays.ts'
 import { highPass, highPassMoving, lowPass, lowPassMoving } from './filterPasses.ts'
+import { CHUNK } from './line.ts'
 import { CROSS_FEED, DAMPING, FEEDBACK, LOW_CUT, SHAPER_VALUES, SHAPERS } from './ramps.ts'
 import { addPiece } from './reads.ts'
 import { LOOPS } from './runs.ts'
@@ -34,11 +35,10 @@ function write({ lines, fed }: Core, c: number, first: number, end: number): voi
 
 /** Samples that can be read before the first of them is written: the newest point of the first read is then still older than the piece. */
 export function longestPiece({ settings, trajectory }: Core): number {
-  if (!trajectory.loops) return Number.POSITIVE_INFINITY
-  let smallest = Number.POSITIVE_INFINITY
-  for (let c = 0; c < settings.lines; c++) smallest = Math.min(smallest, smallestLoopDelay(trajectory, c))
   const cubic = settings.loopRead === 'lagrange3' || settings.loopRead === 'hermite4'
-  return Math.max(1, Math.floor(cubic ? smallest - 1 : smallest - 0.5))
+  let longest = CHUNK
+  for (let c = 0; trajectory.loops && c < settings.lines; c++) longest = Math.min(longest, loopReach(trajectory, c, cubic))
+  return longest
 }
 
 /** s of line c for samples j to end, inside run k. */

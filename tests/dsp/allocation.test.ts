@@ -17,7 +17,7 @@ it('playing a set', () => {
 
 it('playing while sets, bypass, held positions and the way of changing delays are switched', () => {
   // Code that runs once a change is not always compiled yet, and then boxes numbers; a block without a change makes none.
-  expect(measured.edited).toBeLessThan(16)
+  expect(measured.edited).toBeLessThan(8)
 })
 
 it('the measure sees one small array a block', () => {
