@@ -18,7 +18,7 @@ export const allocationBench: Bench = {
         unit: 'bytes a block',
         target: 'none',
         met: most < NOTHING,
-        how: 'growth of the JavaScript heap over 6,400 blocks of 128 frames, least of eight windows, no collection in between; what is left is the machine’s own compiling',
+        how: 'growth of the JavaScript heap over 6,400 blocks of 128 frames, least of up to sixty windows, no collection in between; what is left is the machine’s own compiling',
       },
       { what: 'row 9: playing under live changes of every kind', value: edited, unit: 'bytes a block', target: 'none', met: edited < 8 },
       {
