@@ -37,6 +37,22 @@ export interface Check {
   readonly text: string
   readonly working: readonly WorkingStep[]
   readonly mend?: readonly Mend[]
+  /** panel.box only: the worst place of each check it looked at, worst first. */
+  readonly worst?: readonly PanelWorst[]
+}
+
+/** The worst place of one check over all knob positions. */
+export interface PanelWorst {
+  readonly id: CheckId
+  readonly status: Status
+  readonly value: CheckValue
+  /** Parameter path to its value there, every parameter that the panel moves. */
+  readonly at: { readonly [parameter: string]: number | string | boolean }
+  /** Where each knob of the panel stands there, 0 to 1, in the panel's order. */
+  readonly positions: readonly number[]
+  /** How it is known: corners of a monotone box, a bound over intervals, or, for what must be rendered, the worst corners tried. */
+  readonly by: 'corners' | 'intervals' | 'rendered corners'
+  readonly text: string
 }
 
 /** What a check looks at. One object a run, so that checks which share a costly figure can key it on it. */
@@ -44,6 +60,36 @@ export interface CheckInput {
   readonly set: ParameterSet
   /** Hz: the rate judged at, the set's own unless `rate` says otherwise. */
   readonly sampleRate: number
+  /** What loudness is measured on; the built-in plucked chords when absent. */
+  readonly material?: CheckMaterial
 }
 
+export interface CheckMaterial {
+  /** Named in the working. */
+  readonly name: string
+  /** Hz; resampled to the rate judged at. */
+  readonly sampleRate: number
+  readonly channels: readonly Float64Array[]
+}
+
+/** `closed`: from formulas, tens of milliseconds, followed while a gesture runs. `rendered`: from rendered samples, up to seconds. */
+export type CheckKind = 'closed' | 'rendered'
+
+/** What yields is the part done, 0 to 1: a long check gives way to messages, and may be dropped, between its steps. */
+export type CheckSteps = Generator<number, Check>
+
 export type CheckFunction = (input: CheckInput) => Check
+
+export interface CheckEntry {
+  readonly id: CheckId
+  readonly kind: CheckKind
+  readonly run: CheckFunction | ((input: CheckInput) => CheckSteps)
+}
+
+/** How far a run is: `done` of `total` checks finished, `part` (0 to 1) of the one called `id`. */
+export interface CheckProgress {
+  readonly id: CheckId
+  readonly done: number
+  readonly total: number
+  readonly part: number
+}
