@@ -1,22 +1,21 @@
-// The plots there are, in the order of their tabs.
+// The plots there are, in the order of their tabs. The two shown first come with the page, the others when they are first chosen.
 import type { PlotId } from '../state/view.ts'
-import { mountLoop } from './loop/loop.ts'
 import type { MountPlot } from './plotTypes.ts'
 import { mountResponse } from './response/response.ts'
-import { mountScope } from './scope/scope.ts'
 import { mountSweep } from './sweep/sweep.ts'
 
 export interface PlotEntry {
   readonly id: PlotId
   readonly label: string
-  readonly mount: MountPlot
+  /** Fetches what draws it; rejects when it cannot be had. */
+  load(): Promise<MountPlot>
 }
 
 export const PLOTS: readonly PlotEntry[] = [
-  { id: 'response', label: 'Response', mount: mountResponse },
-  { id: 'sweep', label: 'Sweep', mount: mountSweep },
-  { id: 'loop', label: 'Loop', mount: mountLoop },
-  { id: 'scope', label: 'Scope', mount: mountScope },
+  { id: 'response', label: 'Response', load: async () => mountResponse },
+  { id: 'sweep', label: 'Sweep', load: async () => mountSweep },
+  { id: 'loop', label: 'Loop', load: async () => (await import('./loop/loop.ts')).mountLoop },
+  { id: 'scope', label: 'Scope', load: async () => (await import('./scope/scope.ts')).mountScope },
 ]
 
 export function plotEntry(id: PlotId): PlotEntry {

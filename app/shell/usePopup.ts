@@ -22,7 +22,7 @@ export function usePopup<P>(load: Load<P>, kind: 'menu' | 'dialog') {
 }
 
 /** The part, or null with a message when it could not be fetched. */
-export async function loadOrSay<P>(load: Load<P>): Promise<ComponentType<P> | null> {
+export async function loadOrSay<T>(load: () => Promise<T>): Promise<T | null> {
   try {
     return await load()
   } catch {

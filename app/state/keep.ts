@@ -29,7 +29,7 @@ const orNull =
 const isObject = (value: unknown): value is Record<string, unknown> => typeof value === 'object' && value !== null
 
 const BLOCKS = ['set', 'inputShaper', 'line', 'voices', 'wetTone', 'mix', 'outputShaper', 'feedback', 'loopShaper', 'lowCut', 'damping']
-const isPlot = oneOf('response', 'sweep', 'loop', 'scope')
+const isPlot = oneOf('response', 'sweep', 'map', 'loop', 'scope', 'curve')
 
 export const KEEP_DOCUMENT: KeepTable<DocumentState> = {
   slots: tab(isObject),

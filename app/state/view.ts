@@ -1,7 +1,7 @@
 // How the page is being looked at: never history, kept for the tab.
 import { create } from 'zustand'
 
-export type PlotId = 'response' | 'sweep' | 'loop' | 'scope'
+export type PlotId = 'response' | 'sweep' | 'map' | 'loop' | 'scope' | 'curve'
 export type BlockId =
   | 'set'
   | 'inputShaper'

@@ -2,8 +2,11 @@
 import { useCallback, useId, useRef } from 'react'
 import { plotEntry } from '../../../plots/plotList.ts'
 import type { MountedPlot } from '../../../plots/plotTypes.ts'
+import { loadOrSay } from '../../../shell/usePopup.ts'
 import { everySecond } from '../../../state/frames.ts'
 import type { PlotId } from '../../../state/view.ts'
+
+const FETCH_FAILED = 'not fetched: choose another plot, then this one again'
 
 interface PlotBodyProps {
   readonly id: PlotId
@@ -20,15 +23,27 @@ export function PlotBody({ id, label, reading, hidden, onMounted }: PlotBodyProp
   const mount = useCallback(
     (element: HTMLElement | null) => {
       if (!element) return
-      const mounted = plotEntry(id).mount({ element, reading: (text) => write(reading, text) })
-      const stop = everySecond(() => {
-        if (summary.current) write(summary.current, mounted.summary())
+      let leave: (() => void) | null = () => {}
+      void loadOrSay(plotEntry(id).load).then((mountPlot) => {
+        // Another plot was chosen meanwhile.
+        if (leave === null) return
+        if (mountPlot === null) write(reading, FETCH_FAILED)
+        else leave = put(mountPlot({ element, reading: (text) => write(reading, text) }))
       })
-      onMounted(mounted)
+      const put = (mounted: MountedPlot) => {
+        const stop = everySecond(() => {
+          if (summary.current) write(summary.current, mounted.summary())
+        })
+        onMounted(mounted)
+        return () => {
+          stop()
+          onMounted(null)
+          mounted.destroy()
+        }
+      }
       return () => {
-        stop()
-        onMounted(null)
-        mounted.destroy()
+        leave?.()
+        leave = null
         write(reading, '')
       }
     },

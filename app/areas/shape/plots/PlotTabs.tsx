@@ -21,7 +21,7 @@ export function PlotTabs({ label, chosen, panelId, onChoose }: PlotTabsProps) {
   }
   return (
     <div className="cw-plot-tabs" role="tablist" aria-label={label} onKeyDown={walk}>
-      {PLOTS.map(({ id, label: name }) => (
+      {PLOTS.map(({ id, label: name, load }) => (
         <button
           key={id}
           type="button"
@@ -31,6 +31,7 @@ export function PlotTabs({ label, chosen, panelId, onChoose }: PlotTabsProps) {
           aria-selected={id === chosen}
           aria-controls={panelId}
           tabIndex={id === chosen ? 0 : -1}
+          onPointerEnter={() => void load().catch(() => {})}
           onClick={() => onChoose(id)}
         >
           {name}
