@@ -6,6 +6,8 @@ import { loopPoles } from './loopPoles.ts'
 import { loopRing } from './loopRing.ts'
 import { loopStability } from './loopStability.ts'
 import { responseExtremes } from './responseExtremes.ts'
+import { shaperAlias } from './shaperAlias.ts'
+import { shaperHarmonics } from './shaperHarmonics.ts'
 import { sweepDetune } from './sweepDetune.ts'
 import { sweepFusion } from './sweepFusion.ts'
 import { sweepRange } from './sweepRange.ts'
@@ -20,6 +22,8 @@ const UNSORTED: readonly CheckEntry[] = [
   { id: 'sweep.range', kind: 'closed', run: sweepRange },
   { id: 'sweep.detune', kind: 'closed', run: sweepDetune },
   { id: 'sweep.fusion', kind: 'closed', run: sweepFusion },
+  { id: 'shaper.harmonics', kind: 'closed', run: shaperHarmonics },
+  { id: 'shaper.alias', kind: 'closed', run: shaperAlias },
 ]
 
 const row = new Map<string, number>(LIMITS.map(({ id }, i) => [id, i]))
