@@ -39,11 +39,14 @@ function listed(row: Parameter, { min, max }: Move): readonly Value[] | null {
   return from <= to ? all.slice(from, to + 1) : all.slice(to, from + 1).reverse()
 }
 
-function switchValues(row: Parameter): readonly Value[] | null {
+/** The values of a switch-like parameter in the table's order, or null for a continuous one. */
+export function switchValues(row: Parameter): readonly Value[] | null {
   if (row.kind === 'choice') return row.options.map((option) => option.value)
   if (row.kind === 'boolean') return [false, true]
   return (row as NumberParameter).values ?? null
 }
+
+export const isListed = (row: Parameter): boolean => switchValues(row) !== null
 
 /** Straight lines through the taper's points, its ends held. */
 function bent(points: readonly Point[], x: number): number {
@@ -104,17 +107,19 @@ export interface Disagreement {
   readonly atKnob: Value
 }
 
+/** Equal, numbers within one part in 10⁹. */
+export function isSameValue(a: unknown, b: unknown): boolean {
+  if (typeof a !== 'number' || typeof b !== 'number') return a === b
+  return Math.abs(a - b) <= 1e-9 * Math.max(Math.abs(a), Math.abs(b))
+}
+
 /** Moves whose knob, where it stands, would give another value than the set has: numbers by more than one part in 10⁹. */
 export function knobDisagreements(set: ParameterSet): readonly Disagreement[] {
   return set.panel.flatMap((knob) =>
     knob.moves.flatMap((move): Disagreement[] => {
       const stored = getAt(set, move.parameter)
       const atKnob = moveValue(move, knob.position)
-      const same =
-        typeof stored === 'number' && typeof atKnob === 'number'
-          ? Math.abs(stored - atKnob) <= 1e-9 * Math.max(Math.abs(stored), Math.abs(atKnob))
-          : stored === atKnob
-      return same ? [] : [{ knob: knob.knob, parameter: move.parameter, stored, atKnob }]
+      return isSameValue(stored, atKnob) ? [] : [{ knob: knob.knob, parameter: move.parameter, stored, atKnob }]
     }),
   )
 }
@@ -131,7 +136,8 @@ export function knobForField(set: ParameterSet, path: string): Knob | null {
   return { knob: row.label, position: movePosition(move, value) ?? 0, steps: 0, smoothMs: 30, moves: [move] }
 }
 
-function fieldEnds(row: Parameter, value: Value): Pick<Move, 'min' | 'max' | 'taper'> {
+/** Ends and taper over the useful part of a field's range, widened to its value. */
+export function fieldEnds(row: Parameter, value: Value): Pick<Move, 'min' | 'max' | 'taper'> {
   const list = switchValues(row)
   if (list) return { min: list[0] as Value, max: list.at(-1) as Value, taper: 'linear' }
   const { min, max, trackMin = min, trackMax = max, taper } = row as NumberParameter

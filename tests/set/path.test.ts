@@ -22,3 +22,24 @@ describe('fields by path', () => {
     expect(() => withAt(defaultSet(), 'loop.shaper.drive', 3)).toThrow('loop.shaper.drive')
   })
 })
+
+describe('fields of the panel by path', () => {
+  const move = { parameter: 'mix.wet', min: 0, max: 1, taper: 'linear', points: [] } as const
+  const set = {
+    ...defaultSet(),
+    panel: [{ knob: 'K', position: 0.5, steps: 0, smoothMs: 30, moves: [move, { ...move, parameter: 'mix.dry' }] }],
+  }
+
+  it('are read and replaced', () => {
+    expect(getAt(set, 'panel[0].moves[1].max')).toBe(1)
+    const changed = withAt(set, 'panel[0].moves[1].max', 0.5)
+    expect(changed.panel[0]?.moves.map(({ max }) => max)).toEqual([1, 0.5])
+    expect(changed.panel[0]?.moves[0]).toBe(move)
+    expect(getAt(withAt(set, 'panel[0].position', 0.1), 'panel[0].position')).toBe(0.1)
+  })
+
+  it('that are not there read as undefined and cannot be replaced', () => {
+    expect(getAt(set, 'panel[1].position')).toBeUndefined()
+    expect(() => withAt(set, 'panel[1].position', 0)).toThrow(RangeError)
+  })
+})
