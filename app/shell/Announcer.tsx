@@ -1,17 +1,16 @@
 import { useEffect } from 'react'
-import { useCurrent } from '../state/current.ts'
 import { STATUS_WORD, useVerdict } from '../state/verdict.ts'
 import { announce, useAnnouncement } from './announce.ts'
 
-/** The page's one live region; speaks a change of the checks' verdict once the gesture that made it has ended. */
+/** The page's one live region; speaks a change of the checks' verdict once every check speaks of the set as the gesture left it. */
 export function Announcer() {
   const text = useAnnouncement((s) => s.text)
   const verdict = useVerdict((s) => s.verdict)
   const fails = useVerdict((s) => s.fails)
   const near = useVerdict((s) => s.near)
-  const inGesture = useCurrent((s) => s.inGesture)
+  const settled = useVerdict((s) => s.settled)
   const summary = verdict === null ? null : verdictText(verdict, fails, near)
-  useSpokenOnce(summary, inGesture)
+  useSpokenOnce(settled ? summary : null)
   return (
     <div className="cw-unseen" role="status" aria-live="polite">
       {text}
@@ -21,13 +20,13 @@ export function Announcer() {
 
 let spoken: string | null = null
 
-function useSpokenOnce(summary: string | null, inGesture: boolean) {
+function useSpokenOnce(summary: string | null) {
   useEffect(() => {
-    if (summary === null || inGesture || summary === spoken) return
+    if (summary === null || summary === spoken) return
     // The first verdict describes what was opened, not a change.
     if (spoken !== null) announce(`Checks: ${summary}`)
     spoken = summary
-  }, [summary, inGesture])
+  }, [summary])
 }
 
 /** "1 fails, 2 near", "all hold". */

@@ -1,46 +1,42 @@
-// The checks of the set being shown, computed in a worker whenever the set changes, also while a gesture tries values.
+// The checks of the set being shown. Those that follow from formulas are computed whenever the set changes, also while a gesture tries
+// values; those that take rendering start when nothing is being tried, and are dropped for every newer set.
 import { create } from 'zustand'
 import type { CheckId } from '../../src/checks/limits.ts'
-import type { Check, Status } from '../../src/checks/types.ts'
+import type { Check, Verdict } from '../../src/checks/types.ts'
 import type { ParameterSet } from '../../src/set/types.ts'
-import { analysis } from '../workers/analysisClient.ts'
-import type { ChecksReply } from '../workers/analysisJobs/checks.ts'
-import { currentSet, subscribeSet, useCurrent } from './current.ts'
+import { type AnalysisClient, analysis } from '../workers/analysisClient.ts'
+import { currentSet, useCurrent } from './current.ts'
+import { countStatus, type Judged, listed, listOrder, missing, withJudged } from './judged.ts'
 import { useVerdict } from './verdict.ts'
 
 export interface ChecksState {
   readonly checks: readonly Check[]
   /** Ids in the order they are listed: by status, but as they stood while a gesture runs. */
   readonly order: readonly CheckId[]
-  /** The set the checks speak of; null before the first answer. */
+  /** Those whose figure is of the set before, for longer than a moment. */
+  readonly before: readonly CheckId[]
+  /** The set the checks from formulas speak of; null before the first answer. */
   readonly set: ParameterSet | null
-  /** Why there are none, in words. */
+  /** What is being worked out, once that takes over a second. */
+  readonly working: Working | null
+  /** Why there are none, or not all, in words. */
   readonly problem: string | null
 }
 
-export const useChecks = create<ChecksState>()(() => ({ checks: [], order: [], set: null, problem: null }))
-
-const GROUPS: readonly Status[] = ['fails', 'near', 'note', 'holds']
-
-/** Ids by status, the checks' own order within a group; `kept` ids stay where they were, new ones follow. */
-export function listOrder(checks: readonly Check[], kept: readonly CheckId[] = []): CheckId[] {
-  const present = new Set(checks.map(({ id }) => id))
-  const grouped = GROUPS.flatMap((status) => checks.filter((check) => check.status === status).map(({ id }) => id))
-  return [...kept.filter((id) => present.has(id)), ...grouped.filter((id) => !kept.includes(id))]
+export interface Working {
+  /** The check's label. */
+  readonly label: string
+  /** Checks done, of how many, and the part of the next one, 0 to 1. */
+  readonly done: number
+  readonly total: number
+  readonly part: number
 }
 
-export function countStatus(checks: readonly Check[]): Record<Status, number> {
-  const counts = { fails: 0, near: 0, note: 0, holds: 0 }
-  for (const { status } of checks) counts[status] += 1
-  return counts
-}
+export const useChecks = create<ChecksState>()(() => ({ checks: [], order: [], before: [], set: null, working: null, problem: null }))
 
-function take({ checks, verdict }: ChecksReply, set: ParameterSet) {
-  const { fails, near, note, holds } = countStatus(checks)
-  const { order } = useChecks.getState()
-  useChecks.setState({ checks, set, problem: null, order: listOrder(checks, useCurrent.getState().inGesture ? order : []) })
-  useVerdict.setState({ verdict, fails, near, notes: note, holds })
-}
+/** Figures of the set before are marked after this long, and progress is shown after that. */
+const MARK_AFTER_MS = 300
+const SHOW_AFTER_MS = 1000
 
 let following = false
 
@@ -48,15 +44,100 @@ let following = false
 export function followChecks(): void {
   if (following) return
   following = true
-  const feed = analysis().openFeed(
+  follow(analysis())
+}
+
+/** Follows the set through `client`. Returns the way to stop. */
+export function follow(client: AnalysisClient): () => void {
+  let judged: Judged = new Map()
+  /** Ids that the long run gives; null until the first answer says which. */
+  let slow: readonly CheckId[] | null = null
+  let closedOf: ParameterSet | null = null
+  /** The set whose long run is under way, or failed. */
+  let running: ParameterSet | null = null
+  let failedOf: ParameterSet | null = null
+  let beganMs = 0
+
+  const awaited = () => missing(judged, slow ?? [], currentSet())
+  const owed = () => (failedOf === currentSet() ? [] : awaited())
+
+  function show(more: Partial<ChecksState> = {}) {
+    const { inGesture } = useCurrent.getState()
+    const checks = listed(judged)
+    const { fails, near, note, holds } = countStatus(checks)
+    const late = inGesture || running === null || performance.now() - beganMs >= MARK_AFTER_MS
+    const before = late ? awaited().filter((id) => judged.has(id)) : []
+    const now = useChecks.getState()
+    useChecks.setState({
+      checks,
+      order: same(now.order, listOrder(checks, inGesture ? now.order : [])),
+      before: same(now.before, before),
+      ...more,
+    })
+    const pending = owed().length
+    const settled = !inGesture && closedOf === currentSet() && slow !== null && pending === 0
+    const verdict: Verdict = fails > 0 ? 'fails' : near > 0 ? 'near' : 'holds'
+    useVerdict.setState({ verdict: closedOf && verdict, fails, near, notes: note, holds, pending, settled })
+  }
+
+  const closed = client.openFeed(
     'checks',
-    (reply, { set }) => take(reply, set),
+    ({ checks, slow: ids }, { set }) => {
+      judged = withJudged(judged, checks, set)
+      closedOf = set
+      const first = slow === null
+      slow = ids
+      show({ set, problem: failedOf === currentSet() ? useChecks.getState().problem : null })
+      if (first) startLong()
+    },
     (problem) => useChecks.setState({ problem }),
   )
-  feed.ask({ set: currentSet() })
-  subscribeSet((set) => feed.ask({ set }))
-  useCurrent.subscribe((now, before) => {
-    // The gesture's last values are in: the groups may move again.
-    if (before.inGesture && !now.inGesture) useChecks.setState(({ checks }) => ({ order: listOrder(checks) }))
+
+  const long = client.openFeed(
+    'longChecks',
+    ({ checks }, { set }) => {
+      judged = withJudged(judged, checks, set)
+      running = null
+      show({ working: null })
+    },
+    (problem) => {
+      failedOf = running
+      running = null
+      show({ working: null, problem })
+    },
+    ({ checks, label, done, total, part }, { set }) => {
+      judged = withJudged(judged, checks, set)
+      show({ working: performance.now() - beganMs < SHOW_AFTER_MS ? null : { label, done, total, part } })
+    },
+  )
+
+  /** What takes long begins when nothing is being tried; what is under way for another set is dropped. */
+  function startLong() {
+    const { set, inGesture } = useCurrent.getState()
+    const wanted = slow !== null && !inGesture && owed().length > 0
+    if (wanted && running === set) return
+    if (running !== null) long.stop()
+    running = null
+    if (wanted) {
+      running = set
+      beganMs = performance.now()
+      long.askInstead({ set })
+    }
+    show({ working: null })
+  }
+
+  closed.ask({ set: currentSet() })
+  const stop = useCurrent.subscribe((now, before) => {
+    if (now.set !== before.set) closed.ask({ set: now.set })
+    startLong()
   })
+  return () => {
+    stop()
+    closed.stop()
+    long.stop()
+  }
 }
+
+/** `before` where both hold the same, so that nobody who shows it draws again. */
+const same = <T>(before: readonly T[], now: readonly T[]): readonly T[] =>
+  before.length === now.length && before.every((one, i) => one === now[i]) ? before : now

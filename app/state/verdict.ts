@@ -9,9 +9,21 @@ export interface VerdictState {
   readonly near: number
   readonly notes: number
   readonly holds: number
+  /** Checks still being worked out; counted by what they said before, where they said anything. */
+  readonly pending: number
+  /** Every check speaks of the set as it stands, and nothing is being tried. */
+  readonly settled: boolean
 }
 
-export const useVerdict = create<VerdictState>()(() => ({ verdict: null, fails: 0, near: 0, notes: 0, holds: 0 }))
+export const useVerdict = create<VerdictState>()(() => ({
+  verdict: null,
+  fails: 0,
+  near: 0,
+  notes: 0,
+  holds: 0,
+  pending: 0,
+  settled: false,
+}))
 
 /** The sign and word of a status: never colour alone. */
 export const STATUS_SIGN: Readonly<Record<Status, string>> = { fails: '■', near: '△', note: '·', holds: '○' }

@@ -1,12 +1,14 @@
 // The page's one way to the analysis workers. A feed asks again and again for the same kind of figure: at most one
 // request is under way, of those that come meanwhile only the latest is kept, and replies after stop() are dropped.
-// Two workers of one script: `live` answers every frame, `slow` takes what may last (the whole sweep, the checks).
-import type { JobKind, JobReply, JobRequest } from './analysisProtocol.ts'
+// Three workers of one script: `live` answers every frame, `slow` takes what may last (the whole sweep, the checks), `long` what takes seconds.
+import type { JobKind, JobProgress, JobReply, JobRequest } from './analysisProtocol.ts'
 import { LANE, type Lane } from './analysisProtocol.ts'
 import type { FromWorker, ToWorker } from './analysisRunner.ts'
 
 export interface Feed<K extends JobKind> {
   ask(request: JobRequest<K>): void
+  /** Drops what is under way and waiting, between two of its steps, and asks for this instead. */
+  askInstead(request: JobRequest<K>): void
   /** Drops what is under way and waiting; the feed may ask again later. */
   stop(): void
 }
@@ -30,18 +32,25 @@ interface Sent {
 }
 
 export interface AnalysisClient {
-  openFeed<K extends JobKind>(kind: K, onReply: (reply: JobReply<K>, request: JobRequest<K>) => void, onFailure?: OnFailure): Feed<K>
+  openFeed<K extends JobKind>(
+    kind: K,
+    onReply: (reply: JobReply<K>, request: JobRequest<K>) => void,
+    onFailure?: OnFailure,
+    onProgress?: (progress: JobProgress<K>, request: JobRequest<K>) => void,
+  ): Feed<K>
 }
 
 export type OnFailure = (message: string) => void
 
 export function createAnalysisClient(makeWorker: (lane: Lane) => WorkerLike): AnalysisClient {
-  const lanes: Record<Lane, LaneOfWork> = { live: createLane(() => makeWorker('live')), slow: createLane(() => makeWorker('slow')) }
+  const lane = (name: Lane) => createLane(() => makeWorker(name))
+  const lanes: Record<Lane, LaneOfWork> = { live: lane('live'), slow: lane('slow'), long: lane('long') }
 
   function openFeed<K extends JobKind>(
     kind: K,
     onReply: (reply: JobReply<K>, request: JobRequest<K>) => void,
     onFailure: OnFailure = () => {},
+    onProgress: (progress: JobProgress<K>, request: JobRequest<K>) => void = () => {},
   ): Feed<K> {
     const lane = lanes[LANE[kind]]
     let underWay = 0
@@ -52,6 +61,10 @@ export function createAnalysisClient(makeWorker: (lane: Lane) => WorkerLike): An
     function send(request: JobRequest<K>) {
       startedMs = Date.now()
       underWay = lane.send(kind, request, (reply) => {
+        if (reply.ok && 'progress' in reply) {
+          onProgress(reply.progress as JobProgress<K>, request)
+          return
+        }
         underWay = 0
         clearTimeout(impatience)
         impatience = undefined
@@ -73,6 +86,14 @@ export function createAnalysisClient(makeWorker: (lane: Lane) => WorkerLike): An
       send(next)
     }
 
+    function stop() {
+      if (underWay !== 0) lane.cancel(underWay)
+      underWay = 0
+      waiting = null
+      clearTimeout(impatience)
+      impatience = undefined
+    }
+
     return {
       ask(request) {
         if (underWay === 0) {
@@ -82,13 +103,11 @@ export function createAnalysisClient(makeWorker: (lane: Lane) => WorkerLike): An
         waiting = request
         impatience ??= setTimeout(abandon, Math.max(0, startedMs + PATIENCE_MS - Date.now()))
       },
-      stop() {
-        if (underWay !== 0) lane.cancel(underWay)
-        underWay = 0
-        waiting = null
-        clearTimeout(impatience)
-        impatience = undefined
+      askInstead(request) {
+        stop()
+        send(request)
       },
+      stop,
     }
   }
 
@@ -111,9 +130,10 @@ function createLane(makeWorker: () => WorkerLike): LaneOfWork {
     if (worker) return worker
     const made = makeWorker()
     made.onmessage = (event: MessageEvent<FromWorker>) => {
-      const entry = sent.get(event.data.id)
-      sent.delete(event.data.id)
-      entry?.answer(event.data)
+      const { data } = event
+      const entry = sent.get(data.id)
+      if (!data.ok || 'value' in data) sent.delete(data.id)
+      entry?.answer(data)
     }
     made.onerror = (event) => {
       const message = event.message || 'the analysis worker could not be started'

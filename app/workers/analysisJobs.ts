@@ -1,15 +1,18 @@
-// Every kind of analysis job with the function that does it.
+// Every kind of analysis job with the function that does it, or with the way to fetch it where the page's first load can do without.
 import { checksJob } from './analysisJobs/checks.ts'
 import { loopJob, loopReachJob } from './analysisJobs/loop.ts'
 import { reachJob } from './analysisJobs/reach.ts'
 import { traceJob } from './analysisJobs/trace.ts'
-import type { JobKind, JobReply, JobRequest } from './analysisProtocol.ts'
-import type { SlicedJob } from './analysisRunner.ts'
+import type { JobKind, JobProgress, JobReply, JobRequest } from './analysisProtocol.ts'
+import type { FetchedJob, SlicedJob } from './analysisRunner.ts'
 
-export const ANALYSIS_JOBS: { readonly [K in JobKind]: SlicedJob<JobRequest<K>, JobReply<K>> } = {
+type Job<K extends JobKind> = SlicedJob<JobRequest<K>, JobReply<K>, JobProgress<K>> | FetchedJob<JobRequest<K>, JobReply<K>, JobProgress<K>>
+
+export const ANALYSIS_JOBS: { readonly [K in JobKind]: Job<K> } = {
   trace: traceJob,
   reach: reachJob,
   loop: loopJob,
   loopReach: loopReachJob,
   checks: checksJob,
+  longChecks: { fetch: async () => (await import('./analysisJobs/longChecks.ts')).longChecksJob },
 }

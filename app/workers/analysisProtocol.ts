@@ -1,5 +1,6 @@
-// What the page may ask of the analysis workers, and in which of the two each kind runs.
+// What the page may ask of the analysis workers, and in which of the three each kind runs.
 import type { ChecksReply, ChecksRequest } from './analysisJobs/checks.ts'
+import type { LongChecksProgress, LongChecksReply, LongChecksRequest } from './analysisJobs/longChecks.ts'
 import type { LoopReach, LoopReachRequest, LoopRequest, LoopTrace } from './analysisJobs/loop.ts'
 import type { Reach, ReachRequest } from './analysisJobs/reach.ts'
 import type { Trace, TraceRequest } from './analysisJobs/trace.ts'
@@ -13,13 +14,26 @@ export interface Jobs {
   readonly loop: { readonly request: LoopRequest; readonly reply: LoopTrace }
   /** The open loop wherever the sweep can stand. */
   readonly loopReach: { readonly request: LoopReachRequest; readonly reply: LoopReach }
+  /** The checks that follow from formulas. */
   readonly checks: { readonly request: ChecksRequest; readonly reply: ChecksReply }
+  /** The checks that take rendering, and the panel's box. */
+  readonly longChecks: { readonly request: LongChecksRequest; readonly reply: LongChecksReply; readonly progress: LongChecksProgress }
 }
 
 export type JobKind = keyof Jobs
 export type JobRequest<K extends JobKind> = Jobs[K]['request']
 export type JobReply<K extends JobKind> = Jobs[K]['reply']
 
-export type Lane = 'live' | 'slow'
+export type JobProgress<K extends JobKind> = Jobs[K] extends { readonly progress: infer P } ? P : never
 
-export const LANE: Readonly<Record<JobKind, Lane>> = { trace: 'live', reach: 'slow', loop: 'live', loopReach: 'slow', checks: 'slow' }
+/** `live` answers within a frame; `slow` within some; `long` takes up to seconds, tells how far it is and is dropped for a newer request. */
+export type Lane = 'live' | 'slow' | 'long'
+
+export const LANE: Readonly<Record<JobKind, Lane>> = {
+  trace: 'live',
+  reach: 'slow',
+  loop: 'live',
+  loopReach: 'slow',
+  checks: 'slow',
+  longChecks: 'long',
+}

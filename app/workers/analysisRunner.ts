@@ -1,8 +1,13 @@
 // Runs the worker's jobs one after another, in slices, so that a message (a cancellation, the next request) is heard
 // between them. Knows neither the jobs nor the worker's globals.
 
-/** A short job answers at once; a long one yields between slices and returns its answer. */
-export type SlicedJob<Request, Reply> = (request: Request) => Reply | Generator<undefined, Reply>
+/** A short job answers at once; a long one yields between slices, how far it is where that is worth telling, and returns its answer. */
+export type SlicedJob<Request, Reply, Progress = never> = (request: Request) => Reply | Generator<Progress | undefined, Reply>
+
+/** A job whose code is fetched when it is first asked for. */
+export interface FetchedJob<Request, Reply, Progress = never> {
+  fetch(): Promise<SlicedJob<Request, Reply, Progress>>
+}
 
 export type ToWorker =
   | { readonly type: 'run'; readonly id: number; readonly kind: string; readonly request: unknown }
@@ -10,10 +15,11 @@ export type ToWorker =
 
 export type FromWorker =
   | { readonly id: number; readonly ok: true; readonly value: unknown }
+  | { readonly id: number; readonly ok: true; readonly progress: unknown }
   | { readonly id: number; readonly ok: false; readonly message: string }
 
 export interface RunnerParts {
-  readonly jobs: Readonly<Record<string, SlicedJob<never, unknown>>>
+  readonly jobs: Readonly<Record<string, SlicedJob<never, unknown, unknown> | FetchedJob<never, unknown, unknown>>>
   post(message: FromWorker): void
   /** Calls back after messages that are waiting have been heard. */
   later(turn: () => void): void
@@ -22,16 +28,21 @@ export interface RunnerParts {
 
 /** A slice is kept under this, so that nothing waits longer behind a long job than a frame and a half. */
 const SLICE_MS = 12
+/** How far a job is, is told this often at most: the page has frames to draw. */
+const TELL_MS = 100
 
 interface Running {
   readonly id: number
   readonly kind: string
   readonly request: unknown
-  steps: Iterator<undefined, unknown> | null
+  steps: Iterator<unknown, unknown> | null
+  toldMs: number
 }
 
 export function createRunner({ jobs, post, later, now }: RunnerParts): (message: ToWorker) => void {
   const queue: Running[] = []
+  const fetching = new Set<number>()
+  const fetched: Record<string, SlicedJob<unknown, unknown, unknown>> = {}
   let scheduled = false
 
   function schedule() {
@@ -52,37 +63,72 @@ export function createRunner({ jobs, post, later, now }: RunnerParts): (message:
       }
     } catch (error) {
       queue.shift()
-      post({ id: job.id, ok: false, message: error instanceof Error ? error.message : String(error) })
+      refuse(job.id, error)
     }
     schedule()
   }
 
   function advance(job: Running): { readonly value: unknown } | null {
     if (job.steps === null) {
-      const run = jobs[job.kind] as SlicedJob<unknown, unknown> | undefined
-      if (!run) throw new RangeError(`no job is called ${job.kind}`)
-      const begun = run(job.request)
+      const begun = jobOf(job.kind)(job.request)
       if (!isSteps(begun)) return { value: begun }
       job.steps = begun
+      job.toldMs = now()
     }
     const end = now() + SLICE_MS
+    let progress: unknown
     do {
       const step = job.steps.next()
       if (step.done) return { value: step.value }
+      progress = step.value
     } while (now() < end)
+    if (progress !== undefined && now() - job.toldMs >= TELL_MS) {
+      job.toldMs = now()
+      post({ id: job.id, ok: true, progress })
+    }
     return null
   }
 
+  function jobOf(kind: string): SlicedJob<unknown, unknown, unknown> {
+    const known = jobs[kind]
+    const job = fetched[kind] ?? (typeof known === 'function' ? (known as SlicedJob<unknown, unknown, unknown>) : undefined)
+    if (!job) throw new RangeError(`no job is called ${kind}`)
+    return job
+  }
+
+  function refuse(id: number, error: unknown) {
+    post({ id, ok: false, message: error instanceof Error ? error.message : String(error) })
+  }
+
+  async function fetchFirst(job: Running, from: FetchedJob<never, unknown, unknown>) {
+    fetching.add(job.id)
+    try {
+      fetched[job.kind] ??= (await from.fetch()) as SlicedJob<unknown, unknown, unknown>
+      if (fetching.delete(job.id)) queue.push(job)
+      schedule()
+    } catch (error) {
+      if (fetching.delete(job.id)) refuse(job.id, error)
+    }
+  }
+
   return (message) => {
-    if (message.type === 'run') queue.push({ id: message.id, kind: message.kind, request: message.request, steps: null })
-    else {
+    if (message.type === 'cancel') {
+      fetching.delete(message.id)
       const at = queue.findIndex((job) => job.id === message.id)
       if (at >= 0) queue.splice(at, 1)
+      return
     }
+    const job: Running = { id: message.id, kind: message.kind, request: message.request, steps: null, toldMs: 0 }
+    const known = jobs[job.kind]
+    if (known && typeof known !== 'function' && !fetched[job.kind]) {
+      void fetchFirst(job, known)
+      return
+    }
+    queue.push(job)
     schedule()
   }
 }
 
-function isSteps(value: unknown): value is Iterator<undefined, unknown> {
+function isSteps(value: unknown): value is Iterator<unknown, unknown> {
   return typeof value === 'object' && value !== null && Symbol.iterator in value && 'next' in value
 }

@@ -1,6 +1,7 @@
-// All checks of a set.
-import { runChecks, verdictOf } from '../../../src/checks/registry.ts'
-import type { Check, Verdict } from '../../../src/checks/types.ts'
+// The checks of a set that follow from formulas: quick enough to follow a gesture.
+import type { CheckId } from '../../../src/checks/limits.ts'
+import { CHECKS, runChecks } from '../../../src/checks/registry.ts'
+import type { Check } from '../../../src/checks/types.ts'
 import type { ParameterSet } from '../../../src/set/types.ts'
 
 export interface ChecksRequest {
@@ -9,10 +10,10 @@ export interface ChecksRequest {
 
 export interface ChecksReply {
   readonly checks: readonly Check[]
-  readonly verdict: Verdict
+  /** The others, which take rendering. */
+  readonly slow: readonly CheckId[]
 }
 
-export function checksJob({ set }: ChecksRequest): ChecksReply {
-  const checks = runChecks(set)
-  return { checks, verdict: verdictOf(checks) }
-}
+const SLOW: readonly CheckId[] = CHECKS.filter(({ kind }) => kind === 'rendered').map(({ id }) => id)
+
+export const checksJob = ({ set }: ChecksRequest): ChecksReply => ({ checks: runChecks(set, { kinds: ['closed'] }), slow: SLOW })

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { countStatus, listOrder } from '../../../app/state/checks.ts'
+import { countStatus, listOrder } from '../../../app/state/judged.ts'
 import { runChecks } from '../../../src/checks/registry.ts'
 import type { Check, Status } from '../../../src/checks/types.ts'
 import { defaultSet } from '../../../src/set/defaults.ts'
