@@ -50,8 +50,13 @@ export interface PanelWorst {
   readonly at: { readonly [parameter: string]: number | string | boolean }
   /** Where each knob of the panel stands there, 0 to 1, in the panel's order. */
   readonly positions: readonly number[]
-  /** How it is known: corners of a monotone box, a bound over intervals, or, for what must be rendered, the worst corners tried. */
-  readonly by: 'corners' | 'intervals' | 'rendered corners'
+  /**
+   * How it is known: corners of a monotone box, a bound over intervals, the worst of places tried (nothing is shown of those between), or, for what
+   * must be rendered, the worst corners tried.
+   */
+  readonly by: 'corners' | 'intervals' | 'samples' | 'rendered corners'
+  /** Where the worst place found need not be the worst there is: a figure that no position passes. */
+  readonly bound?: CheckValue
   readonly text: string
 }
 
@@ -79,6 +84,10 @@ export type CheckKind = 'closed' | 'rendered'
 export type CheckSteps = Generator<number, Check>
 
 export type CheckFunction = (input: CheckInput) => Check
+
+/** What is judged, and how, without words: the `status` and `value` of the Check that the same input gives. */
+export type Figure = Pick<Check, 'status' | 'value'>
+export type FigureFunction = (input: CheckInput) => Figure
 
 export interface CheckEntry {
   readonly id: CheckId
