@@ -1,28 +1,45 @@
-// What the four checks of the loop share, computed once a run.
+// What the four checks of the loop share, each figure computed once a run and only when asked for.
 import { type SweptPole, sweptPole } from '../analysis/polesSweep.ts'
 import { type Stability, stability } from '../analysis/stability.ts'
 import type { CheckInput } from './types.ts'
 
-export interface LoopFigures {
-  readonly stability: Stability
-  /** Largest pole for small signals over the sweep; null without a loop, or when the shaper passes no small signals. */
-  readonly pole: SweptPole | null
+interface Known {
+  word?: Stability
+  whole?: Stability
+  pole?: SweptPole | null
 }
 
-const cache = new WeakMap<CheckInput, LoopFigures>()
+const cache = new WeakMap<CheckInput, Known>()
 
-export function loopFigures(input: CheckInput): LoopFigures {
-  const known = cache.get(input)
-  if (known) return known
-  const { set, sampleRate } = input
-  const word = stability(set, sampleRate)
-  const figures = { stability: word, pole: word.pole ?? sweptPole(set, sampleRate) }
+function known(input: CheckInput): Known {
+  const figures = cache.get(input) ?? {}
   cache.set(input, figures)
   return figures
 }
 
+/** The strongest word with what decides it: cheap, because a norm that cannot decide is not certified. */
+export function loopWord(input: CheckInput): Stability {
+  const figures = known(input)
+  figures.word ??= figures.whole ?? stability(input.set, input.sampleRate)
+  return figures.word
+}
+
+/** The same word with the norm of the sweep wherever one can be certified: what texts and mends of a weaker word show. */
+export function loopWhole(input: CheckInput): Stability {
+  const figures = known(input)
+  figures.whole ??= stability(input.set, input.sampleRate)
+  return figures.whole
+}
+
+/** Largest pole for small signals over the sweep; null without a loop, or when the shaper passes no small signals. */
+export function loopPole(input: CheckInput): SweptPole | null {
+  const figures = known(input)
+  if (figures.pole === undefined) figures.pole = (figures.word ?? figures.whole)?.pole ?? sweptPole(input.set, input.sampleRate)
+  return figures.pole
+}
+
 /** Why there is no loop to speak of; null when there is one. */
-export function noLoopReason({ set }: CheckInput, { stability: { sector } }: LoopFigures): string | null {
-  if (set.loop.feedback === 0) return 'No loop: feedback is 0'
-  return sector.bound === 0 ? 'No loop: the loop shaper lets nothing through' : null
+export function noLoopReason(input: CheckInput): string | null {
+  if (input.set.loop.feedback === 0) return 'No loop: feedback is 0'
+  return loopWord(input).sector.bound === 0 ? 'No loop: the loop shaper lets nothing through' : null
 }

@@ -2,19 +2,22 @@
 import type { Stability } from '../analysis/stability.ts'
 import { roundedDown } from '../analysis/stabilityRaise.ts'
 import { judge, type Limit, labelOf, limitOf } from './limits.ts'
-import { loopFigures, noLoopReason } from './loopFigures.ts'
+import { loopWhole, loopWord, noLoopReason } from './loopFigures.ts'
 import { marginDb, nearOne, quantity } from './loopText.ts'
-import type { Check, CheckFunction, CheckInput, Mend, Status } from './types.ts'
+import type { Check, CheckFunction, CheckInput, Figure, Mend, Status } from './types.ts'
+
+/** Status and margin alone. */
+export const loopMarginFigure = (input: CheckInput): Figure & { readonly value: number | null } => {
+  const value = noLoopReason(input) === null ? marginDb(decisive(loopWord(input)).gain) : null
+  return { status: statusOf(input, limitOf(input.set, 'loop.margin'), value), value }
+}
 
 export const loopMargin: CheckFunction = (input): Check => {
-  const figures = loopFigures(input)
-  const { stability } = figures
+  const stability = loopWord(input)
   const limit = limitOf(input.set, 'loop.margin')
-  const reason = noLoopReason(input, figures)
   const { name, gain } = decisive(stability)
-  const value = reason === null ? marginDb(gain) : null
-  const status = statusOf(input, limit, value)
-  const mend = status === 'holds' ? null : mendOf(input, stability, limit)
+  const { status, value } = loopMarginFigure(input)
+  const mend = status === 'holds' ? null : mendOf(input, loopWhole(input), limit)
   return {
     id: 'loop.margin',
     status,
@@ -22,7 +25,7 @@ export const loopMargin: CheckFunction = (input): Check => {
     limit: limit.limit,
     unit: 'dB',
     label: labelOf('loop.margin'),
-    text: value === null ? `${reason}.` : marginText(value, stability),
+    text: value === null ? `${noLoopReason(input)}.` : marginText(value, stability),
     working:
       value === null
         ? []

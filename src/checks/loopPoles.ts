@@ -2,20 +2,25 @@
 // at 1 and above it is at least a note, because nothing that grows should read as holding.
 import type { SweptPole } from '../analysis/polesSweep.ts'
 import { labelOf } from './limits.ts'
-import { loopFigures, noLoopReason } from './loopFigures.ts'
+import { loopPole, noLoopReason } from './loopFigures.ts'
 import { delaysText, nearOne, quantity } from './loopText.ts'
-import type { Check, CheckFunction, CheckInput } from './types.ts'
+import type { Check, CheckFunction, CheckInput, FigureFunction } from './types.ts'
+
+/** Status and radius alone; radius and bound where the lines are too long to be searched through. */
+export const loopPolesFigure: FigureFunction = (input) => {
+  const pole = loopPole(input)
+  if (pole === null) return { status: 'holds', value: null }
+  return { status: pole.radius >= 1 ? 'note' : 'holds', value: pole.bound > pole.radius ? [pole.radius, pole.bound] : pole.radius }
+}
 
 export const loopPoles: CheckFunction = (input): Check => {
-  const figures = loopFigures(input)
-  const { pole } = figures
+  const pole = loopPole(input)
   const base = { id: 'loop.poles', status: 'holds', limit: null, unit: '', label: labelOf('loop.poles') } as const
-  if (pole === null) return { ...base, value: null, text: `${noLoopReason(input, figures) ?? QUIET}.`, working: [] }
+  if (pole === null) return { ...base, value: null, text: `${noLoopReason(input) ?? QUIET}.`, working: [] }
   const searched = pole.bound > pole.radius
   return {
     ...base,
-    status: pole.radius >= 1 ? 'note' : 'holds',
-    value: searched ? [pole.radius, pole.bound] : pole.radius,
+    ...loopPolesFigure(input),
     text: poleText(input, pole, searched),
     working: [
       {

@@ -6,19 +6,25 @@ import { type SweptPole, sweptPole } from '../analysis/polesSweep.ts'
 import { roundedDown } from '../analysis/stabilityRaise.ts'
 import { withAt } from '../set/path.ts'
 import { judge, labelOf, limitOf } from './limits.ts'
-import { loopFigures, noLoopReason } from './loopFigures.ts'
+import { loopPole, noLoopReason } from './loopFigures.ts'
 import { QUIET } from './loopPoles.ts'
 import { quantity } from './loopText.ts'
-import type { Check, CheckFunction, CheckInput, Mend } from './types.ts'
+import type { Check, CheckFunction, CheckInput, Figure, Mend } from './types.ts'
+
+/** Status and seconds alone; null for what does not die away, and without a loop. */
+export const loopRingFigure = (input: CheckInput): Figure & { readonly value: number | null } => {
+  const pole = loopPole(input)
+  if (pole === null) return { status: 'holds', value: null }
+  const value = ringSeconds(pole.lnBound, input.sampleRate)
+  return { status: value === null ? 'near' : judge(limitOf(input.set, 'loop.ring'), value), value }
+}
 
 export const loopRing: CheckFunction = (input): Check => {
-  const figures = loopFigures(input)
-  const { pole } = figures
+  const pole = loopPole(input)
   const limit = limitOf(input.set, 'loop.ring')
   const base = { id: 'loop.ring', limit: limit.limit, unit: 's', label: labelOf('loop.ring') } as const
-  if (pole === null) return { ...base, status: 'holds', value: null, text: `${noLoopReason(input, figures) ?? QUIET}.`, working: [] }
-  const value = ringSeconds(pole.lnBound, input.sampleRate)
-  const status = value === null ? 'near' : judge(limit, value)
+  if (pole === null) return { ...base, status: 'holds', value: null, text: `${noLoopReason(input) ?? QUIET}.`, working: [] }
+  const { status, value } = loopRingFigure(input)
   const mend = status === 'holds' || limit.limit === null ? null : shorterRing(input, pole, limit.limit)
   return {
     ...base,

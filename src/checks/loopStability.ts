@@ -3,10 +3,10 @@ import type { Stability } from '../analysis/stability.ts'
 import { type Raise, raises } from '../analysis/stabilityRaise.ts'
 import { parameter } from '../set/parameters.ts'
 import { labelOf } from './limits.ts'
-import { loopFigures, noLoopReason } from './loopFigures.ts'
+import { loopWhole, loopWord, noLoopReason } from './loopFigures.ts'
 import { stabilityWorking } from './loopStabilityWorking.ts'
 import { delaysText, nearOne, quantity } from './loopText.ts'
-import type { Check, CheckFunction, CheckInput, Mend, Status } from './types.ts'
+import type { Check, CheckFunction, CheckInput, FigureFunction, Mend, Status } from './types.ts'
 
 const STATUS: Readonly<Record<Stability['word'], Status>> = {
   proven: 'holds',
@@ -16,20 +16,24 @@ const STATUS: Readonly<Record<Stability['word'], Status>> = {
   diverges: 'fails',
 }
 
+/** Status and word alone: nothing is searched that would raise it. */
+export const loopStabilityFigure: FigureFunction = (input) => {
+  const { word } = loopWord(input)
+  return { status: STATUS[word], value: word }
+}
+
 export const loopStability: CheckFunction = (input): Check => {
-  const figures = loopFigures(input)
-  const { stability } = figures
+  const stability = loopWhole(input)
   const changes = raises(input.set, input.sampleRate, stability)
-  const reason = noLoopReason(input, figures)
+  const reason = noLoopReason(input)
   return {
     id: 'loop.stability',
-    status: STATUS[stability.word],
-    value: stability.word,
+    ...loopStabilityFigure(input),
     limit: 'computed',
     unit: '',
     label: labelOf('loop.stability'),
     text: reason === null ? `${wordText(input, stability)}${raiseText(changes)}` : `${reason}, so nothing can build up.`,
-    working: stabilityWorking(input, figures, changes),
+    working: stabilityWorking(input, stability, changes),
     ...(changes.length > 0 && { mend: changes.map(mendOf) }),
   }
 }

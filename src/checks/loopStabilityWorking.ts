@@ -2,12 +2,11 @@
 
 import type { Stability } from '../analysis/stability.ts'
 import type { Raise } from '../analysis/stabilityRaise.ts'
-import type { LoopFigures } from './loopFigures.ts'
+import { loopPole } from './loopFigures.ts'
 import { counted, delaysText, nearOne, quantity } from './loopText.ts'
 import type { CheckInput, WorkingStep } from './types.ts'
 
-export function stabilityWorking(input: CheckInput, figures: LoopFigures, changes: readonly Raise[]): WorkingStep[] {
-  const { stability } = figures
+export function stabilityWorking(input: CheckInput, stability: Stability, changes: readonly Raise[]): WorkingStep[] {
   if (stability.proof === 'noLoop') return []
   return [
     peakStep(stability),
@@ -15,7 +14,7 @@ export function stabilityWorking(input: CheckInput, figures: LoopFigures, change
     ...energySteps(stability),
     ...sweptSteps(stability),
     frozenStep(stability),
-    ...poleSteps(input, figures),
+    ...poleSteps(input),
     ...levelSteps(stability),
     ...changes.map(raiseStep),
   ]
@@ -87,12 +86,13 @@ function frozenStep(s: Stability): WorkingStep {
   }
 }
 
-function poleSteps({ sampleRate }: CheckInput, { pole }: LoopFigures): WorkingStep[] {
+function poleSteps(input: CheckInput): WorkingStep[] {
+  const pole = loopPole(input)
   if (pole === null) return []
   return [
     {
       formula: 'largest |z| with 1 − g A(z) F(z) = 0, over the sweep',
-      numbers: `delay ${delaysText(pole.delaysSamples, sampleRate)}`,
+      numbers: `delay ${delaysText(pole.delaysSamples, input.sampleRate)}`,
       result: pole.bound > pole.radius ? `between ${nearOne(pole.radius)} and ${nearOne(pole.bound)}` : nearOne(pole.radius),
       source: 'Newton’s method in ln z; none outside, by the argument principle',
     },
