@@ -57,16 +57,15 @@ export function levelFigures(set: ParameterSet, sampleRate = set.sampleRate): Le
   const lineSet = lineAsOutput(set)
   const stable = stableEverywhere(set, sampleRate)
   const bounds = { peakBounds: peakBounds(set, sampleRate), lineBounds: peakBounds(lineSet, sampleRate) }
+  const norms = stable ? heldNorms(set, sampleRate, bounds) : null
   return {
-    peak: levelFigure(set, sampleRate, stable, bounds.peakBounds),
-    line: levelFigure(lineSet, sampleRate, stable, bounds.lineBounds),
+    peak: levelFigure(set, { worst: stable ? largestGain(set, sampleRate) : null, l1: norms?.output }, bounds.peakBounds),
+    line: levelFigure(lineSet, { worst: stable ? largestGain(lineSet, sampleRate) : null, l1: norms?.line }, bounds.lineBounds),
     ...bounds,
   }
 }
 
-function levelFigure(set: ParameterSet, sampleRate: number, stable: boolean, { output }: PeakBounds): LevelFigure {
-  const worst = stable ? largestGain(set, sampleRate) : null
-  const l1 = stable ? heldNorm(set, sampleRate, output) : null
+function levelFigure(set: ParameterSet, { worst, l1 }: Pick<LevelFigure, 'worst' | 'l1'>, { output }: PeakBounds): LevelFigure {
   const bends = set.input.shaper !== null || set.mix.shaper !== null || (set.loop.shaper !== null && set.loop.feedback !== 0)
   const ceiling = bends ? output : null
   const heldByShaper = ceiling !== null && (worst === null || ceiling < worst.gain)
@@ -93,27 +92,39 @@ function stableEverywhere(set: ParameterSet, sampleRate: number): boolean {
   return everyPositionStable(set, sampleRate, { slope, bothSigns, oneGain: true })
 }
 
-function heldNorm(set: ParameterSet, sampleRate: number, anyMovement: number | null): HeldNorm | null {
-  let best: HeldNorm | null = null
+/** A held norm that comes so close to what any movement can do is the largest. */
+const ENOUGH = 0.995
+
+function heldNorms(
+  set: ParameterSet,
+  sampleRate: number,
+  { peakBounds: { output }, lineBounds: { output: line } }: Pick<LevelFigures, 'peakBounds' | 'lineBounds'>,
+): { readonly output: HeldNorm; readonly line: HeldNorm } {
+  const largest = { output: NO_NORM, line: NO_NORM }
   for (const position of likelyPositions(set, sampleRate)) {
-    const { sums, bounds, samples } = impulseNorm(freezeAtLargestSlope(set, position, sampleRate), MOST_SAMPLES)
-    sums.forEach((sum, channel) => {
-      const bound = bounds[channel] ?? null
-      if (best === null || sum > best.sum) best = { sum, bound, channel, position, samples }
-    })
-    if (anyMovement !== null && best !== null && (best as HeldNorm).sum > 0.995 * anyMovement) break
+    const { outputs, lines, samples } = impulseNorm(freezeAtLargestSlope(set, position, sampleRate), MOST_SAMPLES)
+    for (const [key, norms] of [['output', outputs] as const, ['line', lines] as const]) {
+      norms.forEach((norm, channel) => {
+        if (norm.sum > largest[key].sum) largest[key] = { ...norm, channel, position, samples }
+      })
+    }
+    if (output !== null && line !== null && largest.output.sum > ENOUGH * output && largest.line.sum > ENOUGH * line) break
   }
-  return best
+  return largest
 }
+
+const NO_NORM: HeldNorm = { sum: 0, bound: 0, channel: 0, position: 0, samples: 0 }
 
 /** Positions at which the reads' own l1 norms multiply to most, alike ones in an order that spreads over the cycle. */
 function likelyPositions(set: ParameterSet, sampleRate: number): number[] {
-  if (sweepStands(set)) return [set.sweep.startPhase]
+  const looped = set.loop.feedback !== 0
+  // Nothing that is heard moves.
+  if (sweepStands(set) || (set.mix.wet === 0 && (!looped || set.loop.delay === 'fixed'))) return [set.sweep.startPhase]
   const tried = Array.from({ length: LOOKED_AT }, (_, i) => {
     const position = ((i + 1) * 0.6180339887498949) % 1
     const { channels, loop } = freeze(set, position, sampleRate)
     const voices = Math.max(...channels.map((channel) => channel.voices.reduce((sum, read) => sum + readL1(read), 0)))
-    const around = loop.gain === 0 ? 0 : Math.abs(loop.gain) * Math.max(...loop.reads.map(readL1))
+    const around = looped ? Math.abs(loop.gain) * Math.max(...loop.reads.map(readL1)) : 0
     return { position, estimate: voices / Math.max(1e-3, 1 - around) }
   })
   return tried

@@ -44,14 +44,10 @@ interface Place {
   readonly gain: number
 }
 
-interface Search {
-  readonly path: SweepPath
-  readonly frozen: Frozen
+interface Search extends Ground {
   readonly tuning: Tuning
   readonly table: PathTable
   readonly values: Float64Array
-  readonly delays: Float64Array
-  readonly bounds: readonly FrequencyBound[]
   /** rad/sample between two teeth of the longest delay. */
   readonly tooth: number
   best: Place
@@ -59,10 +55,14 @@ interface Search {
 
 /** The largest gain of `set` over [0, fs/2] and every position the sweep reaches, the same signal at every input. sampleRate in Hz. */
 export function largestGain(set: ParameterSet, sampleRate = set.sampleRate): LargestGain {
-  const search = createSearch(set, sampleRate)
-  const tops = search.bounds.map(largestBound)
+  const ground = groundOf(set, sampleRate)
+  const tops = ground.bounds.map(largestBound)
   const bound = Math.max(...tops.map(({ value }) => value))
-  const rows = rowsOf(search, tops.reduce((a, b) => (b.value > a.value ? b : a)).omega)
+  const top = tops.reduce((a, b) => (b.value > a.value ? b : a)).omega
+  const quick = quickLook(ground, top)
+  if (quick.gain >= bound * SAME) return named(ground.path, quick, bound)
+  const search = createSearch(ground, quick)
+  const rows = rowsOf(search, top)
   const cost = search.table.first.length
   let left = BUDGET
   for (let i = 0; i < rows.length && search.best.gain < bound * SAME && left > 0; i += BATCH) {
@@ -78,14 +78,47 @@ export function largestGain(set: ParameterSet, sampleRate = set.sampleRate): Lar
       if (search.best.gain < bound * SAME) follow(search, seed)
     }
   }
-  return named(search, bound)
+  return named(ground.path, search.best, bound)
 }
 
-function createSearch(set: ParameterSet, sampleRate: number): Search {
+interface Ground {
+  readonly path: SweepPath
+  readonly frozen: Frozen
+  readonly bounds: readonly FrequencyBound[]
+  readonly delays: Float64Array
+}
+
+function groundOf(set: ParameterSet, sampleRate: number): Ground {
   const path = sweepPath(set, sampleRate)
   const frozen = freezeAtLargestSlope(set, 0, sampleRate)
+  return {
+    path,
+    frozen,
+    bounds: Array.from({ length: path.walked }, (_, c) => frequencyBound(frozen, c, inPhase(set, frozen, c))),
+    delays: new Float64Array(pathReads(path)),
+  }
+}
+
+/** Both ends of the path at 0, at π and where the bound is largest: with signs that agree and no low cut, 0 Hz has it all. */
+function quickLook(ground: Ground, top: number): Place {
+  const { path } = ground
+  let best: Place = { channel: 0, omega: 0, t: path.stops[0] as number, gain: 0 }
+  for (const t of new Set([path.stops[0] as number, path.stops.at(-1) as number])) {
+    const transfer = transferOf(frozenAt(ground, t))
+    const out = new Float64Array(4 * transfer.channels)
+    for (const omega of new Set([0, Math.PI, top])) {
+      transferAt(transfer, omega, out)
+      for (let channel = 0; channel < path.walked; channel++) {
+        const gain = Math.hypot(out[4 * channel] as number, out[4 * channel + 1] as number)
+        if (gain > best.gain) best = { channel, omega, t, gain }
+      }
+    }
+  }
+  return best
+}
+
+function createSearch({ path, frozen, bounds, delays }: Ground, best: Place): Search {
   const stretches = pathStretches(path)
-  const delays = new Float64Array(pathReads(path))
   let lowest = Number.POSITIVE_INFINITY
   let highest = 0
   for (const t of stretches.length === 0 ? path.stops : stretches.flatMap(({ from, to }) => [from, to])) {
@@ -104,9 +137,9 @@ function createSearch(set: ParameterSet, sampleRate: number): Search {
     delays,
     tuning: createTuning(frozen, Math.max(0, Math.floor(lowest) - 3), Math.ceil(highest) + 5),
     values: new Float64Array(2 * table.ts.length),
-    bounds: Array.from({ length: path.walked }, (_, c) => frequencyBound(frozen, c, inPhase(set, frozen, c))),
+    bounds,
     tooth: (2 * Math.PI) / Math.max(1, highest, frozen.dryDelay),
-    best: { channel: 0, omega: 0, t: table.ts[0] as number, gain: 0 },
+    best,
   }
 }
 
@@ -189,7 +222,7 @@ function follow(search: Search, seed: Place): void {
 }
 
 /** The path's state at t as a frozen set, from which one channel's response is had exactly. */
-function frozenAt({ path, frozen, delays }: Search, t: number): Frozen {
+function frozenAt({ path, frozen, delays }: Ground, t: number): Frozen {
   pathDelays(path, t, delays)
   const { set, lines } = path
   const voices = set.voices.count
@@ -207,7 +240,7 @@ function frozenAt({ path, frozen, delays }: Search, t: number): Frozen {
   }
 }
 
-function named({ path, best }: Search, bound: number): LargestGain {
+function named(path: SweepPath, best: Place, bound: number): LargestGain {
   const { set, sampleRate } = path
   const position = path.offsets === null ? positionOf(set, best.t) : best.t
   const { channels } = freeze(set, position, sampleRate)
