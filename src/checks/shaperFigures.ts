@@ -17,18 +17,22 @@ export interface PresentShaper {
 }
 
 /**
- * Shapers that are heard, in the order of the path. The input shaper is asked with −6 dBFS into the set, its input gain included; what reaches the
- * others depends on frequency and sweep, so they are asked with −6 dBFS at their own input. A loop without feedback is not heard.
+ * Shapers of a set in the order of the path. The input shaper is asked with −6 dBFS into the set, its input gain included; what reaches the
+ * others depends on frequency and sweep, so they are asked with −6 dBFS at their own input.
  */
-export function presentShapers({ input, loop, mix }: ParameterSet): PresentShaper[] {
+export function shapersOf({ input, loop, mix }: ParameterSet): PresentShaper[] {
   const tone = 10 ** (TONE_DBFS / 20)
-  const found: PresentShaper[] = []
-  if (input.shaper)
-    found.push({ path: 'input.shaper', name: 'input shaper', shaper: input.shaper, amplitude: tone * 10 ** (input.gainDb / 20) })
-  if (loop.shaper && loop.feedback !== 0) found.push({ path: 'loop.shaper', name: 'loop shaper', shaper: loop.shaper, amplitude: tone })
-  if (mix.shaper) found.push({ path: 'mix.shaper', name: 'output shaper', shaper: mix.shaper, amplitude: tone })
-  return found
+  const all = [
+    { path: 'input.shaper', name: 'input shaper', shaper: input.shaper, amplitude: tone * 10 ** (input.gainDb / 20) },
+    { path: 'loop.shaper', name: 'loop shaper', shaper: loop.shaper, amplitude: tone },
+    { path: 'mix.shaper', name: 'output shaper', shaper: mix.shaper, amplitude: tone },
+  ] as const
+  return all.flatMap(({ shaper, ...rest }) => (shaper ? [{ ...rest, shaper }] : []))
 }
+
+/** Those that are heard: a loop without feedback is not. */
+export const heardShapers = (set: ParameterSet): PresentShaper[] =>
+  shapersOf(set).filter(({ path }) => path !== 'loop.shaper' || set.loop.feedback !== 0)
 
 export interface ShaperFold {
   readonly present: PresentShaper
@@ -37,7 +41,7 @@ export interface ShaperFold {
 
 /** Each heard shaper with what it folds, the worst first. */
 export function shaperFolds({ set, sampleRate }: Pick<CheckInput, 'set' | 'sampleRate'>): ShaperFold[] {
-  const folds = presentShapers(set).map((present) => ({ present, folded: foldedEnergy(present.shaper, present.amplitude, sampleRate) }))
+  const folds = heardShapers(set).map((present) => ({ present, folded: foldedEnergy(present.shaper, present.amplitude, sampleRate) }))
   const size = ({ folded }: ShaperFold) => folded.db ?? Number.NEGATIVE_INFINITY
   return folds.sort((a, b) => size(b) - size(a))
 }

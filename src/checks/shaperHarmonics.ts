@@ -2,7 +2,7 @@
 import { type DrivenSine, drivenSine, harmonicDb, totalDistortion } from '../analysis/harmonics.ts'
 import { labelOf } from './limits.ts'
 import { quantity } from './loopText.ts'
-import { curveText, FOURIER, noShaperText, type PresentShaper, presentShapers, TONE_DBFS } from './shaperFigures.ts'
+import { curveText, FOURIER, heardShapers, noShaperText, type PresentShaper, TONE_DBFS } from './shaperFigures.ts'
 import type { Check, CheckFunction, WorkingStep } from './types.ts'
 
 /** Harmonics listed, 2 to this; the distortion counts all there are. */
@@ -10,7 +10,7 @@ export const HIGHEST_HARMONIC = 10
 
 export const shaperHarmonics: CheckFunction = ({ set }): Check => {
   const base = { id: 'shaper.harmonics', limit: null, unit: 'dB', label: labelOf('shaper.harmonics') } as const
-  const driven = presentShapers(set).map((present) => ({ present, sine: drivenSine(present.shaper, present.amplitude, HIGHEST_HARMONIC) }))
+  const driven = heardShapers(set).map((present) => ({ present, sine: drivenSine(present.shaper, present.amplitude, HIGHEST_HARMONIC) }))
   if (driven.length === 0)
     return { ...base, status: 'holds', value: null, text: `${noShaperText(set)}.`, working: [noneStep(noShaperText(set))] }
   return {

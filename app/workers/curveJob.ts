@@ -1,0 +1,134 @@
+// What the Curve plot shows of one shaper: the exact curve, its table's error, and harmonics, DC and folded energy against drive.
+import { foldedEnergy } from '../../src/analysis/folded.ts'
+import { drivenSine, harmonicDb, totalDistortion } from '../../src/analysis/harmonics.ts'
+import { tableError } from '../../src/analysis/tableError.ts'
+import { createShaper } from '../../src/dsp/shaper.ts'
+import { readShaperTable, tablePoint } from '../../src/dsp/shaperTable.ts'
+import type { Shaper } from '../../src/set/types.ts'
+
+export interface CurveRequest {
+  readonly shaper: Shaper
+  /** Peak of the sine that is driven through it. */
+  readonly amplitude: number
+  /** Hz. */
+  readonly sampleRate: number
+}
+
+export interface CurveReply {
+  readonly request: CurveRequest
+  readonly transfer: Transfer
+  readonly against: AgainstDrive
+}
+
+export interface Transfer {
+  /** Evenly over ± a little more than full scale and table. */
+  readonly x: Float64Array
+  readonly y: Float64Array
+  /** Largest |table − curve| around each x; NaN beyond the table. */
+  readonly error: Float64Array
+  /** Points of the table that are far enough apart to be seen one by one; none else. */
+  readonly tableX: Float64Array
+  readonly tableY: Float64Array
+  readonly step: number
+  readonly largest: number
+  readonly at: number
+  readonly bound: number
+  readonly boundBy: 'bend' | 'corners'
+  readonly measure: number
+  /** Largest difference of curve and held ends beyond the table; null where the curve has no end. */
+  readonly beyond: number | null
+}
+
+/** Levels against the first harmonic, dB; NaN where there is none. */
+export interface AgainstDrive {
+  readonly drives: Float64Array
+  /** Harmonics 2, 3 … */
+  readonly harmonics: readonly Float64Array[]
+  readonly distortion: Float64Array
+  /** |mean| of what comes out, of full scale, dB. */
+  readonly dcDb: Float64Array
+  /** At the set's rate, with the shaper's own anti-aliasing. */
+  readonly foldedDb: Float64Array
+}
+
+const POINTS = 600
+/** Shown beyond the larger of full scale and table. */
+const AIR = 1.12
+const SEEN_APART = 100
+export const HIGHEST_HARMONIC = 9
+const DRIVES = 72
+/** The track of the drive's field. */
+const LEAST_DRIVE = 0.1
+const MOST_DRIVE = 30
+
+export function curveJob(request: CurveRequest): CurveReply {
+  return { request, transfer: transferOf(request.shaper), against: againstDrive(request) }
+}
+
+function transferOf(shaper: Shaper): Transfer {
+  const { table, ...figures } = tableError(shaper)
+  const { curve } = createShaper(shaper)
+  const reach = AIR * Math.max(1, table.range)
+  const x = Float64Array.from({ length: POINTS + 1 }, (_, i) => reach * ((2 * i) / POINTS - 1))
+  const error = (at: number) => Math.abs(readShaperTable(table, at) - curve(at))
+  const intervals = table.values.length - 1
+  const seen = intervals * (reach / table.range) <= SEEN_APART ? Array.from(table.values.keys()) : []
+  return {
+    x,
+    y: x.map(curve),
+    error: x.map((at) => errorAround(error, at, reach / POINTS, table)),
+    tableX: Float64Array.from(seen, (i) => tablePoint(table, i)),
+    tableY: Float64Array.from(seen, (i) => table.values[i] as number),
+    step: table.step,
+    ...figures,
+  }
+}
+
+const LOOKS = 4
+
+/** Largest error within `half` of x: at middles of intervals where several fit, else at x, so that the humps between points are drawn. */
+function errorAround(
+  error: (x: number) => number,
+  x: number,
+  half: number,
+  { range, step }: { readonly range: number; readonly step: number },
+): number {
+  if (Math.abs(x) > range) return Number.NaN
+  if (step > half) return error(x)
+  let most = 0
+  for (let k = 0; k < LOOKS; k++) {
+    const near = x - half + (2 * half * (k + 0.5)) / LOOKS
+    const middle = (Math.floor((near + range) / step) + 0.5) * step - range
+    most = Math.max(most, error(Math.max(-range, Math.min(range, middle))))
+  }
+  return most
+}
+
+let kept: { readonly key: string; readonly against: AgainstDrive } | null = null
+
+/** Does not depend on the drive itself: dragging it costs nothing here. */
+function againstDrive({ shaper, amplitude, sampleRate }: CurveRequest): AgainstDrive {
+  const low = Math.min(LEAST_DRIVE, shaper.drive)
+  const high = Math.max(MOST_DRIVE, shaper.drive)
+  const { drive, tableSize, tableRange, ...rest } = shaper
+  const key = JSON.stringify([rest, amplitude, sampleRate, low, high])
+  if (kept?.key === key) return kept.against
+  const drives = Float64Array.from({ length: DRIVES + 1 }, (_, i) => low * (high / low) ** (i / DRIVES))
+  const sines = Array.from(drives, (each) => drivenSine({ ...shaper, drive: each }, amplitude, HIGHEST_HARMONIC))
+  const decibels = (of: (i: number) => number | null) => drives.map((_, i) => of(i) ?? Number.NaN)
+  const against: AgainstDrive = {
+    drives,
+    harmonics: Array.from({ length: HIGHEST_HARMONIC - 1 }, (_, k) => decibels((i) => harmonicDb(sines[i]!, k + 2))),
+    distortion: decibels((i) => totalDistortion(sines[i]!)),
+    dcDb: decibels((i) => {
+      const dc = Math.abs(sines[i]!.amplitudes[0] as number)
+      return dc > 0 ? 20 * Math.log10(dc) : null
+    }),
+    foldedDb: decibels((i) => {
+      const { db } = foldedEnergy({ ...shaper, drive: drives[i] as number }, amplitude, sampleRate)
+      return db === null || db <= -400 ? null : db
+    }),
+  }
+  kept = { key, against }
+  return against
+}
