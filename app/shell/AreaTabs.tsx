@@ -16,6 +16,7 @@ function Verdict() {
   const verdict = useVerdict((s) => s.verdict)
   const fails = useVerdict((s) => s.fails)
   const near = useVerdict((s) => s.near)
+  const pending = useVerdict((s) => s.pending > 0)
   if (verdict === null) return null
   const count = verdict === 'fails' ? fails : verdict === 'near' ? near : null
   return (
@@ -23,8 +24,14 @@ function Verdict() {
       <span aria-hidden="true">
         {STATUS_SIGN[verdict]}
         {count !== null && ` ${count}`}
+        <span className="cw-area-pending" data-on={pending || undefined}>
+          …
+        </span>
       </span>
-      <span className="cw-unseen">checks: {verdictText(verdict, fails, near)}</span>
+      <span className="cw-unseen">
+        checks: {verdictText(verdict, fails, near)}
+        {pending && ', some still being worked out'}
+      </span>
     </span>
   )
 }

@@ -13,6 +13,8 @@ export const ANALYSIS_JOBS: { readonly [K in JobKind]: Job<K> } = {
   reach: reachJob,
   loop: loopJob,
   loopReach: loopReachJob,
+  map: { fetch: async () => (await import('./analysisJobs/map.ts')).mapJob },
   checks: checksJob,
   longChecks: { fetch: async () => (await import('./analysisJobs/longChecks.ts')).longChecksJob },
+  rates: { fetch: async () => (await import('./analysisJobs/rates.ts')).ratesJob },
 }

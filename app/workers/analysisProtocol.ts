@@ -2,6 +2,8 @@
 import type { ChecksReply, ChecksRequest } from './analysisJobs/checks.ts'
 import type { LongChecksProgress, LongChecksReply, LongChecksRequest } from './analysisJobs/longChecks.ts'
 import type { LoopReach, LoopReachRequest, LoopRequest, LoopTrace } from './analysisJobs/loop.ts'
+import type { MapRequest, SweepMap } from './analysisJobs/map.ts'
+import type { RatesProgress, RatesReply, RatesRequest } from './analysisJobs/rates.ts'
 import type { Reach, ReachRequest } from './analysisJobs/reach.ts'
 import type { Trace, TraceRequest } from './analysisJobs/trace.ts'
 
@@ -14,10 +16,14 @@ export interface Jobs {
   readonly loop: { readonly request: LoopRequest; readonly reply: LoopTrace }
   /** The open loop wherever the sweep can stand. */
   readonly loopReach: { readonly request: LoopReachRequest; readonly reply: LoopReach }
+  /** The response over the whole sweep as a picture. */
+  readonly map: { readonly request: MapRequest; readonly reply: SweepMap }
   /** The checks that follow from formulas. */
   readonly checks: { readonly request: ChecksRequest; readonly reply: ChecksReply }
   /** The checks that take rendering, and the panel's box. */
   readonly longChecks: { readonly request: LongChecksRequest; readonly reply: LongChecksReply; readonly progress: LongChecksProgress }
+  /** The checks at other sample rates. */
+  readonly rates: { readonly request: RatesRequest; readonly reply: RatesReply; readonly progress: RatesProgress }
 }
 
 export type JobKind = keyof Jobs
@@ -34,6 +40,8 @@ export const LANE: Readonly<Record<JobKind, Lane>> = {
   reach: 'slow',
   loop: 'live',
   loopReach: 'slow',
+  map: 'slow',
   checks: 'slow',
   longChecks: 'long',
+  rates: 'long',
 }

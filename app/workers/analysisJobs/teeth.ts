@@ -43,7 +43,8 @@ export function marksOf(extremes: readonly Extreme[], columns: Columns): Mark[] 
   return marks
 }
 
-function standsOut(extremes: readonly Extreme[], i: number): boolean {
+/** An extreme stands out from its neighbours by 3 dB. */
+export function standsOut(extremes: readonly Extreme[], i: number): boolean {
   const own = extremes[i]
   if (!own) return false
   const sides = [extremes[i - 1], extremes[i + 1]].filter((other) => other !== undefined)

@@ -1,11 +1,20 @@
 // One check: sign, words, figure, limit; what would mend it; its working when open.
-import { memo } from 'react'
+import { type ComponentType, memo, Suspense } from 'react'
 import type { CheckId } from '../../../../src/checks/limits.ts'
+import type { Check } from '../../../../src/checks/types.ts'
+import { fetched } from '../../../shell/fetched.tsx'
 import { useChecks } from '../../../state/checks.ts'
 import { STATUS_SIGN, STATUS_WORD } from '../../../state/verdict.ts'
 import { checkFigure, checkLimit } from './checkWords.ts'
 import { Mends } from './Mends.tsx'
-import { Working } from './Working.tsx'
+
+const OpenedCheck = fetched(() => import('./OpenedCheck.tsx').then((part) => part.OpenedCheck))
+
+/** The panel's worst places, with the ways there: panel.box alone has them. */
+const PanelWorst = fetched<{ readonly check: Check }>(async () => {
+  const [load] = Object.values(import.meta.glob<{ PanelWorst: ComponentType<{ readonly check: Check }> }>('../panel/PanelWorst.tsx'))
+  return load ? (await load()).PanelWorst : () => null
+})
 
 interface CheckRowProps {
   readonly id: CheckId
@@ -17,13 +26,15 @@ interface CheckRowProps {
 
 export const CheckRow = memo(function CheckRow({ id, open, tabStop, onToggle }: CheckRowProps) {
   const check = useChecks((state) => state.checks.find((one) => one.id === id))
+  const before = useChecks((state) => state.before.includes(id))
+  const own = useChecks(({ set }) => set?.limits[id] ?? null)
   if (!check) return null
-  const { status, label, text, working, mend } = check
+  const { status, label, text, mend } = check
   const troubled = status === 'fails' || status === 'near'
   const workingId = `working-${id}`
-  const limit = checkLimit(check)
+  const limit = before ? 'before this change' : checkLimit(check, own)
   return (
-    <li className="cw-check" data-check={id} data-status={status}>
+    <li className="cw-check" data-check={id} data-status={status} data-before={before || undefined}>
       <button
         type="button"
         className="cw-check-row"
@@ -44,7 +55,10 @@ export const CheckRow = memo(function CheckRow({ id, open, tabStop, onToggle }: 
       </button>
       {troubled || open ? <p className="cw-check-text">{text}</p> : null}
       {(troubled || open) && mend && mend.length > 0 ? <Mends label={label} mends={mend} /> : null}
-      {open ? <Working id={workingId} label={label} steps={working} /> : null}
+      <Suspense fallback={null}>
+        {(troubled || open) && check.worst && check.worst.length > 0 ? <PanelWorst check={check} /> : null}
+        {open ? <OpenedCheck id={workingId} check={check} /> : null}
+      </Suspense>
     </li>
   )
 })

@@ -2,6 +2,7 @@
 import './checks.css'
 import { useEffect } from 'react'
 import { followChecks } from '../../../state/checks.ts'
+import { ChecksBar } from './ChecksBar.tsx'
 import { ChecksList } from './ChecksList.tsx'
 import { useVerdictWords } from './verdictWords.ts'
 
@@ -12,6 +13,7 @@ export function ChecksColumn() {
       <h2 className="cw-checks-head" id="checks-head">
         {useVerdictWords()}
       </h2>
+      <ChecksBar />
       <ChecksList />
     </section>
   )

@@ -3,6 +3,7 @@ import './checks.css'
 import { useEffect, useId, useState } from 'react'
 import { followChecks } from '../../../state/checks.ts'
 import { STATUS_SIGN, useVerdict } from '../../../state/verdict.ts'
+import { ChecksBar } from './ChecksBar.tsx'
 import { ChecksList } from './ChecksList.tsx'
 import { useVerdictWords } from './verdictWords.ts'
 
@@ -22,7 +23,14 @@ export function ChecksLine() {
           {open ? '▴' : '▾'}
         </span>
       </button>
-      <div id={id}>{open ? <ChecksList /> : null}</div>
+      <div id={id}>
+        {open && (
+          <>
+            <ChecksBar />
+            <ChecksList />
+          </>
+        )}
+      </div>
     </section>
   )
 }

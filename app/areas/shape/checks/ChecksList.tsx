@@ -36,6 +36,8 @@ const idOf = (event: FocusEvent): CheckId | null =>
 function moveFocus(event: KeyboardEvent<HTMLUListElement>) {
   const stops = [...event.currentTarget.querySelectorAll<HTMLElement>('button')]
   const at = stops.indexOf(document.activeElement as HTMLElement)
+  // The limit of an opened check has the arrows to itself.
+  if (at < 0) return
   const to: Readonly<Record<string, number>> = {
     ArrowDown: at + 1,
     ArrowRight: at + 1,

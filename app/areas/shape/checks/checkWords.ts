@@ -23,11 +23,12 @@ export function checkFigure({ id, status, value, unit }: Pick<Check, 'id' | 'sta
   return id === 'loop.ring' && status !== 'holds' ? 'endless' : 'none'
 }
 
-/** "limit 3 s"; "at least computed" where words are ranked; what the figure is, or nothing, where none is judged. */
-export function checkLimit({ id, limit, unit }: Pick<Check, 'id' | 'limit' | 'unit'>): string {
+/** "limit 3 s", "own limit 4 s" where it is the set's; "at least computed" where words are ranked; what the figure is, or nothing, where none is judged. */
+export function checkLimit({ id, limit, unit }: Pick<Check, 'id' | 'limit' | 'unit'>, own: number | null = null): string {
   if (limit === null) return id === 'response.extremes' ? 'first notch over the sweep' : ''
   if (typeof limit === 'string') return `at least ${limit}`
-  return `limit ${unit === 'ms' && limit < 0.1 ? milliseconds(limit) : withUnit(limit, unit)}`
+  // A limit that a check has no use for stays where the set has it.
+  return `${own === limit ? 'own limit' : 'limit'} ${unit === 'ms' && limit < 0.1 ? milliseconds(limit) : withUnit(limit, unit)}`
 }
 
 function withUnit(value: number, unit: string): string {
