@@ -17,15 +17,17 @@ interface SetFieldProps {
   /** Lines kept for what follows from the value. */
   readonly lines?: number
   readonly label?: string
+  /** What follows from the value, where it is not {@link fieldNotes} that knows it. */
+  readonly notes?: readonly string[]
 }
 
-export function SetField({ path, lines, label }: SetFieldProps) {
+export function SetField({ path, lines, label, notes: given }: SetFieldProps) {
   const row = parameter(path)
   const named = label === undefined ? row : { ...row, label }
   const binding = useField<unknown>(path)
   const set = useCurrent((s) => s.set)
   const tempoBpm = useView((s) => s.tempoBpm)
-  const notes = fieldNotes(path, set, { tempoBpm })
+  const notes = given ?? fieldNotes(path, set, { tempoBpm })
   switch (named.kind) {
     case 'choice':
       return <ChoiceField spec={named} binding={binding as Binding<string | null>} notes={notes} />
