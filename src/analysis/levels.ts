@@ -59,8 +59,8 @@ export function levelFigures(set: ParameterSet, sampleRate = set.sampleRate): Le
   const bounds = { peakBounds: peakBounds(set, sampleRate), lineBounds: peakBounds(lineSet, sampleRate) }
   const norms = stable ? heldNorms(set, sampleRate, bounds) : null
   return {
-    peak: levelFigure(set, { worst: stable ? largestGain(set, sampleRate) : null, l1: norms?.output }, bounds.peakBounds),
-    line: levelFigure(lineSet, { worst: stable ? largestGain(lineSet, sampleRate) : null, l1: norms?.line }, bounds.lineBounds),
+    peak: levelFigure(set, { worst: stable ? largestGain(set, sampleRate) : null, l1: norms?.output ?? null }, bounds.peakBounds),
+    line: levelFigure(lineSet, { worst: stable ? largestGain(lineSet, sampleRate) : null, l1: norms?.line ?? null }, bounds.lineBounds),
     ...bounds,
   }
 }

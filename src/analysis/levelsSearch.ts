@@ -1,12 +1,13 @@
 // The largest |H| over frequency and sweep. Rows of one frequency over every position are looked at where the bound of levelsBound.ts is largest first; the
 // best places are followed to their summits, and the search ends when what was found comes up to the bound, or the work allowed for is done: then the true
 // largest lies between the two, and both are given.
-import { frozenShapeValue, wrapPhase } from '../dsp/sweep.ts'
+import { frozenShapeValue, phaseOffset, wrapPhase } from '../dsp/sweep.ts'
 import type { ParameterSet } from '../set/types.ts'
+import { frozenExtremes } from './extremes.ts'
 import { type Frozen, freeze } from './frozen.ts'
 import { frozenRead } from './frozenRead.ts'
 import { boundAt, type FrequencyBound, frequencyBound, hasFilters, largestBound } from './levelsBound.ts'
-import { freezeAtLargestSlope, readsTogether } from './levelsSet.ts'
+import { freezeAtLargestSlope, lineAsOutput, readsTogether } from './levelsSet.ts'
 import { goldenMaximum } from './loopSearch.ts'
 import { type PathTable, pathPositions, pathStretches, pathTable } from './pathTable.ts'
 import { createTuning, pathValues, type Tuning, tune } from './pathValues.ts'
@@ -30,11 +31,12 @@ export interface LargestGain {
 /** Found and bound closer than this are one figure: 0.009 dB. */
 const SAME = 0.999
 /** Reads that may be evaluated over all rows, at 10 to 20 ns each, and positions a row has at most. */
-const BUDGET = 120_000
-const MOST_POSITIONS = 256
+const BUDGET = 200_000
+const MOST_POSITIONS = 128
 const POINTS_PER_TOOTH = 6
 /** Rows looked at before the best places among them are followed. */
 const BATCH = 48
+const SPREAD = 400
 const FOLLOWED = 4
 
 interface Place {
@@ -61,6 +63,7 @@ export function largestGain(set: ParameterSet, sampleRate = set.sampleRate): Lar
   const top = tops.reduce((a, b) => (b.value > a.value ? b : a)).omega
   const quick = quickLook(ground, top)
   if (quick.gain >= bound * SAME) return named(ground.path, quick, bound)
+  if (ground.path.stops.length === 1) return standing(ground, quick)
   const search = createSearch(ground, quick)
   const rows = rowsOf(search, top)
   const cost = search.table.first.length
@@ -117,6 +120,20 @@ function quickLook(ground: Ground, top: number): Place {
   return best
 }
 
+/** One position: every peak of its response. */
+function standing({ path, frozen, delays, bounds }: Ground, ends: Place): LargestGain {
+  const held = frozenAt({ path, frozen, delays, bounds }, ends.t)
+  const perHz = (2 * Math.PI) / path.sampleRate
+  let best = ends
+  for (const { kind, channel, frequencyHz, db } of frozenExtremes(held, { withinHz: toothOf(held) / perHz / 1e4 })) {
+    const gain = 10 ** (db / 20)
+    if (kind === 'peak' && gain > best.gain) best = { channel, omega: frequencyHz * perHz, t: ends.t, gain }
+  }
+  return named(path, best, best.gain)
+}
+
+const toothOf = (frozen: Frozen): number => (2 * Math.PI) / transferOf(frozen).longest
+
 function createSearch({ path, frozen, bounds, delays }: Ground, best: Place): Search {
   const stretches = pathStretches(path)
   let lowest = Number.POSITIVE_INFINITY
@@ -148,17 +165,40 @@ const inPhase = (set: ParameterSet, { dryDelay, loop }: Frozen, c: number): bool
 
 const highestAt = ({ bounds }: Search, omega: number): number => Math.max(...bounds.map((bound) => boundAt(bound, omega)))
 
-/** ω of every row, the likeliest first: where the bound is largest, the first teeth, then the whole range spread evenly by the golden ratio. */
-function rowsOf({ tooth, bounds }: Search, top: number): number[] {
+/** ω of every row, the likeliest first: where the bound is largest, the first teeth, and between them the whole range spread evenly by the golden ratio. */
+function rowsOf(search: Search, top: number): number[] {
+  const { tooth, bounds } = search
   const step = tooth / POINTS_PER_TOOTH
   const near = [0, Math.PI, top]
-  for (let i = 1; i <= 3 * POINTS_PER_TOOTH; i++) near.push(i * step, top - i * step, top + i * step)
-  const spread = Array.from({ length: 400 }, (_, i) => Math.PI * (((i + 1) * 0.6180339887498949) % 1))
+  for (let i = 1; i <= 2 * POINTS_PER_TOOTH; i++) near.push(i * step, top - i * step, top + i * step)
+  const spread = standingPeaks(search) ?? Array.from({ length: SPREAD }, (_, i) => Math.PI * (((i + 1) * 0.6180339887498949) % 1))
   const inside = (omega: number) => omega >= 0 && omega <= Math.PI
-  if (!bounds.some(hasFilters)) return [...near, ...spread].filter(inside)
+  if (!bounds.some(hasFilters)) return alternating(near.filter(inside), spread)
   const bound = (omega: number) => Math.max(...bounds.map((b) => boundAt(b, omega)))
   const ranked = spread.map((omega) => ({ omega, value: bound(omega) })).sort((a, b) => b.value - a.value)
-  return [...near, ...ranked.map(({ omega }) => omega)].filter(inside)
+  return alternating(
+    near.filter(inside),
+    ranked.map(({ omega }) => omega),
+  )
+}
+
+/** A loop that stands while the voices move rings at its own frequencies, and only there: its peaks up to the 400th. null for others. */
+function standingPeaks({ path: { set, sampleRate }, frozen }: Search): number[] | null {
+  if (frozen.loop.gain === 0 || set.loop.delay !== 'fixed') return null
+  const line = freezeAtLargestSlope(lineAsOutput(set), 0, sampleRate)
+  const tooth = toothOf(line)
+  const perHz = (2 * Math.PI) / sampleRate
+  const maxHz = Math.min(sampleRate / 2, (SPREAD * tooth) / perHz)
+  return frozenExtremes(line, { maxHz, withinHz: tooth / perHz / 1e4 })
+    .filter(({ kind }) => kind === 'peak')
+    .map(({ frequencyHz }) => frequencyHz * perHz)
+}
+
+/** One of `first`, one of `second`, and so on; then what is left of the longer. */
+function alternating(first: readonly number[], second: readonly number[]): number[] {
+  return Array.from({ length: Math.max(first.length, second.length) }, (_, i) => [first[i], second[i]])
+    .flat()
+    .filter((value) => value !== undefined)
 }
 
 function bestOfRow(search: Search, omega: number): Place | null {
@@ -242,7 +282,10 @@ function frozenAt({ path, frozen, delays }: Ground, t: number): Frozen {
 
 function named(path: SweepPath, best: Place, bound: number): LargestGain {
   const { set, sampleRate } = path
-  const position = path.offsets === null ? positionOf(set, best.t) : best.t
+  // Channels that do not hear each other's sweep are walked as if in phase.
+  const walked = path.offsets === null ? 0 : (path.offsets[path.lines + best.channel * set.voices.count] as number)
+  const phase = (path.offsets === null ? positionOf(set, best.t) : best.t) + walked
+  const position = path.stops.length === 1 ? best.t : wrapPhase(phase - phaseOffset(set, best.channel, 0))
   const { channels } = freeze(set, position, sampleRate)
   return {
     gain: best.gain,
