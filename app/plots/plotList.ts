@@ -14,8 +14,10 @@ export interface PlotEntry {
 export const PLOTS: readonly PlotEntry[] = [
   { id: 'response', label: 'Response', load: async () => mountResponse },
   { id: 'sweep', label: 'Sweep', load: async () => mountSweep },
+  { id: 'map', label: 'Map', load: async () => (await import('./map/map.ts')).mountMap },
   { id: 'loop', label: 'Loop', load: async () => (await import('./loop/loop.ts')).mountLoop },
   { id: 'scope', label: 'Scope', load: async () => (await import('./scope/scope.ts')).mountScope },
+  { id: 'curve', label: 'Curve', load: async () => (await import('./curve/curve.ts')).mountCurve },
 ]
 
 export function plotEntry(id: PlotId): PlotEntry {

@@ -29,6 +29,8 @@ export interface PlotSpec {
   readonly over?: Layer
   /** What lines and shades mean. */
   legend?(): string
+  /** CSS px kept free above the plotting area, where the legend then stands; for plots that fill their corners. */
+  readonly headRoomPx?: number
   /** Drawn on a canvas of its own in front, as often as drawLive is called: what changes with the sound. The small text is set. */
   readonly live?: Layer
   /** Part of the width where the cursor stands, 0 to 1; null when it left. */
@@ -81,7 +83,8 @@ export function createPlot(element: HTMLElement, spec: PlotSpec): HostedPlot {
     layer(spec.live, frontCtx)(u)
   }
   const legend: Layer = (ctx, box, theme, plot) => {
-    if (spec.legend) drawLegend(ctx, box, theme, plot, spec.legend())
+    const above = (spec.headRoomPx ?? 0) * box.ratio
+    if (spec.legend) drawLegend(ctx, { ...box, top: box.top - above }, theme, plot, spec.legend())
   }
   let over = false
   const size = sizeOf(element)
@@ -92,7 +95,7 @@ export function createPlot(element: HTMLElement, spec: PlotSpec): HostedPlot {
       axes: spec.axes,
       series: [{}, ...(spec.series ?? [])],
       legend: { show: false },
-      padding: [6, 16, (plot) => (spec.legend ? legendRoomPx(plot, plotTheme()) : 0), 0],
+      padding: [spec.headRoomPx ?? 6, 16, (plot) => (spec.legend ? legendRoomPx(plot, plotTheme()) : 0), 0],
       cursor: { y: false, points: { show: false }, drag: { x: false, y: false } },
       hooks: {
         drawAxes: [layer(spec.under, null)],

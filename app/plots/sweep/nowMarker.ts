@@ -6,8 +6,8 @@ import { useView } from '../../state/view.ts'
 import { makeSlider } from '../host/slider.ts'
 
 export interface NowMarker {
-  /** Puts the line at x and the dot at x, y, in CSS pixels of the plotting area. */
-  place(x: number, y: number): void
+  /** Puts the line at x and the dot at x, y, in CSS pixels of the plotting area; no dot where y is null. */
+  place(x: number, y: number | null): void
   destroy(): void
 }
 
@@ -54,7 +54,7 @@ export function nowMarker(u: uPlot, element: HTMLElement, spoken: (position: num
   return {
     place(x, y) {
       line.style.transform = `translateX(${x}px)`
-      dot.style.transform = `translate(${x}px, ${y}px)`
+      dot.style.transform = y === null ? 'scale(0)' : `translate(${x}px, ${y}px)`
     },
     destroy() {
       stopView()

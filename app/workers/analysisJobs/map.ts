@@ -38,6 +38,8 @@ const TOOTH_POINTS = 6
 const MOST_TOOTH_POINTS = 40
 /** A row takes no more points; one that would need them is measured over whole teeth in its middle. */
 const MOST_POINTS = 80
+/** Positions at which notches and peaks are looked for. */
+const MOST_TRACK_POINTS = 192
 
 export function* mapJob({ set, rows, positions }: MapRequest): Generator<undefined, SweepMap> {
   const stands = sweepStands(set)
@@ -54,8 +56,9 @@ export function* mapJob({ set, rows, positions }: MapRequest): Generator<undefin
     yield
   }
   const trackPoints = []
-  for (let j = 0; j <= count; j++) {
-    trackPoints.push(trackAt(freeze(set, stands ? set.sweep.startPhase : j / count), rows.highHz))
+  const last = stands ? 1 : Math.min(count, MOST_TRACK_POINTS)
+  for (let j = 0; j <= last; j++) {
+    trackPoints.push(trackAt(freeze(set, stands ? set.sweep.startPhase : j / last), rows.lowHz, rows.highHz))
     yield
   }
   return {

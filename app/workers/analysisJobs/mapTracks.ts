@@ -1,6 +1,5 @@
 // Where the first notches and peaks of the first channel stand over the cycle of the sweep.
-import type { ExtremeKind } from '../../../src/analysis/extremes.ts'
-import { frozenExtremes } from '../../../src/analysis/extremes.ts'
+import { type Extreme, type ExtremeKind, frozenExtremes } from '../../../src/analysis/extremes.ts'
 import { firstChannel, longestOwnDelay } from '../../../src/analysis/firstExtreme.ts'
 import type { Frozen } from '../../../src/analysis/frozen.ts'
 import { standsOut } from './teeth.ts'
@@ -26,15 +25,22 @@ export interface TrackPoint {
   readonly db: number
 }
 
-/** The first notches and peaks of the first channel that stand out from their neighbours, up to maxHz. */
-export function trackAt(frozen: Frozen, maxHz: number): TrackPoint[] {
+/** The first notches and peaks of the first channel in [lowHz, highHz] that stand out from their neighbours. */
+export function trackAt(frozen: Frozen, lowHz: number, highHz: number): TrackPoint[] {
   const first = firstChannel(frozen)
-  const tooth = frozen.sampleRate / longestOwnDelay(first)
-  const extremes = frozenExtremes(first, { maxHz: Math.min(maxHz, (MOST + 2) * tooth), withinHz: WITHIN_HZ })
+  // A dry path that is delayed leaves wider teeth than its delay has: the search goes on where the first teeth show too little.
+  for (let maxHz = ((MOST + 2) * frozen.sampleRate) / longestOwnDelay(first); ; maxHz *= 4) {
+    const end = Math.min(highHz, maxHz)
+    const found = lowest(frozenExtremes(first, { maxHz: end, withinHz: WITHIN_HZ }), lowHz)
+    if (end === highHz || found.length === 2 * MOST) return found
+  }
+}
+
+function lowest(extremes: readonly Extreme[], lowHz: number): TrackPoint[] {
   const orders = { notch: 0, peak: 0 }
   const found: TrackPoint[] = []
   extremes.forEach(({ kind, frequencyHz, db }, i) => {
-    if (orders[kind] >= MOST || !standsOut(extremes, i)) return
+    if (frequencyHz < lowHz || orders[kind] >= MOST || !standsOut(extremes, i)) return
     orders[kind] += 1
     found.push({ kind, order: orders[kind], frequencyHz, db })
   })
