@@ -137,11 +137,55 @@ describe('a feed of the analysis client', () => {
   })
 })
 
+describe('a feed for what takes long', () => {
+  const step = { id: 'sweep.steps', label: 'Stepping', done: 0, total: 1, part: 0.5, checks: [] }
+
+  it('hands over how far it is and still waits for the answer', () => {
+    const { client: c, made } = client()
+    const heard: string[] = []
+    const feed = c.openFeed(
+      'longChecks',
+      (_, request) => heard.push(`done ${request.set.name}`),
+      () => {},
+      ({ part }, request) => heard.push(`${part} ${request.set.name}`),
+    )
+    feed.ask(named('a'))
+    const id = made[0]?.runs[0]?.id ?? 0
+    made[0]?.answer({ id, ok: true, progress: step })
+    made[0]?.answer({ id, ok: true, value: { checks: [] } })
+    expect(heard).toEqual(['0.5 a', 'done a'])
+  })
+
+  it('cancels what is under way for a newer request and hears no more of it', () => {
+    const { client: c, made } = client()
+    const heard: string[] = []
+    const feed = c.openFeed(
+      'longChecks',
+      (_, request) => heard.push(request.set.name),
+      () => {},
+      (_, request) => heard.push(`${request.set.name} goes on`),
+    )
+    feed.ask(named('a'))
+    feed.askInstead(named('b'))
+    const worker = made[0]
+    const [a, b] = worker?.runs ?? []
+    expect(worker?.heard.map(({ type, id }) => [type, id])).toEqual([
+      ['run', a?.id],
+      ['cancel', a?.id],
+      ['run', b?.id],
+    ])
+    worker?.answer({ id: a?.id ?? 0, ok: true, progress: step })
+    worker?.answer({ id: b?.id ?? 0, ok: true, value: { checks: [] } })
+    expect(heard).toEqual(['b'])
+  })
+})
+
 describe('lanes', () => {
-  it('answer every frame beside long work: trace and checks run in different workers', () => {
+  it('answer every frame beside long work: trace, checks and rendered checks run in different workers', () => {
     const { client: c, made } = client()
     c.openFeed('checks', () => {}).ask(named('a'))
     c.openFeed('trace', () => {}).ask({ set, position: 0, columns: { lowHz: 20, highHz: 20000, count: 10 } })
-    expect(made).toHaveLength(2)
+    c.openFeed('longChecks', () => {}).ask(named('a'))
+    expect(made).toHaveLength(3)
   })
 })

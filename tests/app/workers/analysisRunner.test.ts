@@ -1,8 +1,8 @@
 import { describe, expect, it } from 'vitest'
-import { createRunner, type FromWorker, type SlicedJob, type ToWorker } from '../../../app/workers/analysisRunner.ts'
+import { createRunner, type FetchedJob, type FromWorker, type SlicedJob, type ToWorker } from '../../../app/workers/analysisRunner.ts'
 
 /** A runner whose turns and clock the test moves by hand. */
-function byHand(jobs: Readonly<Record<string, SlicedJob<never, unknown>>>) {
+function byHand(jobs: Readonly<Record<string, SlicedJob<never, unknown, unknown> | FetchedJob<never, unknown, unknown>>>) {
   const posted: FromWorker[] = []
   const turns: (() => void)[] = []
   const clock = { ms: 0 }
@@ -84,5 +84,83 @@ describe('the runner of analysis jobs', () => {
     while (waiting() > 0) turn()
     expect(posted).toEqual([])
     expect(steps).toBe(1)
+  })
+
+  it('tells how far a long job is, the latest only and ten times a second at most; then answers', () => {
+    const { hear, posted, turn, clock, waiting } = byHand({
+      *long() {
+        for (let k = 1; k <= 30; k++) {
+          clock.ms += 10
+          yield k
+        }
+        return 'done'
+      },
+    })
+    hear(run(1, 'long'))
+    while (waiting() > 0) turn()
+    // 30 steps of 10 ms in slices of two: told at 100 ms and 200 ms.
+    expect(posted).toEqual([
+      { id: 1, ok: true, progress: 10 },
+      { id: 1, ok: true, progress: 20 },
+      { id: 1, ok: true, progress: 30 },
+      { id: 1, ok: true, value: 'done' },
+    ])
+  })
+
+  it('fetches a job’s code when it is first asked for, once, and does other jobs meanwhile', async () => {
+    let fetches = 0
+    const { hear, posted, turn, waiting } = byHand({
+      far: {
+        fetch: async () => {
+          fetches += 1
+          return (x: number) => -x
+        },
+      },
+      near: (x: number) => x,
+    })
+    hear(run(1, 'far', 1))
+    hear(run(2, 'near', 2))
+    while (waiting() > 0) turn()
+    expect(posted).toEqual([{ id: 2, ok: true, value: 2 }])
+    await Promise.resolve()
+    await Promise.resolve()
+    hear(run(3, 'far', 3))
+    while (waiting() > 0) turn()
+    expect(posted.slice(1)).toEqual([
+      { id: 1, ok: true, value: -1 },
+      { id: 3, ok: true, value: -3 },
+    ])
+    expect(fetches).toBe(1)
+  })
+
+  it('does not begin a job that was cancelled while its code was fetched', async () => {
+    const { hear, posted, turn, waiting } = byHand({ far: { fetch: async () => () => 'done' } })
+    hear(run(1, 'far'))
+    hear({ type: 'cancel', id: 1 })
+    await new Promise((done) => setTimeout(done))
+    while (waiting() > 0) turn()
+    expect(posted).toEqual([])
+  })
+
+  it('answers with the reason when a job’s code cannot be fetched, and tries again next time', async () => {
+    let there = false
+    const { hear, posted, turn, waiting } = byHand({
+      far: {
+        fetch: async () => {
+          if (!there) throw new TypeError('no server')
+          return () => 'done'
+        },
+      },
+    })
+    hear(run(1, 'far'))
+    await new Promise((done) => setTimeout(done))
+    there = true
+    hear(run(2, 'far'))
+    await new Promise((done) => setTimeout(done))
+    while (waiting() > 0) turn()
+    expect(posted).toEqual([
+      { id: 1, ok: false, message: 'no server' },
+      { id: 2, ok: true, value: 'done' },
+    ])
   })
 })

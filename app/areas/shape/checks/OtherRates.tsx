@@ -6,7 +6,7 @@ const loadPopup = () => import('./rates/RatesPopup.tsx').then((part) => part.Rat
 export function OtherRates() {
   const [Popup, closed] = usePopup(loadPopup, 'dialog')
   const button = (
-    <button type="button" className="cw-button cw-checks-rates" {...closed}>
+    <button type="button" className="cw-checks-rates" {...closed}>
       At other rates
     </button>
   )

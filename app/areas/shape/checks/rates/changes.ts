@@ -41,8 +41,9 @@ export function changesOf(rated: readonly Rated[], ownRate: number): Changes {
   return { rows, same }
 }
 
+/** By status; or by a figure that reads differently by more than rounding. */
 export function differs(own: RatedCheck, other: RatedCheck): boolean {
-  return own.status !== other.status || valuesDiffer(own.value, other.value, own.unit)
+  return own.status !== other.status || (checkFigure(own) !== checkFigure(other) && valuesDiffer(own.value, other.value, own.unit))
 }
 
 /** Decibels, loudness and cents by a fixed distance, everything else by part of its size. */

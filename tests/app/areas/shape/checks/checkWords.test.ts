@@ -28,6 +28,7 @@ describe('the figure of a check', () => {
 describe('the limit of a check', () => {
   it('is a figure, the weakest word that holds, or nothing', () => {
     expect(checkLimit({ id: 'loop.ring', limit: 3, unit: 's' })).toBe('limit 3 s')
+    expect(checkLimit({ id: 'loop.ring', limit: 4, unit: 's' }, 4)).toBe('own limit 4 s')
     expect(checkLimit({ id: 'sweep.fusion', limit: 50, unit: 'ms' })).toBe('limit 50 ms')
     expect(checkLimit({ id: 'sweep.range', limit: 0.0208333, unit: 'ms' })).toBe('limit 0.021 ms')
     expect(checkLimit({ id: 'loop.stability', limit: 'computed', unit: '' })).toBe('at least computed')
@@ -37,9 +38,15 @@ describe('the limit of a check', () => {
 })
 
 describe('the heading of the checks', () => {
-  it('counts what fails, is near, is noted and holds', () => {
-    expect(verdictWords({ verdict: 'fails', fails: 1, near: 1, notes: 0, holds: 6 })).toBe('Checks · 1 fails, 1 near, 6 hold')
-    expect(verdictWords({ verdict: 'fails', fails: 2, near: 0, notes: 1, holds: 1 })).toBe('Checks · 2 fail, 1 note, 1 holds')
-    expect(verdictWords({ verdict: null, fails: 0, near: 0, notes: 0, holds: 0 })).toBe('Checks · being computed')
+  it('counts what fails, is near, is noted and holds, and what is still to come', () => {
+    const done = { pending: 0, settled: true }
+    expect(verdictWords({ verdict: 'fails', fails: 1, near: 1, notes: 0, holds: 6, ...done })).toBe('Checks · 1 fails, 1 near, 6 hold')
+    expect(verdictWords({ verdict: 'fails', fails: 2, near: 0, notes: 1, holds: 1, ...done })).toBe('Checks · 2 fail, 1 note, 1 holds')
+    expect(verdictWords({ verdict: 'holds', fails: 0, near: 0, notes: 0, holds: 8, pending: 9, settled: false })).toBe(
+      'Checks · 8 hold · 9 to come',
+    )
+    expect(verdictWords({ verdict: null, fails: 0, near: 0, notes: 0, holds: 0, pending: 0, settled: false })).toBe(
+      'Checks · being computed',
+    )
   })
 })
