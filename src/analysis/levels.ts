@@ -66,6 +66,8 @@ export function levelFigures(set: ParameterSet, sampleRate = set.sampleRate): Le
 }
 
 function levelFigure(set: ParameterSet, { worst, l1 }: Pick<LevelFigure, 'worst' | 'l1'>, { output }: PeakBounds): LevelFigure {
+  // What never moves is bounded by what it does where it stands.
+  const anyMovement = sweepStands(set) ? smallest(output, l1?.bound ?? null) : output
   const bends = set.input.shaper !== null || set.mix.shaper !== null || (set.loop.shaper !== null && set.loop.feedback !== 0)
   const ceiling = bends ? output : null
   const heldByShaper = ceiling !== null && (worst === null || ceiling < worst.gain)
@@ -74,7 +76,7 @@ function levelFigure(set: ParameterSet, { worst, l1 }: Pick<LevelFigure, 'worst'
   return {
     worst,
     l1,
-    anyMovement: output,
+    anyMovement,
     heldByShaper,
     db: gain === null ? null : levelDb(gain),
     sampleDb: sample === null ? null : levelDb(sample),

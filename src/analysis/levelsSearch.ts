@@ -321,3 +321,8 @@ function positionOf({ sweep }: ParameterSet, s: number): number {
   }
   return nearest.position
 }
+
+/** What no held position and no frequency exceeds, linear; Infinity where the loop gain is not below 1. A fraction of a millisecond. */
+export function largestGainBound(set: ParameterSet, sampleRate = set.sampleRate): number {
+  return Math.max(...groundOf(set, sampleRate).bounds.map((bound) => largestBound(bound).value))
+}

@@ -1,5 +1,7 @@
 // Which checks exist, what each costs, and how they are run.
 import type { ParameterSet } from '../set/types.ts'
+import { levelLine } from './levelLine.ts'
+import { levelPeak } from './levelPeak.ts'
 import { LIMITS } from './limits.ts'
 import { loopMargin } from './loopMargin.ts'
 import { loopPoles } from './loopPoles.ts'
@@ -22,6 +24,8 @@ const UNSORTED: readonly CheckEntry[] = [
   { id: 'sweep.range', kind: 'closed', run: sweepRange },
   { id: 'sweep.detune', kind: 'closed', run: sweepDetune },
   { id: 'sweep.fusion', kind: 'closed', run: sweepFusion },
+  { id: 'level.peak', kind: 'closed', run: levelPeak },
+  { id: 'level.line', kind: 'closed', run: levelLine },
   { id: 'shaper.harmonics', kind: 'closed', run: shaperHarmonics },
   { id: 'shaper.alias', kind: 'closed', run: shaperAlias },
 ]
