@@ -1,4 +1,6 @@
 // The figure and status of a closed check without its words: no text, no working, no mends. For whoever judges many sets at once and shows one.
+import { levelLineFigure } from './levelLine.ts'
+import { levelPeakFigure } from './levelPeak.ts'
 import { loopMarginFigure } from './loopMargin.ts'
 import { loopPolesFigure } from './loopPoles.ts'
 import { loopRingFigure } from './loopRing.ts'
@@ -11,6 +13,8 @@ const FIGURES: { readonly [id: string]: FigureFunction | undefined } = {
   'loop.margin': loopMarginFigure,
   'loop.poles': loopPolesFigure,
   'loop.ring': loopRingFigure,
+  'level.peak': levelPeakFigure,
+  'level.line': levelLineFigure,
 }
 
 /**
