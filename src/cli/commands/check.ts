@@ -1,17 +1,19 @@
 // combwright check SET: all checks, their figures, limits and working.
 import type { Command } from 'commander'
 import { runChecks, verdictOf } from '../../checks/registry.ts'
-import type { Check, Verdict } from '../../checks/types.ts'
+import type { Check } from '../../checks/types.ts'
 import { type NumberParameter, parameter } from '../../set/parameters.ts'
 import { readChoice, readNumberOption } from '../arguments.ts'
+import { checkReport } from '../checkReport.ts'
 import { EXIT_CHECK, EXIT_GOOD } from '../failure.ts'
 import { readSetFile } from '../files.ts'
-import { oneLine, printJson } from '../output.ts'
+import { printJson } from '../output.ts'
 import type { Session } from '../program.ts'
 
 interface CheckOptions {
   readonly rate?: string
   readonly failOn: string
+  readonly working?: boolean
   readonly json?: boolean
 }
 
@@ -24,6 +26,7 @@ export function addCheck(program: Command, session: Session): void {
     .argument('<set>', 'a set file')
     .option('--rate <hz>', `judge it as if run at this rate, ${RATE.min} to ${RATE.max} Hz`)
     .option('--fail-on <status>', 'exit 1 on fails, or already on near', 'fails')
+    .option('--working', 'print the working of every check, not only of those that fail or are near')
     .option('--json', 'print { set, verdict, checks } as JSON')
     .addHelpText(
       'after',
@@ -36,7 +39,7 @@ export function addCheck(program: Command, session: Session): void {
       const checks = runChecks(set, { sampleRate })
       const verdict = verdictOf(checks)
       if (options.json) printJson({ set: set.name, verdict, checks: checks.map(inOrder) })
-      else process.stdout.write(checkReport(set.name, verdict, checks))
+      else process.stdout.write(checkReport(set, checks, options))
       session.exitCode = verdict === 'fails' || (failOn === 'near' && verdict === 'near') ? EXIT_CHECK : EXIT_GOOD
     })
 }
@@ -44,10 +47,4 @@ export function addCheck(program: Command, session: Session): void {
 /** The keys scripts rely on first, in their order. */
 function inOrder({ id, status, value, limit, unit, text, working, ...more }: Check): Check {
   return { id, status, value, limit, unit, text, working, ...more }
-}
-
-function checkReport(name: string, verdict: Verdict, checks: readonly Check[]): string {
-  const width = Math.max(...checks.map((check) => check.id.length))
-  const lines = checks.map((check) => `${check.status.padEnd(5)}  ${check.id.padEnd(width)}  ${check.text}`)
-  return `${oneLine(name)}: ${verdict}\n${lines.map((line) => `${line}\n`).join('')}`
 }
