@@ -1,6 +1,6 @@
 // What the processor is told of session and view, as one state; and the set, at most one a frame.
 import { flatten } from '../../src/set/flat.ts'
-import { currentSet, subscribeSet } from '../state/current.ts'
+import { heardSet, subscribeHeard } from '../state/heard.ts'
 import { LEVEL_MIN_DB, type SessionState, useSession } from '../state/session.ts'
 import { useView } from '../state/view.ts'
 import { currentGraph } from './currentGraph.ts'
@@ -65,7 +65,7 @@ function sendSetSoon(): void {
 
 export function sendSet(): void {
   const graph = currentGraph()
-  if (graph) post(graph, { type: 'set', flat: flatten(currentSet()) })
+  if (graph) post(graph, { type: 'set', flat: flatten(heardSet()) })
 }
 
 let following = false
@@ -74,7 +74,7 @@ let following = false
 export function followState(): void {
   if (following) return
   following = true
-  subscribeSet(sendSetSoon)
+  subscribeHeard(sendSetSoon)
   useSession.subscribe(sendSettings)
   useView.subscribe((now, before) => {
     if (now.held !== before.held) sendSettings()

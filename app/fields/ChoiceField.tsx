@@ -1,5 +1,5 @@
 import './fields.css'
-import { useId, useState } from 'react'
+import { type ReactNode, useId, useState } from 'react'
 import type { ChoiceParameter } from '../../src/set/parameters.ts'
 import type { Binding, Refusal } from './binding.ts'
 import { FieldNotes } from './FieldNotes.tsx'
@@ -8,12 +8,14 @@ interface ChoiceFieldProps {
   readonly spec: Pick<ChoiceParameter, 'label' | 'help' | 'options' | 'nullable'>
   readonly binding: Binding<string | null>
   readonly notes?: readonly string[]
+  /** Stands beside the label: the field's knob. */
+  readonly aside?: ReactNode
 }
 
 const OFF = ''
 
 /** One of a few. A choice that would need a second change is refused with the ways to have it, like a number. */
-export function ChoiceField({ spec, binding, notes = [] }: ChoiceFieldProps) {
+export function ChoiceField({ spec, binding, notes = [], aside }: ChoiceFieldProps) {
   const id = useId()
   const [refusal, setRefusal] = useState<Refusal>(null)
   const { value } = binding
@@ -29,6 +31,7 @@ export function ChoiceField({ spec, binding, notes = [] }: ChoiceFieldProps) {
         <label className="cw-field-label" htmlFor={id} title={spec.help}>
           {spec.label}
         </label>
+        {aside}
         <span className="cw-field-value cw-choice">
           <span className="cw-choice-shown" aria-hidden="true">
             {chosen?.label ?? 'off'} <span className="cw-choice-arrow">▾</span>

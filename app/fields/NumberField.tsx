@@ -1,6 +1,6 @@
 // A number that is typed with its unit, dragged and stepped. Beneath it, room kept for what follows from the value, or for why it was refused.
 import './fields.css'
-import { useId } from 'react'
+import { type ReactNode, useId } from 'react'
 import type { QuantityContext } from '../../src/set/units.ts'
 import type { Binding } from './binding.ts'
 import { FieldNotes } from './FieldNotes.tsx'
@@ -23,11 +23,23 @@ export interface NumberFieldProps {
   /** First value when the field is switched on. */
   readonly whenOff?: number
   readonly onApplied?: (text: string) => void
+  /** Stands beside the label: the field's knob. */
+  readonly aside?: ReactNode
 }
 
 const noContext = () => ({})
 
-export function NumberField({ spec, binding, context = noContext, usual = null, notes = [], lines, whenOff, onApplied }: NumberFieldProps) {
+export function NumberField({
+  spec,
+  binding,
+  context = noContext,
+  usual = null,
+  notes = [],
+  lines,
+  whenOff,
+  onApplied,
+  aside,
+}: NumberFieldProps) {
   const id = useId()
   const { value } = binding
   const startAt = whenOff ?? trackLow(spec)
@@ -44,6 +56,7 @@ export function NumberField({ spec, binding, context = noContext, usual = null, 
         <label className="cw-field-label cw-field-label--drag" htmlFor={id} title={spec.help} {...scrub.label}>
           {spec.label}
         </label>
+        {aside}
         {switchable && <OffSwitch label={spec.label} on={value !== null} onClick={() => binding.apply(value === null ? startAt : null)} />}
         <span className="cw-field-value">
           <NumberInput id={id} text={text} spec={spec} value={value} describedBy={`${id}-help ${id}-notes`} />

@@ -30,7 +30,7 @@ export function SetMenuPopup({ button }: { readonly button: React.ReactElement }
             <Item onClick={() => void saveSetAs()}>Save as…</Item>
             <DemoMenu />
             <Menu.Separator className="cw-menu-separator" />
-            <Item onClick={() => useView.setState({ block: 'set' })}>Name, notes, rate, layout</Item>
+            <Item onClick={() => useView.setState({ block: 'set', column: 'fields' })}>Name, notes, rate, layout</Item>
           </Menu.Popup>
         </Menu.Positioner>
       </Menu.Portal>

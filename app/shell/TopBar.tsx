@@ -35,7 +35,12 @@ function SetLine() {
   const sampleRate = useCurrent((s) => s.set.sampleRate)
   const problem = useSaved((s) => s.problem)
   return (
-    <button type="button" className="cw-set-line" title="Name, notes, rate and layout" onClick={() => useView.setState({ block: 'set' })}>
+    <button
+      type="button"
+      className="cw-set-line"
+      title="Name, notes, rate and layout"
+      onClick={() => useView.setState({ block: 'set', column: 'fields' })}
+    >
       {intent} · {sampleRate / 1000} kHz · {optionLabel('layout', layout)} ·{' '}
       {problem === null ? 'saved here' : <span className="cw-set-unsaved">not saved: {problem}</span>}
     </button>

@@ -1,5 +1,6 @@
 // Changing one field of the set: what a typed value would need besides, and how far a gesture may go.
 // What sounds and is kept stays valid all the way: nothing here puts an invalid set into draft or document.
+import { followField } from '../../src/set/panelSettle.ts'
 import { parameter } from '../../src/set/parameters.ts'
 import { getAt } from '../../src/set/path.ts'
 import type { Problem } from '../../src/set/result.ts'
@@ -15,11 +16,11 @@ export type Proposal =
   | { readonly ok: true; readonly set: ParameterSet }
   | { readonly ok: false; readonly problems: readonly Problem[]; readonly offers: readonly Offer[] }
 
-/** What would come of replacing one field; nothing is changed. A value that needs a second change comes back with offers. */
+/** What would come of replacing one field, its knob turned along with it where that moves nothing else; nothing is changed. A value that needs a second change comes back with offers. */
 export function propose(path: string, value: unknown, from: ParameterSet = committedSet()): Proposal {
   const own = valueProblem(parameter(path), value)
   if (own) return { ok: false, problems: [own], offers: [] }
-  return judge(replaceField(from, path, value), path)
+  return judge(followField(replaceField(from, path, value), path), path)
 }
 
 /** The same for a whole set that a field reached on its own way (first notch, drawn points). */
@@ -46,7 +47,10 @@ export function commitField(path: string, value: unknown): Proposal {
 
 export function commitOffer(path: string, offer: Offer): void {
   endGesture()
-  commit(stepName(path), offer.set)
+  commit(
+    stepName(path),
+    offer.changes.reduce((set, change) => followField(set, change.path), offer.set),
+  )
 }
 
 /** Tries a value within a gesture. Where it would become invalid the field is held at the last value that is not; true when it was held. */

@@ -39,6 +39,7 @@ export const KEEP_DOCUMENT: KeepTable<DocumentState> = {
 
 export const KEEP_VIEW: KeepTable<ViewState> = {
   block: tab(oneOf(...BLOCKS)),
+  column: tab(oneOf('fields', 'panel')),
   plots: tab((value) => Array.isArray(value) && value.length === 2 && value.every(isPlot)),
   held: tab(orNull(between(0, 1))),
   // theme.ts keeps it, under a key that is read before the bundle.

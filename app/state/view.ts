@@ -17,6 +17,8 @@ export type BlockId =
 
 export interface ViewState {
   readonly block: BlockId
+  /** What stands in the left column: the fields of the block, or the panel. */
+  readonly column: 'fields' | 'panel'
   /** The two plots shown, upper and lower; on a narrow page only the upper. */
   readonly plots: readonly [PlotId, PlotId]
   /** Sweep position held by the user, null while it follows the sound. */
@@ -29,6 +31,7 @@ export interface ViewState {
 
 export const useView = create<ViewState>()(() => ({
   block: 'line',
+  column: 'fields',
   plots: ['response', 'sweep'],
   held: null,
   theme: 'system',

@@ -33,7 +33,7 @@ export function BlockTab({ id, set, box, chosen, isStop }: BlockTabProps) {
       data-idle={idle || undefined}
       data-two={(id === 'line' && set.layout === 'stereo') || undefined}
       style={style}
-      onClick={() => useView.setState({ block: id })}
+      onClick={() => useView.setState({ block: id, column: 'fields' })}
     >
       <span className="cw-block-title">{face.title}</span>
       {id === 'line' ? <LineFace set={set} /> : face.text !== null && <span className="cw-block-text">{face.text}</span>}

@@ -12,11 +12,12 @@ import { Wires } from './Wires.tsx'
 
 export function Drawing() {
   const set = useCurrent((s) => s.set)
-  const chosen = useView((s) => s.block)
+  const block = useView((s) => s.block)
+  const inColumn = useView((s) => s.column === 'fields')
   const [frame, width] = useWidthRem()
   const geometry = geometryOf(set, width)
   const besideRem = geometry.labels.loopReads.x + (set.loop.delay === 'fixed' ? LONG_WORDS_REM : LOOP_WORDS_REM)
-  const stop = chosen === 'set' ? 'line' : chosen
+  const stop = block === 'set' ? 'line' : block
   const style = { width: `${geometry.width}rem`, height: `${geometry.height}rem` }
   return (
     <div className="cw-drawing" ref={frame}>
@@ -29,14 +30,14 @@ export function Drawing() {
           const next = neighbour(stop, event.key)
           if (!next) return
           event.preventDefault()
-          useView.setState({ block: next })
+          useView.setState({ block: next, column: 'fields' })
           document.getElementById(`cw-block-${next}`)?.focus()
         }}
       >
         <Wires geometry={geometry} crossFeed={set.loop.feedback === 0 ? 0 : set.loop.crossFeed} />
         <Labels set={set} geometry={geometry} />
         {[...MAIN_BLOCKS, ...LOOP_BLOCKS].map((id) => (
-          <BlockTab key={id} id={id} set={set} box={geometry.boxes[id]} chosen={id === chosen} isStop={id === stop} />
+          <BlockTab key={id} id={id} set={set} box={geometry.boxes[id]} chosen={inColumn && id === block} isStop={id === stop} />
         ))}
       </div>
       <Equation besideRem={geometry.width - besideRem < EQUATION_REM ? undefined : besideRem} />

@@ -1,10 +1,11 @@
 // The signal path where the page is narrow: the blocks as a list from in to out, the loop's set in beside the line; the chosen one's
 // fields open in place.
 import './PathList.css'
-import { useState } from 'react'
+import { Suspense, useState } from 'react'
 import { useCurrent } from '../../../state/current.ts'
 import { type BlockId, useView } from '../../../state/view.ts'
 import { BLOCK_TITLES, BlockFields } from '../fields/blockFields.tsx'
+import { Panel } from '../fields/FieldsColumn.tsx'
 import { blockFace, hasLoop, LOOP_BLOCKS, type PathBlockId } from './blocks.ts'
 import { LineFace } from './LineFace.tsx'
 
@@ -13,17 +14,20 @@ const BACK: readonly PathBlockId[] = [...LOOP_BLOCKS].reverse()
 const ORDER: readonly BlockId[] = ['set', 'inputShaper', 'line', ...BACK, 'voices', 'wetTone', 'mix', 'outputShaper']
 
 export function PathList() {
-  const chosen = useView((s) => s.block)
+  const block = useView((s) => s.block)
+  const column = useView((s) => s.column)
   const [closed, setClosed] = useState(false)
-  const choose = (id: BlockId) => {
+  const chosen = column === 'panel' ? 'panel' : block
+  const choose = (id: BlockId | 'panel') => {
     setClosed(id === chosen && !closed)
-    useView.setState({ block: id })
+    useView.setState(id === 'panel' ? { column: 'panel' } : { block: id, column: 'fields' })
   }
   return (
     <ol className="cw-path">
       {ORDER.map((id) => (
         <Item key={id} id={id} open={id === chosen && !closed} onClick={() => choose(id)} />
       ))}
+      <PanelItem open={chosen === 'panel' && !closed} onClick={() => choose('panel')} />
     </ol>
   )
 }
@@ -56,6 +60,27 @@ function Item({ id, open, onClick }: ItemProps) {
         {open && (
           <div className="cw-fields">
             <BlockFields block={id} />
+          </div>
+        )}
+      </div>
+    </li>
+  )
+}
+
+function PanelItem({ open, onClick }: Omit<ItemProps, 'id'>) {
+  const knobs = useCurrent((s) => s.set.panel.map(({ knob }) => knob).join(', '))
+  return (
+    <li className="cw-path-item" data-absent={knobs === '' || undefined}>
+      <button type="button" className="cw-path-button" aria-expanded={open} aria-controls="cw-path-panel" onClick={onClick}>
+        <span className="cw-path-title">Panel</span>
+        <span className="cw-path-text">{knobs === '' ? 'no knobs' : knobs}</span>
+      </button>
+      <div id="cw-path-panel">
+        {open && (
+          <div className="cw-fields">
+            <Suspense fallback={null}>
+              <Panel />
+            </Suspense>
           </div>
         )}
       </div>
