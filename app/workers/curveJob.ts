@@ -2,6 +2,7 @@
 import { foldedEnergy } from '../../src/analysis/folded.ts'
 import { drivenSine, harmonicDb, totalDistortion } from '../../src/analysis/harmonics.ts'
 import { tableError } from '../../src/analysis/tableError.ts'
+import { shaperCorners } from '../../src/analysis/tableErrorBend.ts'
 import { createShaper } from '../../src/dsp/shaper.ts'
 import { readShaperTable, tablePoint } from '../../src/dsp/shaperTable.ts'
 import type { Shaper } from '../../src/set/types.ts'
@@ -18,6 +19,8 @@ export interface CurveReply {
   readonly request: CurveRequest
   readonly transfer: Transfer
   readonly against: AgainstDrive
+  /** The same at the shaper's own drive: one of each. */
+  readonly own: AgainstDrive
 }
 
 export interface Transfer {
@@ -56,13 +59,18 @@ const POINTS = 600
 const AIR = 1.12
 const SEEN_APART = 100
 export const HIGHEST_HARMONIC = 9
-const DRIVES = 72
+const DRIVES = 120
 /** The track of the drive's field. */
 const LEAST_DRIVE = 0.1
 const MOST_DRIVE = 30
 
 export function curveJob(request: CurveRequest): CurveReply {
-  return { request, transfer: transferOf(request.shaper), against: againstDrive(request) }
+  return {
+    request,
+    transfer: transferOf(request.shaper),
+    against: againstDrive(request),
+    own: atDrives(request, Float64Array.of(request.shaper.drive)),
+  }
 }
 
 function transferOf(shaper: Shaper): Transfer {
@@ -71,12 +79,17 @@ function transferOf(shaper: Shaper): Transfer {
   const reach = AIR * Math.max(1, table.range)
   const x = Float64Array.from({ length: POINTS + 1 }, (_, i) => reach * ((2 * i) / POINTS - 1))
   const error = (at: number) => Math.abs(readShaperTable(table, at) - curve(at))
+  const corners = shaperCorners(shaper, table.range)
+  const half = reach / POINTS
   const intervals = table.values.length - 1
   const seen = intervals * (reach / table.range) <= SEEN_APART ? Array.from(table.values.keys()) : []
   return {
     x,
     y: x.map(curve),
-    error: x.map((at) => errorAround(error, at, reach / POINTS, table)),
+    error: x.map((at) => {
+      const near = corners.filter((corner) => Math.abs(corner.x - at) <= half).map((corner) => error(corner.x))
+      return Math.max(errorAround(error, at, half, table), ...near)
+    }),
     tableX: Float64Array.from(seen, (i) => tablePoint(table, i)),
     tableY: Float64Array.from(seen, (i) => table.values[i] as number),
     step: table.step,
@@ -84,9 +97,11 @@ function transferOf(shaper: Shaper): Transfer {
   }
 }
 
-const LOOKS = 4
+/** A hump between two points is drawn as such when it is this many shown x wide; denser ones as the line over their tops. */
+const HUMP = 6
+const LOOKS = 3
 
-/** Largest error within `half` of x: at middles of intervals where several fit, else at x, so that the humps between points are drawn. */
+/** Error at x, or where humps are dense the largest in the middles of the intervals around it. */
 function errorAround(
   error: (x: number) => number,
   x: number,
@@ -94,7 +109,7 @@ function errorAround(
   { range, step }: { readonly range: number; readonly step: number },
 ): number {
   if (Math.abs(x) > range) return Number.NaN
-  if (step > half) return error(x)
+  if (step > 2 * half * HUMP) return error(x)
   let most = 0
   for (let k = 0; k < LOOKS; k++) {
     const near = x - half + (2 * half * (k + 0.5)) / LOOKS
@@ -113,10 +128,18 @@ function againstDrive({ shaper, amplitude, sampleRate }: CurveRequest): AgainstD
   const { drive, tableSize, tableRange, ...rest } = shaper
   const key = JSON.stringify([rest, amplitude, sampleRate, low, high])
   if (kept?.key === key) return kept.against
-  const drives = Float64Array.from({ length: DRIVES + 1 }, (_, i) => low * (high / low) ** (i / DRIVES))
-  const sines = Array.from(drives, (each) => drivenSine({ ...shaper, drive: each }, amplitude, HIGHEST_HARMONIC))
+  const against = atDrives(
+    { shaper, amplitude, sampleRate },
+    Float64Array.from({ length: DRIVES + 1 }, (_, i) => low * (high / low) ** (i / DRIVES)),
+  )
+  kept = { key, against }
+  return against
+}
+
+function atDrives({ shaper, amplitude, sampleRate }: CurveRequest, drives: Float64Array): AgainstDrive {
+  const sines = Array.from(drives, (drive) => drivenSine({ ...shaper, drive }, amplitude, HIGHEST_HARMONIC))
   const decibels = (of: (i: number) => number | null) => drives.map((_, i) => of(i) ?? Number.NaN)
-  const against: AgainstDrive = {
+  return {
     drives,
     harmonics: Array.from({ length: HIGHEST_HARMONIC - 1 }, (_, k) => decibels((i) => harmonicDb(sines[i]!, k + 2))),
     distortion: decibels((i) => totalDistortion(sines[i]!)),
@@ -129,6 +152,4 @@ function againstDrive({ shaper, amplitude, sampleRate }: CurveRequest): AgainstD
       return db === null || db <= -400 ? null : db
     }),
   }
-  kept = { key, against }
-  return against
 }

@@ -100,13 +100,16 @@ export function driveIndex({ drives }: AgainstDrive, part: number): number {
   return Math.max(0, Math.min(drives.length - 1, Math.round(part * (drives.length - 1))))
 }
 
-const MOST_NAMED = 4
+const MOST_NAMED = 2
+/** Quieter harmonics are not named. */
+const NAMED_DB = -120
 
-/** "drive 4.02 · 3: −13.9 · 5: −24.4 dB · distortion 23 % · DC −18.4 dBFS · folded −23.8 dB" */
+/** "drive 4.00 · 3: −13.9, 2: −20.6 dB · THD 23 % · DC −18.4 dBFS · folds −23.8 dB": the strongest harmonics lead. */
 export function driveWords(against: AgainstDrive, i: number): string {
   const levels = against.harmonics
     .map((db, k) => ({ n: k + 2, db: db[i] as number }))
-    .filter(({ db }) => db > -120)
+    .filter(({ db }) => db > NAMED_DB)
+    .sort((a, b) => b.db - a.db)
     .slice(0, MOST_NAMED)
     .map(({ n, db }) => `${n}: ${decimal(db, 1)}`)
   const [distortion, dc, folded] = [against.distortion, against.dcDb, against.foldedDb].map((of) => of[i] as number) as [
@@ -116,24 +119,17 @@ export function driveWords(against: AgainstDrive, i: number): string {
   ]
   const parts = [`drive ${decimal(against.drives[i] as number, 2)}`]
   if (Number.isNaN(distortion)) return `${parts[0]} · nothing passes`
-  parts.push(levels.length > 0 ? `${levels.join(' · ')} dB` : 'no harmonics')
-  if (distortion > 1e-6) parts.push(`distortion ${percent(distortion)}`)
+  parts.push(levels.length > 0 ? `${levels.join(', ')} dB` : 'no harmonics')
+  if (distortion > 1e-6) parts.push(`THD ${percent(distortion)}`)
   if (!Number.isNaN(dc)) parts.push(`DC ${decimal(dc, 1)} dBFS`)
-  parts.push(Number.isNaN(folded) ? 'nothing folds' : `folded ${decimal(folded, 1)} dB`)
+  parts.push(Number.isNaN(folded) ? 'nothing folds' : `folds ${decimal(folded, 1)} dB`)
   return parts.join(' · ')
 }
 
 const percent = (ratio: number) => `${Number((100 * ratio).toPrecision(2))} %`
 
-/** Index of the drive nearest to the shaper's own. */
-export function ownDrive({ request: { shaper }, against }: CurveReply): number {
-  const low = against.drives[0] as number
-  const high = against.drives.at(-1) as number
-  return driveIndex(against, Math.log(shaper.drive / low) / Math.log(high / low))
-}
-
 export function harmonicsSummary({ name, reply }: Shown): string {
-  return `Harmonics of a −6 dBFS sine through the ${name}: ${driveWords(reply.against, ownDrive(reply))}.`
+  return `Harmonics of a −6 dBFS sine through the ${name}: ${driveWords(reply.own, 0)}.`
 }
 
 const orNone = (value: number, digits: number) => (Number.isNaN(value) ? 'none' : decimal(value, digits))
@@ -142,8 +138,8 @@ export function harmonicsTable({ name, reply: { against } }: Shown): PlotTable {
   return {
     caption: `Harmonics of a −6 dBFS sine through the ${name} against drive, dB against the first`,
     head: ['Drive', ...against.harmonics.map((_, k) => `Harmonic ${k + 2}`), 'Distortion', 'DC, dBFS', 'Folded of 5 kHz'],
-    rows: Array.from({ length: Math.floor((against.drives.length - 1) / 3) + 1 }, (_, k) => {
-      const i = 3 * k
+    rows: Array.from({ length: Math.floor((against.drives.length - 1) / 4) + 1 }, (_, k) => {
+      const i = 4 * k
       const ratio = against.distortion[i] as number
       return [
         decimal(against.drives[i] as number, 3),

@@ -8,12 +8,10 @@ import { plotCursor } from '../host/plotCursor.ts'
 import { plotTheme } from '../host/theme.ts'
 import { decimal } from '../words.ts'
 import type { CurvePlace, CurveView } from './curveView.ts'
-import { driveIndex, driveWords, harmonicsNumbers, harmonicsSummary, harmonicsTable, ownDrive } from './curveWords.ts'
+import { driveIndex, driveWords, harmonicsNumbers, harmonicsSummary, harmonicsTable } from './curveWords.ts'
 
 const LOWEST_DB = -100
 const HIGHEST_DB = 6
-/** Names of lines stand this far apart at least. */
-const NAME_APART_EM = 1.1
 
 export function mountHarmonics({ element, shown, why, changed }: CurvePlace): CurveView {
   let cursor: number | null = null
@@ -92,50 +90,45 @@ export function mountHarmonics({ element, shown, why, changed }: CurvePlace): Cu
     const reply = shown()?.reply
     if (!reply) return
     const x = Math.round(u.valToPos(reply.request.shaper.drive, 'x', true)) + 0.5
-    const i = ownDrive(reply)
     ctx.strokeStyle = theme.ink
     ctx.lineWidth = 1.25 * box.ratio
+    ctx.setLineDash([])
     ctx.beginPath()
     ctx.moveTo(x, box.top)
     ctx.lineTo(x, box.top + box.height)
     ctx.stroke()
-    const lines = [...reply.against.harmonics, reply.against.foldedDb, reply.against.dcDb]
+    const { harmonics, foldedDb, dcDb } = reply.own
+    const lines = [...harmonics, foldedDb, dcDb]
     lines.forEach((db, k) => {
-      if (!((db[i] as number) > LOWEST_DB)) return
-      ctx.fillStyle = k < reply.against.harmonics.length ? theme.now : theme.second
+      if (!((db[0] as number) > LOWEST_DB)) return
+      ctx.fillStyle = k < harmonics.length ? theme.now : theme.second
       ctx.beginPath()
-      ctx.arc(x, u.valToPos(db[i] as number, 'db', true), 3 * box.ratio, 0, 2 * Math.PI)
+      ctx.arc(x, u.valToPos(db[0] as number, 'db', true), 3 * box.ratio, 0, 2 * Math.PI)
       ctx.fill()
     })
   }
 
-  /** Each line's name at its right end, those that would stand on another left out. */
   const names: Layer = (ctx, box, theme, u) => {
     const now = against()
     if (!now) return
-    const last = now.drives.length - 1
-    const all = [
-      { text: 'DC', db: now.dcDb[last] as number, colour: theme.second },
-      { text: 'folded', db: now.foldedDb[last] as number, colour: theme.second },
-      ...now.harmonics.map((db, k) => ({ text: String(k + 2), db: db[last] as number, colour: theme.now })),
+    const lines = [
+      ...now.harmonics.map((db, k) => ({ text: String(k + 2), db, colour: theme.now })),
+      { text: 'DC', db: now.dcDb, colour: theme.second },
+      { text: 'folded', db: now.foldedDb, colour: theme.second },
     ]
-    const apart = NAME_APART_EM * theme.textPx * box.ratio
-    const taken: number[] = []
-    ctx.textAlign = 'right'
+    ctx.textAlign = 'center'
     ctx.textBaseline = 'bottom'
-    for (const { text, db, colour } of all) {
-      const y = u.valToPos(db, 'db', true) - 2 * box.ratio
-      if (!(db > LOWEST_DB) || taken.some((other) => Math.abs(other - y) < apart)) continue
-      taken.push(y)
+    const apart = theme.textPx * box.ratio
+    for (const { text, i, colour, db } of namePlaces(lines, (level) => u.valToPos(level, 'db', true), apart)) {
       ctx.fillStyle = colour
-      ctx.fillText(text, box.left + box.width - 2 * box.ratio, y)
+      ctx.fillText(text, u.valToPos(now.drives[i] as number, 'x', true), u.valToPos(db[i] as number, 'db', true) - 2 * box.ratio)
     }
   }
 
   return {
     update: () => plot.u.setData(data() as [Float64Array, ...Float64Array[]]),
     frame() {},
-    reading: ({ reply }) => driveWords(reply.against, cursor === null ? ownDrive(reply) : driveIndex(reply.against, cursor)),
+    reading: ({ reply }) => (cursor === null ? driveWords(reply.own, 0) : driveWords(reply.against, driveIndex(reply.against, cursor))),
     summary: harmonicsSummary,
     table: harmonicsTable,
     numbers: harmonicsNumbers,
@@ -155,4 +148,37 @@ function driveSplits(min: number, max: number): number[] {
       if (drive >= min && drive <= max) found.push(drive)
     }
   return found
+}
+
+interface Line {
+  readonly text: string
+  readonly db: Float64Array
+  readonly colour: string
+}
+
+/** Parts of the width at which a line may be named. */
+const NAME_AT = [0.93, 0.83, 0.73, 0.63, 0.43, 0.33, 0.23, 0.13, 0.05]
+const TOP_DB = -6
+
+/** For each line the place where it is farthest from the other lines, and from names that stand already; none where it would touch. */
+function namePlaces(lines: readonly Line[], y: (db: number) => number, apart: number): (Line & { readonly i: number })[] {
+  const placed: (Line & { readonly i: number })[] = []
+  for (const line of lines) {
+    let best = { i: -1, room: apart * 0.6 }
+    for (const part of NAME_AT) {
+      const i = Math.round(part * (line.db.length - 1))
+      const level = line.db[i] as number
+      if (!(level > LOWEST_DB + 4 && level < TOP_DB)) continue
+      const taken = placed.filter((other) => other.i === i).map((other) => Math.abs(y(other.db[i] as number) - y(level)))
+      if (taken.some((distance) => distance < 1.2 * apart)) continue
+      const room = Math.min(
+        ...lines
+          .filter((other) => other !== line && !Number.isNaN(other.db[i]))
+          .map((other) => Math.abs(y(other.db[i] as number) - y(level))),
+      )
+      if (room > best.room) best = { i, room }
+    }
+    if (best.i >= 0) placed.push({ ...line, i: best.i })
+  }
+  return placed
 }

@@ -3,7 +3,7 @@
 import { DASH_PX } from '../drawBand.ts'
 import { axis, evenSplits } from '../host/axes.ts'
 import { cornerText, middleText } from '../host/corner.ts'
-import { createPlot, type Layer, type PlotBox } from '../host/createPlot.ts'
+import { createPlot, type Layer } from '../host/createPlot.ts'
 import { plotCursor } from '../host/plotCursor.ts'
 import { plotTheme } from '../host/theme.ts'
 import { decimal } from '../words.ts'
@@ -21,7 +21,8 @@ import { soundingReach } from './soundingReach.ts'
 
 const DOT_PX = 2.25
 const REACH_PX = 7
-const AIR = 1.12
+/** The legend stands above the curve's end. */
+const AIR = 1.3
 
 export function mountTransfer({ element, shown, why, changed }: CurvePlace): CurveView {
   let cursor: number | null = null
@@ -173,7 +174,14 @@ export function mountTransfer({ element, shown, why, changed }: CurvePlace): Cur
     ctx.lineTo(box.left + box.width, y)
     ctx.stroke()
     ctx.setLineDash([])
-    rightText(ctx, box, now.boundBy === 'bend' ? 'bound h²/8 · max|f″|' : 'bound h/4 · corner', y, theme.second)
+    ctx.fillStyle = theme.second
+    ctx.textAlign = 'left'
+    ctx.textBaseline = 'top'
+    ctx.fillText(
+      now.boundBy === 'bend' ? 'bound h²/8 · max|f″|' : 'bound h/4 · change of slope',
+      box.left + 4 * box.ratio,
+      y + 3 * box.ratio,
+    )
   }
 
   return {
@@ -198,13 +206,6 @@ export function mountTransfer({ element, shown, why, changed }: CurvePlace): Cur
       plot.destroy()
     },
   }
-}
-
-function rightText(ctx: CanvasRenderingContext2D, box: PlotBox, text: string, y: number, colour: string): void {
-  ctx.fillStyle = colour
-  ctx.textAlign = 'right'
-  ctx.textBaseline = 'bottom'
-  ctx.fillText(text, box.left + box.width, y - 3 * box.ratio)
 }
 
 function nearest(x: Float64Array, y: Float64Array, at: number): number {

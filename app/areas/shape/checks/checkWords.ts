@@ -11,6 +11,7 @@ const FIGURES: Readonly<Record<string, (value: CheckValue) => string | null>> = 
   'loop.ring': (value) => (typeof value === 'number' ? duration(value) : null),
   'response.extremes': (value) => span(part(value, 'firstNotchHz'), hertz, 'Hz'),
   'sweep.range': (value) => span([part(value, 'smallestMs'), part(value, 'largestMs')], (ms) => milliseconds(ms).replace(' ms', ''), 'ms'),
+  'shaper.harmonics': strongestHarmonic,
 }
 
 /** "4.2 dB", "proven", "1.00 – 6.00 ms"; "none" where there is no figure. */
@@ -23,9 +24,14 @@ export function checkFigure({ id, status, value, unit }: Pick<Check, 'id' | 'sta
   return id === 'loop.ring' && status !== 'holds' ? 'endless' : 'none'
 }
 
+const WHAT: Readonly<Record<string, string>> = {
+  'response.extremes': 'first notch over the sweep',
+  'shaper.harmonics': 'strongest, of −6 dBFS',
+}
+
 /** "limit 3 s", "own limit 4 s" where it is the set's; "at least computed" where words are ranked; what the figure is, or nothing, where none is judged. */
 export function checkLimit({ id, limit, unit }: Pick<Check, 'id' | 'limit' | 'unit'>, own: number | null = null): string {
-  if (limit === null) return id === 'response.extremes' ? 'first notch over the sweep' : ''
+  if (limit === null) return WHAT[id] ?? ''
   if (typeof limit === 'string') return `at least ${limit}`
   // A limit that a check has no use for stays where the set has it.
   return `${own === limit ? 'own limit' : 'limit'} ${unit === 'ms' && limit < 0.1 ? milliseconds(limit) : withUnit(limit, unit)}`
@@ -44,4 +50,12 @@ function span(value: CheckValue, write: (figure: number) => string, unit: string
   if (!Array.isArray(value)) return null
   const ends = value.filter((end) => typeof end === 'number').map(write)
   return ends.length === 0 ? null : `${[...new Set(ends)].join(' – ')} ${unit}`
+}
+
+/** "−13.9 dB": of all shapers and harmonics. */
+function strongestHarmonic(value: CheckValue): string | null {
+  if (value === null || typeof value !== 'object') return null
+  const levels = Object.values(value).flatMap((shaper) => part(shaper as CheckValue, 'harmonicsDb') as readonly (number | null)[])
+  const strongest = levels.filter((level) => level !== null).reduce((most, level) => Math.max(most, level), Number.NEGATIVE_INFINITY)
+  return strongest > Number.NEGATIVE_INFINITY ? withUnit(Number(strongest.toFixed(1)), 'dB') : null
 }
