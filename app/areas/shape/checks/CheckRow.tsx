@@ -1,7 +1,6 @@
 // One check: sign, words, figure, limit; what would mend it; its working when open.
-import { type ComponentType, memo, Suspense } from 'react'
+import { memo, Suspense } from 'react'
 import type { CheckId } from '../../../../src/checks/limits.ts'
-import type { Check } from '../../../../src/checks/types.ts'
 import { fetched } from '../../../shell/fetched.tsx'
 import { useChecks } from '../../../state/checks.ts'
 import { STATUS_SIGN, STATUS_WORD } from '../../../state/verdict.ts'
@@ -11,10 +10,7 @@ import { Mends } from './Mends.tsx'
 const OpenedCheck = fetched(() => import('./OpenedCheck.tsx').then((part) => part.OpenedCheck))
 
 /** The panel's worst places, with the ways there: panel.box alone has them. */
-const PanelWorst = fetched<{ readonly check: Check }>(async () => {
-  const [load] = Object.values(import.meta.glob<{ PanelWorst: ComponentType<{ readonly check: Check }> }>('../panel/PanelWorst.tsx'))
-  return load ? (await load()).PanelWorst : () => null
-})
+const PanelWorst = fetched(() => import('../panel/PanelWorst.tsx').then((part) => part.PanelWorst))
 
 interface CheckRowProps {
   readonly id: CheckId
