@@ -1,6 +1,7 @@
 // Which checks exist, what each costs, and how they are run.
 import type { ParameterSet } from '../set/types.ts'
 import { levelLine } from './levelLine.ts'
+import { levelMono } from './levelMono.ts'
 import { levelPeak } from './levelPeak.ts'
 import { LIMITS } from './limits.ts'
 import { loopMargin } from './loopMargin.ts'
@@ -13,6 +14,8 @@ import { shaperHarmonics } from './shaperHarmonics.ts'
 import { sweepDetune } from './sweepDetune.ts'
 import { sweepFusion } from './sweepFusion.ts'
 import { sweepRange } from './sweepRange.ts'
+import { sweepSteps } from './sweepSteps.ts'
+import { toneDroop } from './toneDroop.ts'
 import type { Check, CheckEntry, CheckInput, CheckKind, CheckMaterial, CheckProgress, CheckSteps, Verdict } from './types.ts'
 
 const UNSORTED: readonly CheckEntry[] = [
@@ -24,8 +27,11 @@ const UNSORTED: readonly CheckEntry[] = [
   { id: 'sweep.range', kind: 'closed', run: sweepRange },
   { id: 'sweep.detune', kind: 'closed', run: sweepDetune },
   { id: 'sweep.fusion', kind: 'closed', run: sweepFusion },
+  { id: 'sweep.steps', kind: 'rendered', run: sweepSteps },
+  { id: 'tone.droop', kind: 'closed', run: toneDroop },
   { id: 'level.peak', kind: 'closed', run: levelPeak },
   { id: 'level.line', kind: 'closed', run: levelLine },
+  { id: 'level.mono', kind: 'closed', run: levelMono },
   { id: 'shaper.harmonics', kind: 'closed', run: shaperHarmonics },
   { id: 'shaper.alias', kind: 'closed', run: shaperAlias },
 ]
