@@ -1,5 +1,6 @@
 // Which checks exist, what each costs, and how they are run.
 import type { ParameterSet } from '../set/types.ts'
+import { levelDc } from './levelDc.ts'
 import { levelLine } from './levelLine.ts'
 import { levelMono } from './levelMono.ts'
 import { levelPeak } from './levelPeak.ts'
@@ -31,6 +32,7 @@ const UNSORTED: readonly CheckEntry[] = [
   { id: 'tone.droop', kind: 'closed', run: toneDroop },
   { id: 'level.peak', kind: 'closed', run: levelPeak },
   { id: 'level.line', kind: 'closed', run: levelLine },
+  { id: 'level.dc', kind: 'rendered', run: levelDc },
   { id: 'level.mono', kind: 'closed', run: levelMono },
   { id: 'shaper.harmonics', kind: 'closed', run: shaperHarmonics },
   { id: 'shaper.alias', kind: 'closed', run: shaperAlias },
