@@ -131,6 +131,7 @@ export function PointsPicture(props: PointsEditorProps) {
     else if (event.key === 'Escape' && (drag || keying.current)) drop()
     else return
     event.preventDefault()
+    setUnder(null)
   }
   const onKeyUp = (event: KeyboardEvent) => {
     if (ARROWS[event.key] && keying.current) settle()

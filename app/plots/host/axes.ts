@@ -37,10 +37,10 @@ export function axis({ scale, side, splits, label, colour = 'soft', grid = true,
 
 const ONE_TWO_FIVE = [1, 2, 5]
 
-/** 20, 50, 100 … of a logarithmic frequency axis, fewer where the axis is short. */
-export function frequencySplits(min: number, max: number, lengthPx: number): number[] {
+/** 20, 50, 100 … of a logarithmic frequency axis, fewer where the axis is short; `apartPx` is the room a label takes along it. */
+export function frequencySplits(min: number, max: number, lengthPx: number, apartPx = 36): number[] {
   const perDecade = lengthPx / Math.log10(max / min)
-  const steps = perDecade >= 110 ? ONE_TWO_FIVE : perDecade >= 60 ? [1, 3] : [1]
+  const steps = perDecade >= 3 * apartPx ? ONE_TWO_FIVE : perDecade >= 1.7 * apartPx ? [1, 3] : [1]
   const found: number[] = []
   for (let decade = 10 ** Math.floor(Math.log10(min)); decade <= max; decade *= 10)
     for (const step of steps) if (step * decade >= min && step * decade <= max) found.push(step * decade)

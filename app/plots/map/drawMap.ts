@@ -8,11 +8,10 @@ import type { PlotTheme } from '../host/theme.ts'
 import { hertz } from '../words.ts'
 
 const LINE_PX = 1.25
-/** A track closer than this to the one below of its kind is left out there. */
+/** Lines of a kind stand at least so far apart. */
 const APART_PX = 12
-/** Between two positions no notch moves by more: it jumped, or another one took its place. */
-const JUMP = 1.5
-/** Room that a number takes. */
+/** How many lines have numbers, and the room that a number takes. */
+const NUMBERED = 3
 const NUMBER_PX = { width: 44, height: 16 }
 
 export interface MapSurface {
@@ -38,74 +37,78 @@ export function drawTracks(surface: MapSurface, tracks: readonly Track[]): void 
   ctx.lineWidth = LINE_PX * box.ratio
   ctx.lineJoin = 'round'
   for (const kind of ['peak', 'notch'] as const) {
-    const own = tracks.filter((track) => track.kind === kind)
+    const lines = shownLines(
+      surface,
+      tracks.filter((track) => track.kind === kind),
+    )
     ctx.strokeStyle = kind === 'notch' ? theme.ink : theme.paper
     ctx.setLineDash(kind === 'notch' ? [] : DASH_PX.map((px) => px * box.ratio))
-    own.forEach((track, k) => {
-      ctx.stroke(trackPath(surface, track, own[k - 1]))
-    })
+    for (const line of lines) ctx.stroke(linePath(line))
+    if (kind === 'notch') drawNumbers(surface, lines.slice(0, NUMBERED))
   }
   ctx.restore()
-  drawNumbers(
-    surface,
-    tracks.filter(({ kind }) => kind === 'notch'),
-  )
 }
 
 const yOf = ({ box, rows }: MapSurface, hz: number) => box.top + box.height * (1 - partOf(rows, hz))
-const xOf = ({ box }: MapSurface, track: Track, j: number) => box.left + (box.width * j) / (track.frequencyHz.length - 1)
 
-function isShown(surface: MapSurface, track: Track, below: Track | undefined, j: number): boolean {
-  const hz = track.frequencyHz[j] as number
-  const other = below?.frequencyHz[j] ?? Number.NaN
-  return !Number.isNaN(hz) && !(yOf(surface, other) - yOf(surface, hz) < APART_PX * surface.box.ratio)
+/** A track on the canvas; NaN where it is left out. */
+interface Line {
+  readonly track: Track
+  readonly xs: readonly number[]
+  readonly ys: readonly number[]
 }
 
-function trackPath(surface: MapSurface, track: Track, below: Track | undefined): Path2D {
+/** Tracks of one kind, the lowest first: each is left out where it comes too close to one already there. */
+function shownLines(surface: MapSurface, tracks: readonly Track[]): Line[] {
+  const { box } = surface
+  const lines: Line[] = []
+  for (const track of tracks) {
+    const last = track.frequencyHz.length - 1
+    const isFree = (y: number, j: number) => lines.every(({ ys }) => !(Math.abs((ys[j] as number) - y) < APART_PX * box.ratio))
+    const ys = Array.from(track.frequencyHz, (hz, j) => {
+      const y = yOf(surface, hz)
+      return isFree(y, j) ? y : Number.NaN
+    })
+    lines.push({ track, ys, xs: ys.map((_, j) => box.left + (box.width * j) / last) })
+  }
+  return lines
+}
+
+function linePath({ xs, ys }: Line): Path2D {
   const path = new Path2D()
-  let before = Number.NaN
-  track.frequencyHz.forEach((hz, j) => {
-    if (!isShown(surface, track, below, j)) {
-      before = Number.NaN
-      return
-    }
-    const x = xOf(surface, track, j)
-    if (hz / before < JUMP && before / hz < JUMP) path.lineTo(x, yOf(surface, hz))
-    else path.moveTo(x, yOf(surface, hz))
-    before = hz
+  let joins = false
+  ys.forEach((y, j) => {
+    const isOn = !Number.isNaN(y)
+    if (isOn && joins) path.lineTo(xs[j] as number, y)
+    else if (isOn) path.moveTo(xs[j] as number, y)
+    joins = isOn
   })
   return path
 }
 
-/** Where a notch turns, in plain numbers, the lowest notches first. */
-function drawNumbers(surface: MapSurface, notches: readonly Track[]): void {
+/** Where notches turn, in plain numbers. */
+function drawNumbers(surface: MapSurface, lines: readonly Line[]): void {
   const { ctx, box, theme } = surface
   const { ratio } = box
-  ctx.save()
   ctx.font = canvasFont(theme, ratio)
   ctx.textAlign = 'center'
+  ctx.textBaseline = 'middle'
   ctx.strokeStyle = theme.paper
   ctx.fillStyle = theme.ink
   ctx.lineWidth = 3 * ratio
-  ctx.lineJoin = 'round'
+  const half = { x: (NUMBER_PX.width / 2) * ratio, y: (NUMBER_PX.height / 2) * ratio }
   const taken: { readonly x: number; readonly y: number }[] = []
-  const isFree = (x: number, y: number) =>
-    taken.every((other) => Math.abs(other.x - x) >= NUMBER_PX.width * ratio || Math.abs(other.y - y) >= NUMBER_PX.height * ratio)
-  notches.forEach((track, k) => {
+  for (const { track, xs, ys } of lines)
     for (const end of [lowestOf(track), highestOf(track)]) {
-      if (end === null || !isShown(surface, track, notches[k - 1], end.j)) continue
-      const half = (NUMBER_PX.width / 2) * ratio
-      const x = Math.max(box.left + half, Math.min(box.left + box.width - half, xOf(surface, track, end.j)))
-      const y = yOf(surface, end.hz) + (end.isLowest ? 1 : -1) * (0.5 * NUMBER_PX.height + 2) * ratio
-      if (!isFree(x, y) || y < box.top + 0.5 * NUMBER_PX.height * ratio || y > box.top + box.height - 0.5 * NUMBER_PX.height * ratio)
-        continue
+      if (end === null || Number.isNaN(ys[end.j])) continue
+      const x = Math.max(box.left + half.x, Math.min(box.left + box.width - half.x, xs[end.j] as number))
+      const y = (ys[end.j] as number) + (end.isLowest ? 1 : -1) * (half.y + 2 * ratio)
+      const isFree = taken.every((other) => Math.abs(other.x - x) >= 2 * half.x || Math.abs(other.y - y) >= 2 * half.y)
+      if (!isFree || y < box.top + half.y || y > box.top + box.height - half.y) continue
       taken.push({ x, y })
-      ctx.textBaseline = 'middle'
       ctx.strokeText(hertz(end.hz), x, y)
       ctx.fillText(hertz(end.hz), x, y)
     }
-  })
-  ctx.restore()
 }
 
 export interface TrackEnd {

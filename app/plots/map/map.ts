@@ -92,7 +92,7 @@ export function mountMap({ element, reading }: PlotPlace): MountedPlot {
   const shadeAxis = axis({
     scale: 'shade',
     side: 1,
-    splits: (min, max, length) => evenSplits(min, max, length, 30, DECIBEL_STEPS),
+    splits: (min, max, length) => evenSplits(min, max, length, 24, DECIBEL_STEPS),
     label: (db) => decimal(db, 0, true),
     grid: false,
     room: 2.4,
@@ -111,7 +111,13 @@ export function mountMap({ element, reading }: PlotPlace): MountedPlot {
         label: (part) => decimal(part, part % 0.5 === 0 ? (part % 1 === 0 ? 0 : 1) : 2),
         grid: false,
       }),
-      axis({ scale: 'hz', side: 3, splits: frequencySplits, label: frequencyLabel, grid: false }),
+      axis({
+        scale: 'hz',
+        side: 3,
+        splits: (min, max, length) => frequencySplits(min, max, length, 16),
+        label: frequencyLabel,
+        grid: false,
+      }),
       { ...shadeAxis, gap: SCALE_ROOM_PX, size: SCALE_ROOM_PX + (shadeAxis.size as number) },
     ],
     series: [

@@ -15,7 +15,7 @@ export function mapLegend({ meanFromHz, stands, drifts, smallSignal, tracks }: S
   if (stands) parts.push('the sweep stands still')
   else if (drifts) parts.push('drift stands as a sine')
   if (tracks.length > 0) parts.push('solid: notches · dashed: peaks')
-  if (meanFromHz !== null) parts.push(`above ${hertz(meanFromHz)} Hz mean power`)
+  if (meanFromHz !== null) parts.push(`above ${hertz(meanFromHz)} Hz: mean power of each cell`)
   return parts.join(' · ')
 }
 
@@ -46,15 +46,17 @@ export function restWords(map: SweepMap | null, position: number): string {
   return `${place} · ${hz === null ? 'no notch' : `first notch ${hertz(hz)} Hz`}`
 }
 
-/** The lowest notch track at a position, between the positions it was computed at; null where there is none. */
+/** The lowest notch at a position, between the positions its track was computed at; null where there is none. */
 export function firstNotchAt({ tracks }: SweepMap, position: number): number | null {
-  const track = tracks.find(({ kind }) => kind === 'notch')
-  if (!track) return null
-  const at = position * (track.frequencyHz.length - 1)
-  const j = Math.min(Math.floor(at), track.frequencyHz.length - 2)
-  const [before, after] = [track.frequencyHz[j] as number, track.frequencyHz[j + 1] as number]
-  const hz = before * (after / before) ** (at - j)
-  return Number.isNaN(hz) ? null : hz
+  let first: number | null = null
+  for (const { kind, frequencyHz } of tracks) {
+    const at = position * (frequencyHz.length - 1)
+    const j = Math.min(Math.floor(at), frequencyHz.length - 2)
+    const [before, after] = [frequencyHz[j] as number, frequencyHz[j + 1] as number]
+    const hz = before * (after / before) ** (at - j)
+    if (kind === 'notch' && hz < (first ?? Number.POSITIVE_INFINITY)) first = hz
+  }
+  return first
 }
 
 export function mapSummary(map: SweepMap): string {
@@ -83,7 +85,8 @@ export function mapTable(map: SweepMap): PlotTable {
       ? 'First notches and peaks; the sweep stands still'
       : 'First notches and peaks over the sweep, of the first channel',
     head: ['Track', 'Lowest', 'Level there', 'At position', 'Highest', 'Level there ', 'At position ', 'Present'],
-    rows: map.tracks.map((track) => {
+    rows: map.tracks.map((track, i) => {
+      const order = i + 1 - map.tracks.findIndex(({ kind }) => kind === track.kind)
       const end = (found: ReturnType<typeof lowestOf>) =>
         found
           ? [
@@ -94,7 +97,7 @@ export function mapTable(map: SweepMap): PlotTable {
           : ['', '', '']
       const present = track.frequencyHz.filter((hz) => !Number.isNaN(hz)).length / track.frequencyHz.length
       return [
-        `${names[track.kind]} ${track.order}`,
+        `${names[track.kind]} ${order}`,
         ...end(lowestOf(track)),
         ...end(highestOf(track)),
         present === 1 ? 'always' : `${decimal(100 * present, 0)} % of the cycle`,

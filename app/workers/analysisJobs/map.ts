@@ -4,7 +4,7 @@ import { type Frozen, freeze } from '../../../src/analysis/frozen.ts'
 import { type Transfer, transferAt, transferGrid, transferOf, transferStep } from '../../../src/analysis/transfer.ts'
 import type { ParameterSet } from '../../../src/set/types.ts'
 import { type Columns, frequencyAt } from '../../plots/columns.ts'
-import { type Track, trackAt, tracksOf } from './mapTracks.ts'
+import { type Track, trackPointsAt, tracksOf } from './mapTracks.ts'
 import { powerDb } from './powerDb.ts'
 import { sweepStands } from './reach.ts'
 
@@ -36,7 +36,7 @@ export interface SweepMap {
 /** Points on a tooth of a comb without a loop, and at most, where a loop sharpens its peaks. */
 const TOOTH_POINTS = 6
 const MOST_TOOTH_POINTS = 40
-/** A row takes no more points; one that would need them is measured over whole teeth in its middle. */
+/** A row takes no more points. */
 const MOST_POINTS = 80
 /** Positions at which notches and peaks are looked for. */
 const MOST_TRACK_POINTS = 192
@@ -58,7 +58,7 @@ export function* mapJob({ set, rows, positions }: MapRequest): Generator<undefin
   const trackPoints = []
   const last = stands ? 1 : Math.min(count, MOST_TRACK_POINTS)
   for (let j = 0; j <= last; j++) {
-    trackPoints.push(trackAt(freeze(set, stands ? set.sweep.startPhase : j / last), rows.lowHz, rows.highHz))
+    trackPoints.push(trackPointsAt(freeze(set, stands ? set.sweep.startPhase : j / last), rows.lowHz, rows.highHz))
     yield
   }
   return {
@@ -103,14 +103,20 @@ function fillColumn(frozen: Frozen, { edges, middles, channels, at }: Column): n
       continue
     }
     meanFrom = Math.min(meanFrom, r)
-    const span = needed <= MOST_POINTS ? high - low : Math.max(1, Math.floor(MOST_POINTS / perTooth)) * toothHz
-    const points = Math.min(needed, Math.round((span * perTooth) / toothHz), MOST_POINTS)
+    const span = measured(high - low, toothHz, perTooth)
+    const points = Math.min(MOST_POINTS, Math.ceil((span * perTooth) / toothHz))
     meanPower(transfer, { low: perHz * ((low + high - span) / 2), step: (perHz * span) / points, points }, out, power)
     channels.forEach((cells, c) => {
       cells[at + r] = powerDb(Math.sqrt(power[c] as number), 0)
     })
   }
   return meanFrom
+}
+
+/** The width around a row's middle over which power is averaged, Hz: the row's own, in whole teeth where it is wider than one, as many as points allow. */
+function measured(rowHz: number, toothHz: number, perTooth: number): number {
+  if (rowHz < toothHz) return rowHz
+  return Math.min(Math.round(rowHz / toothHz), Math.floor(MOST_POINTS / perTooth)) * toothHz
 }
 
 /** Peaks of a loop are about (1 − g)/π of a tooth wide. */

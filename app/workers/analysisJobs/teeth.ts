@@ -43,12 +43,14 @@ export function marksOf(extremes: readonly Extreme[], columns: Columns): Mark[] 
   return marks
 }
 
-/** An extreme stands out from its neighbours by 3 dB. */
-export function standsOut(extremes: readonly Extreme[], i: number): boolean {
+const standsOut = (extremes: readonly Extreme[], i: number): boolean => prominence(extremes, i) >= PROMINENT_DB
+
+/** By how many dB an extreme stands out from its neighbours; 0 of one that has none. */
+export function prominence(extremes: readonly Extreme[], i: number): number {
   const own = extremes[i]
-  if (!own) return false
   const sides = [extremes[i - 1], extremes[i + 1]].filter((other) => other !== undefined)
-  return sides.length > 0 && sides.every((other) => Math.abs(other.db - own.db) >= PROMINENT_DB)
+  if (!own || sides.length === 0) return 0
+  return Math.min(...sides.map((other) => Math.abs(other.db - own.db)))
 }
 
 /** Spacing of even notches, Hz: their mean distance when none of the first departs from it by over 2 %; null otherwise. */

@@ -1,10 +1,8 @@
 // Base, depth and rate lead; the brief's own quantities (first notch, first peak, width in cents) stand with them.
-import { SWEEP_POINTS } from '../../../../src/set/drawnPoints.ts'
-import { PointsField } from '../../../fields/PointsField.tsx'
 import { useCurrent } from '../../../state/current.ts'
+import { DrawnSweep } from './DrawnSweep.tsx'
 import { ExtremeField } from './ExtremeField.tsx'
 import { SetField } from './SetField.tsx'
-import { applyPoints } from './ShaperFields.tsx'
 import { TempoField } from './TempoField.tsx'
 import { WidthField } from './WidthField.tsx'
 
@@ -31,12 +29,5 @@ export function LineFields() {
       <SetField path="sweep.updateEvery" lines={1} />
       <SetField path="sweep.between" />
     </>
-  )
-}
-
-function DrawnSweep() {
-  const points = useCurrent((s) => s.set.sweep.points)
-  return (
-    <PointsField label="Points" rule={SWEEP_POINTS} points={points} apply={(next) => applyPoints('sweep.points', 'sweep.shape', next)} />
   )
 }
