@@ -71,6 +71,19 @@ describe('quantities as typed', () => {
     ['1/8 @ 96 bpm', 'ms', 312.5],
     ['1/8 @ 96', 'Hz', 3.2],
     ['1/1 @ 96', 'Hz', 0.4],
+    // FACTS 11, derived: f = bpm/60/beats; 120 beats a minute: 1 beat 2 Hz, 4 beats (a bar of 4/4) 0.5 Hz, 8 beats 0.25 Hz.
+    ['1 beat @ 120', 'Hz', 2],
+    ['4 beats @ 120', 'Hz', 0.5],
+    ['1 bar @ 120', 'Hz', 0.5],
+    ['2 bars @ 120', 'Hz', 0.25],
+    ['8 Beats @ 120 bpm', 'Hz', 0.25],
+    ['1/2 beat @ 120', 'Hz', 4],
+    ['1,5 beats @ 120', 'Hz', 4 / 3],
+    // Quarter 60000/bpm ms, eighth half of it, dotted × 1.5, triplet × 2/3.
+    ['1/4 @ 100', 'ms', 600],
+    ['1/8 dotted @ 100', 'ms', 450],
+    ['1/8 triplet @ 100', 'ms', 200],
+    ['1 beat @ 100', 'ms', 600],
     // ISO 16: A4 is 440 Hz. Others: equal temperament, as printed in tables of note frequencies to two decimals.
     ['A4', 'Hz', 440],
     ['A3', 'Hz', 220],
@@ -92,6 +105,8 @@ describe('quantities as typed', () => {
   it('takes the tempo of the page when the beat names none', () => {
     expect(value('1/4', 'ms', { tempoBpm: 60 })).toBe(1000)
     expect(value('1/4 @ 120', 'ms', { tempoBpm: 60 })).toBe(500)
+    expect(value('2 bars', 'Hz', { tempoBpm: 120 })).toBe(0.25)
+    expect(value('1/8 dotted', 'ms', { tempoBpm: 100 })).toBe(450)
   })
 
   it('reads samples as a time when the rate is known', () => {
@@ -111,6 +126,10 @@ describe('quantities as typed', () => {
     ['1/8', 'ms', 'needs a tempo in beats a minute; write for example 1/8 @ 96'],
     ['1/8 @ fast', 'ms', 'has no tempo from 1 to 1000'],
     ['1/0 @ 96', 'ms', 'is no part of a whole note'],
+    ['0 beats @ 96', 'Hz', 'is no part of a whole note'],
+    ['2 bars', 'Hz', 'needs a tempo in beats a minute; write for example 2 bars @ 96'],
+    ['many beats', 'ms', 'is no number'],
+    ['1 beat', 'dB', 'is a part of a whole note, where a level in dB is wanted'],
     ['3 mhz', 'Hz', 'write MHz for millions, mHz for thousandths'],
     ['64k', 'B', 'write KiB or MiB for powers of 1024'],
     ['1,000', 'Hz', 'could mean 1.000 or 1000'],

@@ -3,10 +3,10 @@ import { highPassHalfPowerHz, lowPassHalfPowerHz } from '../../../../src/dsp/fil
 import { delayRange, voiceOffsetMs } from '../../../../src/set/delayRange.ts'
 import { getAt } from '../../../../src/set/path.ts'
 import type { ParameterSet } from '../../../../src/set/types.ts'
-import { usualRange } from '../../../../src/set/usualRanges.ts'
 import { showIn, showNumber } from '../../../fields/quantity.ts'
 import { detuneOf } from './detuneOf.ts'
 import { ringNote } from './ringNote.ts'
+import { shortNumber, unusualNote, usualWords } from './usualNote.ts'
 
 export interface NoteContext {
   readonly tempoBpm: number
@@ -14,24 +14,24 @@ export interface NoteContext {
 
 type Note = (set: ParameterSet, context: NoteContext) => readonly string[]
 
-/** Lines for the field at a path; none where nothing follows. */
+/** Lines for the field at a path; none where nothing follows. Where its value is unusual for the intent, the last says so. */
 export function fieldNotes(path: string, set: ParameterSet, context: NoteContext): readonly string[] {
-  return NOTES[path]?.(set, context) ?? []
+  const notes = NOTES[path]?.(set, context) ?? []
+  const unusual = unusualNote(path, set)
+  return unusual === null ? notes : [...notes, unusual]
 }
 
-const usual = (path: string, unit: string): Note => {
+const usual = (path: string): Note => {
   return (set) => {
-    const range = usualRange(set.intent, path)
-    if (!range) return []
-    const span = range.low === range.high ? plain(range.low, unit) : `${shortNumber(range.low)} to ${plain(range.high, unit)}`
-    return [`usual for a ${set.intent} ${span}`]
+    const words = unusualNote(path, set) === null ? usualWords(path, set) : null
+    return words === null ? [] : [words]
   }
 }
 
 const NOTES: Readonly<Record<string, Note>> = {
   sampleRate: ({ sampleRate }) => [`a sample every ${showIn(1e6 / sampleRate, 'µs')}`],
   'input.gainDb': gainNote('input.gainDb'),
-  'line.baseMs': usual('line.baseMs', 'ms'),
+  'line.baseMs': usual('line.baseMs'),
   'sweep.depthMs': (set) => [sweptRange(set)],
   'sweep.depthOctaves': (set) => [sweptRange(set)],
   'sweep.rateHz': ({ sweep }, { tempoBpm }) => {
@@ -59,7 +59,7 @@ const NOTES: Readonly<Record<string, Note>> = {
     const at = (v: number) => roundedMs(set.line.baseMs + voiceOffsetMs(set.voices, v))
     return [`middles from ${at(0)} to ${at(count - 1)} ms`]
   },
-  'loop.feedback': (set) => [ringNote(set), ...usual('loop.feedback', '')(set, { tempoBpm: 0 })],
+  'loop.feedback': (set) => [ringNote(set), ...usual('loop.feedback')(set, { tempoBpm: 0 })],
   'loop.dampingHz': lowPassNote('loop.dampingHz'),
   'loop.lowCutHz': highPassNote('loop.lowCutHz'),
   'loop.crossFeed': ({ loop }) => [`${percent(loop.crossFeed)} of each loop goes to the other line`],
@@ -78,8 +78,6 @@ const DEGREES = { kind: 'number', unit: '°' } as const
 const number = (value: number, unit: string) => showNumber(value, { kind: 'number', unit })
 /** Two decimals from a tenth of a millisecond up, four below. */
 const roundedMs = (ms: number) => number(Number(ms.toFixed(Math.abs(ms) < 0.1 ? 4 : 2)), 'ms')
-const plain = (value: number, unit: string) => (unit === '' ? shortNumber(value) : `${shortNumber(value)} ${unit}`)
-const shortNumber = (value: number) => String(Number(value.toFixed(2))).replace('-', '−')
 const percent = (share: number) => `${shortNumber(Number((100 * share).toPrecision(2)))} %`
 
 function gainNote(path: string): Note {
@@ -90,7 +88,7 @@ function linearNote(path: string): Note {
   return (set) => {
     const value = getAt(set, path) as number
     const level = value === 0 ? 'silent' : `${showIn(20 * Math.log10(Math.abs(value)), 'dB')}${value < 0 ? ', inverted' : ''}`
-    return [[level, ...usual(path, '')(set, { tempoBpm: 0 })].join(' · ')]
+    return [[level, ...usual(path)(set, { tempoBpm: 0 })].join(' · ')]
   }
 }
 

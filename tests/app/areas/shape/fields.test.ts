@@ -21,7 +21,7 @@ describe('what follows from a value', () => {
   })
 
   it('a base delay: what is usual for the intent', () => {
-    expect(notes('line.baseMs', { ...base, intent: 'flanger' })).toEqual(['usual for a flanger 0 to 10 ms'])
+    expect(notes('line.baseMs', withAt({ ...base, intent: 'flanger' }, 'line.baseMs', 3.5))).toEqual(['usual for a flanger 0 to 10 ms'])
     expect(notes('line.baseMs', { ...base, intent: 'other' })).toEqual([])
   })
 
@@ -76,6 +76,39 @@ describe('width in cents', () => {
   })
 })
 
+describe('a value outside its usual range', () => {
+  const flanger = { ...base, intent: 'flanger' } as const
+
+  it('has a note with the range, where it is from and how sure that is; a usual one has not', () => {
+    expect(notes('line.baseMs', withAt(flanger, 'line.baseMs', 12))).toEqual([
+      '· unusual: flanger 0 to 10 ms (Dattorro 1997, Table 7; read in the paper)',
+    ])
+    expect(notes('sweep.depthMs', withAt(flanger, 'sweep.depthMs', 2.5)).at(-1)).toBe(
+      '· unusual: flanger 0 to 2 ms (DAFX, chapter "Delays"; second-hand)',
+    )
+    expect(notes('sweep.rateHz', withAt(flanger, 'sweep.rateHz', 8)).at(-1)).toBe(
+      '· unusual: flanger 0.1 to 5 Hz (DAFX, chapter "Delays"; transcriptions disagree)',
+    )
+    expect(notes('sweep.rateHz', withAt(flanger, 'sweep.rateHz', 0.25))).toHaveLength(1)
+    expect(notes('line.baseMs', withAt({ ...base, intent: 'comb' }, 'line.baseMs', 25))).toEqual([
+      '· unusual: comb 0 to 20 ms (DAFX 2002, Table 3.1; from memory)',
+    ])
+    expect(notes('sweep.stereoPhase', withAt({ ...flanger, layout: 'stereo' }, 'sweep.stereoPhase', 90)).at(-1)).toBe(
+      '· unusual: flanger 0° (Dattorro 1997, section 6; read in the paper)',
+    )
+    expect(notes('mix.wet', withAt({ ...base, intent: 'vibrato' }, 'mix.dry', 0.5))).toHaveLength(2)
+  })
+
+  it('is not unusual by rounding: 0.7 is 0.7071', () => {
+    expect(notes('mix.dry', withAt(flanger, 'mix.dry', 0.7))[0]).toMatch(/^−3.10.dB · usual for a flanger 0.71$/)
+    expect(notes('mix.dry', withAt(flanger, 'mix.dry', 0.6)).at(-1)).toContain('unusual')
+  })
+
+  it('says nothing of a field without effect', () => {
+    expect(notes('sweep.stereoPhase', withAt({ ...flanger, layout: 'mono' }, 'sweep.stereoPhase', 90))).toHaveLength(1)
+  })
+})
+
 describe('usual ranges', () => {
   it.each([
     // Source: J. Dattorro, "Effect Design, Part 2", Table 7 (FACTS 2a, read).
@@ -85,6 +118,32 @@ describe('usual ranges', () => {
     ['doubler', 10, 100],
   ] as const)('of a %s’s delay are %d to %d ms', (intent, low, high) => {
     expect(usualRange(intent, 'line.baseMs')).toMatchObject({ low, high, mark: 'read' })
+  })
+
+  it.each([
+    // Source: the same, Table 6, read; its feedback with the other sign (FACTS 2a, sign trap).
+    ['vibrato', [0, 0], [1, 1], [0, 0]],
+    ['flanger', [0.7071, 0.7071], [0.7071, 0.7071], [0, 0.7071]],
+    ['chorus', [0.7071, 1], [0.7071, 1], [-0.7071, 0]],
+    ['doubler', [0.7071, 0.7071], [0.7071, 0.7071], [0, 0]],
+  ] as const)('of a %s’s gains are those of the knob settings', (intent, dry, wet, feedback) => {
+    const range = (path: string) => [usualRange(intent, path)?.low, usualRange(intent, path)?.high]
+    expect([range('mix.dry'), range('mix.wet'), range('loop.feedback')]).toEqual([dry, wet, feedback])
+  })
+
+  it.each([
+    // Source: a university laboratory's table after DAFX, second-hand; where it and the book as remembered differ, unsettled (FACTS 2b).
+    ['vibrato', 'sweep.depthMs', 0, 3, 'second-hand'],
+    ['vibrato', 'sweep.rateHz', 0.1, 5, 'second-hand'],
+    ['flanger', 'sweep.depthMs', 0, 2, 'second-hand'],
+    ['flanger', 'sweep.rateHz', 0.1, 5, 'unsettled'],
+    ['chorus', 'sweep.depthMs', 1, 30, 'second-hand'],
+    ['doubler', 'sweep.depthMs', 1, 100, 'unsettled'],
+    // DAFX Table 3.1, from memory: a resonator, 0 to 20 ms, no modulation.
+    ['comb', 'line.baseMs', 0, 20, 'memory'],
+    ['comb', 'sweep.rateHz', 0, 0, 'memory'],
+  ] as const)('of a %s’s %s are %d to %d, %s', (intent, path, low, high, mark) => {
+    expect(usualRange(intent, path)).toMatchObject({ low, high, mark })
   })
 
   it('every range names its source, and runs upwards', () => {
