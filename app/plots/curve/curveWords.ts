@@ -100,11 +100,11 @@ export function driveIndex({ drives }: AgainstDrive, part: number): number {
   return Math.max(0, Math.min(drives.length - 1, Math.round(part * (drives.length - 1))))
 }
 
-const MOST_NAMED = 2
+const MOST_NAMED = 1
 /** Quieter harmonics are not named. */
 const NAMED_DB = -120
 
-/** "drive 4.00 · 3: −13.9, 2: −20.6 dB · THD 23 % · DC −18.4 dBFS · folds −23.8 dB": the strongest harmonics lead. */
+/** "drive 4.00 · 3: −13.9 dB · THD 23 % · DC −18.4 dBFS · folds −23.8 dB": the strongest harmonic leads. */
 export function driveWords(against: AgainstDrive, i: number): string {
   const levels = against.harmonics
     .map((db, k) => ({ n: k + 2, db: db[i] as number }))
