@@ -105,9 +105,9 @@ export function follow(client: AnalysisClient): () => void {
       running = null
       show({ working: null, problem })
     },
-    ({ checks, label, done, total, part }, { set }) => {
+    ({ checks, label, total, part }, { set }) => {
       judged = withJudged(judged, checks, set)
-      show({ working: performance.now() - beganMs < SHOW_AFTER_MS ? null : { label, done, total, part } })
+      show({ working: performance.now() - beganMs < SHOW_AFTER_MS ? null : { label, done: checks.length, total, part } })
     },
   )
 

@@ -10,10 +10,10 @@ export interface ChecksRequest {
 
 export interface ChecksReply {
   readonly checks: readonly Check[]
-  /** The others, which take rendering. */
+  /** The others, which take longer. */
   readonly slow: readonly CheckId[]
 }
 
-const SLOW: readonly CheckId[] = CHECKS.filter(({ kind }) => kind === 'rendered').map(({ id }) => id)
+const SLOW: readonly CheckId[] = [...CHECKS.filter(({ kind }) => kind === 'rendered').map(({ id }) => id), 'panel.box']
 
 export const checksJob = ({ set }: ChecksRequest): ChecksReply => ({ checks: runChecks(set, { kinds: ['closed'] }), slow: SLOW })

@@ -58,10 +58,8 @@ function fakeClient() {
 const SLOW: readonly CheckId[] = ['sweep.steps', 'level.dc']
 const closedReply = (status: Status) => ({ checks: [check('loop.margin', status)], slow: SLOW })
 const longReply = (steps: Status, dc: Status = 'holds') => ({ checks: [check('sweep.steps', steps), check('level.dc', dc)] })
-const progress = (done: number, part: number, checks: readonly Check[] = []) => ({
-  id: 'sweep.steps',
+const progress = (part: number, checks: readonly Check[] = []) => ({
   label: 'Stepping',
-  done,
   total: 2,
   part,
   checks,
@@ -154,13 +152,13 @@ describe('following the checks', () => {
     fake.closed().reply(closedReply('holds'))
     fake.long().reply(longReply('holds'))
     commit('change', named('second'))
-    fake.long().progress(progress(0, 0.1))
+    fake.long().progress(progress(0.1))
     expect(useChecks.getState()).toMatchObject({ working: null, before: [] })
     vi.advanceTimersByTime(400)
-    fake.long().progress(progress(0, 0.5))
+    fake.long().progress(progress(0.5))
     expect(useChecks.getState()).toMatchObject({ working: null, before: SLOW })
     vi.advanceTimersByTime(700)
-    fake.long().progress(progress(1, 0.25, [check('sweep.steps', 'fails')]))
+    fake.long().progress(progress(0.25, [check('sweep.steps', 'fails')]))
     expect(useChecks.getState().working).toEqual({ label: 'Stepping', done: 1, total: 2, part: 0.25 })
     expect(useChecks.getState().before).toEqual(['level.dc'])
     expect(useVerdict.getState()).toMatchObject({ fails: 1, pending: 1, settled: false })

@@ -138,7 +138,7 @@ describe('a feed of the analysis client', () => {
 })
 
 describe('a feed for what takes long', () => {
-  const step = { id: 'sweep.steps', label: 'Stepping', done: 0, total: 1, part: 0.5, checks: [] }
+  const step = { label: 'Stepping', total: 1, part: 0.5, checks: [] }
 
   it('hands over how far it is and still waits for the answer', () => {
     const { client: c, made } = client()
