@@ -15,7 +15,9 @@ export function shadeLevels({ channels }: Pick<SweepMap, 'channels'>): Levels {
   // What rounding adds to a level does not ask for another step.
   const maxDb = Math.ceil(high / STEP_DB - 1e-3) * STEP_DB
   const minDb = Math.max(Math.floor(low / STEP_DB + 1e-3) * STEP_DB, maxDb - SPAN_DB)
-  return { minDb: Math.min(minDb, maxDb - LEAST_DB), maxDb }
+  // A level response stands in the middle of the shades.
+  const missing = Math.ceil(Math.max(0, LEAST_DB - maxDb + minDb) / (2 * STEP_DB)) * STEP_DB
+  return { minDb: Math.min(minDb, maxDb + missing - LEAST_DB), maxDb: maxDb + missing }
 }
 
 /** Least and most of all cells, dB. */

@@ -56,7 +56,7 @@ describe('drawing points', () => {
   // Oracle: 3 + 4 s ms = one sample at 48 kHz for s = (1/48 − 3)/4.
   it('stops where the delay would pass the write point, says why, and never leaves an invalid set', () => {
     const why = tryTo(-1)
-    expect(why).toMatch(/^Held: the delay would come to −1.00 ms; a voice reads no closer than 0.021 ms$/)
+    expect(why).toMatch(/^Held: the delay would come to −1.00\sms; a voice reads no closer than 0.021\sms$/)
     expect(setProblems(currentSet())).toEqual([])
     expect(lowest()).toBeGreaterThanOrEqual((1 / 48 - 3) / 4 - 1e-9)
     expect(lowest()).toBeLessThan(-0.744)
