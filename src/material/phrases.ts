@@ -3,7 +3,7 @@ import { setLevel } from './circular.ts'
 import { drumBar } from './drums.ts'
 import { PHRASES, type PhraseId } from './phraseList.ts'
 import { heldChord, impulses, pinkNoise } from './steady.ts'
-import { bassLine, pluckedChords } from './stringPhrases.ts'
+import { bassLine, pluckedChords, pluckedChordsSteps } from './stringPhrases.ts'
 import { DEFAULT_TONE, type ToneOptions, tone } from './tone.ts'
 
 export const MIN_PHRASE_RATE = 8000
@@ -17,9 +17,7 @@ const LEVEL = { targetRms: 0.1, maxPeak: 0.495 }
  * its beginning. 4 to 8 s; −20 dBFS rms or less where the peak would pass −6 dBFS (impulses: 0.5; tone: as `options` say). Takes 10 to 300 ms at 48 kHz. RangeError outside the ranges.
  */
 export function phrase(id: PhraseId, sampleRate: number, options: { readonly tone?: ToneOptions } = {}): Float64Array {
-  if (!(sampleRate >= MIN_PHRASE_RATE && sampleRate <= MAX_PHRASE_RATE)) {
-    throw new RangeError(`sampleRate must be ${MIN_PHRASE_RATE} to ${MAX_PHRASE_RATE} Hz, got ${sampleRate}`)
-  }
+  checkRate(sampleRate)
   switch (id) {
     case 'pluckedChords':
       return setLevel(pluckedChords(sampleRate), LEVEL)
@@ -37,5 +35,17 @@ export function phrase(id: PhraseId, sampleRate: number, options: { readonly ton
       return tone(sampleRate, options.tone ?? DEFAULT_TONE)
     default:
       throw new RangeError(`phrase must be one of ${PHRASES.map((p) => p.id).join(', ')}, got ${id}`)
+  }
+}
+
+/** The plucked chords, the same samples as the phrase, made in steps of less than a millisecond; yields the part done. RangeError for a rate outside. */
+export function* pluckedChordsPhraseSteps(sampleRate: number): Generator<number, Float64Array> {
+  checkRate(sampleRate)
+  return setLevel(yield* pluckedChordsSteps(sampleRate), LEVEL)
+}
+
+function checkRate(sampleRate: number): void {
+  if (!(sampleRate >= MIN_PHRASE_RATE && sampleRate <= MAX_PHRASE_RATE)) {
+    throw new RangeError(`sampleRate must be ${MIN_PHRASE_RATE} to ${MAX_PHRASE_RATE} Hz, got ${sampleRate}`)
   }
 }

@@ -31,12 +31,19 @@ const INAUDIBLE = 3e-5
 
 /** Plucks the string at frame `start` of the circle, at `sampleRate` Hz. */
 export function pluck(circle: Float64Array, sampleRate: number, start: number, string: PluckedString): void {
+  const partials = pluckSteps(circle, sampleRate, start, string)
+  while (!partials.next().done);
+}
+
+/** The same partial by partial: yields after each. */
+export function* pluckSteps(circle: Float64Array, sampleRate: number, start: number, string: PluckedString): Generator<void, void> {
   const top = Math.min(TOP_HZ, TOP_OF_RATE * sampleRate)
   for (let k = 1; ; k++) {
     const hz = k * string.hz * Math.sqrt(1 + string.stiffness * k * k)
     if (hz > top) return
     const amplitude = (string.amplitude * Math.sin(Math.PI * k * string.pluckAt)) / k
     addPartial(circle, { sampleRate, start, hz, amplitude, loss: string.loss + string.highLoss * hz * hz, heldSeconds: string.heldSeconds })
+    yield
   }
 }
 

@@ -1,6 +1,6 @@
 // Two phrases on plucked strings: strummed chords and a bass line. The progressions are our own.
 // Keys count half steps, 69 is A4 = 440 Hz.
-import { type PluckedString, pluck } from './string.ts'
+import { type PluckedString, pluck, pluckSteps } from './string.ts'
 
 const keyHz = (key: number) => 440 * 2 ** ((key - 69) / 12)
 
@@ -18,27 +18,40 @@ const CHORD_STRING: Omit<PluckedString, 'hz' | 'heldSeconds'> = { amplitude: 1, 
 
 /** Four strummed chords of 1.5 s, each answered by an upstroke of its three highest strings: attacks, decays and a wide spectrum. 6 s. */
 export function pluckedChords(sampleRate: number): Float64Array {
+  const steps = pluckedChordsSteps(sampleRate)
+  let step = steps.next()
+  while (!step.done) step = steps.next()
+  return step.value
+}
+
+/** The same partial by partial; yields the part done, 0 to 1. */
+export function* pluckedChordsSteps(sampleRate: number): Generator<number, Float64Array> {
   const circle = new Float64Array(Math.round(CHORDS.length * CHORD_SECONDS * sampleRate))
-  CHORDS.forEach((chord, c) => {
-    const begin = c * CHORD_SECONDS
-    chord.forEach((key, s) => {
-      const at = begin + s * STRUM_SECONDS
-      const again = begin + UPSTROKE_AT + (chord.length - 1 - s) * STRUM_SECONDS
-      // A string sounds until it is plucked again or the hand moves on.
-      const high = s >= 2
-      strike(circle, sampleRate, at, { ...CHORD_STRING, hz: keyHz(key), heldSeconds: (high ? again : begin + CHORD_SECONDS) - at })
-      if (high) {
-        strike(circle, sampleRate, again, {
-          ...CHORD_STRING,
-          amplitude: 0.6,
-          pluckAt: 0.2,
-          hz: keyHz(key),
-          heldSeconds: begin + CHORD_SECONDS - again,
-        })
-      }
-    })
-  })
+  const strings = CHORDS.flatMap((chord, c) => strummed(chord, c * CHORD_SECONDS))
+  for (let i = 0; i < strings.length; i++) {
+    const { at, string } = strings[i] as Struck
+    for (const _ of pluckSteps(circle, sampleRate, Math.round(at * sampleRate), string)) yield i / strings.length
+  }
   return circle
+}
+
+interface Struck {
+  readonly at: number
+  readonly string: PluckedString
+}
+
+/** The strings of one chord in the order they are struck, from `begin` s. */
+function strummed(chord: readonly number[], begin: number): Struck[] {
+  return chord.flatMap((key, s) => {
+    const at = begin + s * STRUM_SECONDS
+    const again = begin + UPSTROKE_AT + (chord.length - 1 - s) * STRUM_SECONDS
+    // A string sounds until it is plucked again or the hand moves on.
+    const high = s >= 2
+    const down = { at, string: { ...CHORD_STRING, hz: keyHz(key), heldSeconds: (high ? again : begin + CHORD_SECONDS) - at } }
+    if (!high) return [down]
+    const heldSeconds = begin + CHORD_SECONDS - again
+    return [down, { at: again, string: { ...CHORD_STRING, amplitude: 0.6, pluckAt: 0.2, hz: keyHz(key), heldSeconds } }]
+  })
 }
 
 const EIGHTH_SECONDS = 0.3
@@ -57,5 +70,5 @@ export function bassLine(sampleRate: number): Float64Array {
 }
 
 function strike(circle: Float64Array, sampleRate: number, seconds: number, string: PluckedString): void {
-  pluck(circle, sampleRate, Math.round(seconds * sampleRate), string)
+  for (const _ of pluckSteps(circle, sampleRate, Math.round(seconds * sampleRate), string));
 }

@@ -1,6 +1,6 @@
 // Loudness by ITU-R BS.1770-5 Annex 1: L = −0.691 + 10 log10 Σ G_i z_i, z_i the mean square of K-weighted channel i; momentary and
 // short-term windows by EBU Tech 3341. Sources as in FACTS 9. Running measure for the audio thread: loudnessMeter.ts.
-import { createKFilter, weightedEnergy } from './kWeighting.ts'
+import { createKFilter, type KFilter, weightedEnergy } from './kWeighting.ts'
 
 const OFFSET_DB = -0.691
 const ABSOLUTE_GATE_LUFS = -70
@@ -32,12 +32,24 @@ export function meanSquareToLufs(z: number): number {
  * length, full scale 1; sampleRate in Hz, 4000 to 768000. A signal under 400 ms is one block of its own length. −Infinity when nothing passes the gate.
  */
 export function integratedLoudness(channels: Channels, sampleRate: number, weights = channelWeights(channels.length)): number {
+  const steps = integratedLoudnessSteps(channels, sampleRate, weights)
+  let step = steps.next()
+  while (!step.done) step = steps.next()
+  return step.value
+}
+
+/** The same in steps of 100 ms of signal; yields the part done, 0 to 1. */
+export function* integratedLoudnessSteps(
+  channels: Channels,
+  sampleRate: number,
+  weights = channelWeights(channels.length),
+): Generator<number, number> {
   const frames = channels[0]?.length ?? 0
-  const blocks = windowMeanSquares(channels, sampleRate, weights, GATING_HOPS)
-  const z =
-    blocks.length > 0
-      ? blocks
-      : Float64Array.of(hopEnergies(channels, sampleRate, weights, [0, frames])[0] as number).map((e) => e / frames)
+  const whole = hopEdges(frames, sampleRate)
+  const short = whole.length <= GATING_HOPS
+  const edges = short ? [0, frames] : whole
+  const energies = yield* hopEnergySteps(channels, sampleRate, weights, edges)
+  const z = short ? energies.map((e) => e / frames) : meanSquares(energies, edges, GATING_HOPS)
   const audible = z.filter((v) => meanSquareToLufs(v) > ABSOLUTE_GATE_LUFS)
   const gate = meanSquareToLufs(mean(audible)) + RELATIVE_GATE_LU
   return meanSquareToLufs(mean(audible.filter((v) => meanSquareToLufs(v) > gate)))
@@ -55,10 +67,21 @@ export function shortTermLoudness(channels: Channels, sampleRate: number, weight
 
 /** Σ G_i z_i of every window of `hops` × 100 ms, one each 100 ms. Edges fall on whole samples, so a window's own length divides. */
 function windowMeanSquares(channels: Channels, sampleRate: number, weights: readonly number[], hops: number): Float64Array {
-  const frames = channels[0]?.length ?? 0
+  const edges = hopEdges(channels[0]?.length ?? 0, sampleRate)
+  const steps = hopEnergySteps(channels, sampleRate, weights, edges)
+  let step = steps.next()
+  while (!step.done) step = steps.next()
+  return meanSquares(step.value, edges, hops)
+}
+
+/** Ends of the hops of 100 ms that fit, from 0. */
+function hopEdges(frames: number, sampleRate: number): number[] {
   const edges: number[] = []
   for (let j = 0, edge = 0; edge <= frames; edge = Math.round((++j * sampleRate) / HOPS_PER_SECOND)) edges.push(edge)
-  const energies = hopEnergies(channels, sampleRate, weights, edges)
+  return edges
+}
+
+function meanSquares(energies: Float64Array, edges: readonly number[], hops: number): Float64Array {
   const out = new Float64Array(Math.max(0, energies.length - hops + 1))
   for (let j = 0; j < out.length; j++) {
     let sum = 0
@@ -69,15 +92,22 @@ function windowMeanSquares(channels: Channels, sampleRate: number, weights: read
 }
 
 /** Weighted energy between neighbouring edges, over all channels. */
-function hopEnergies(channels: Channels, sampleRate: number, weights: readonly number[], edges: readonly number[]): Float64Array {
+function* hopEnergySteps(
+  channels: Channels,
+  sampleRate: number,
+  weights: readonly number[],
+  edges: readonly number[],
+): Generator<number, Float64Array> {
   checkChannels(channels, weights)
   const energies = new Float64Array(edges.length - 1)
-  channels.forEach((x, c) => {
-    const filter = createKFilter(sampleRate)
-    for (let j = 0; j < energies.length; j++) {
-      energies[j] = (energies[j] as number) + (weights[c] as number) * weightedEnergy(filter, x, edges[j] as number, edges[j + 1] as number)
-    }
-  })
+  const filters = channels.map(() => createKFilter(sampleRate))
+  for (let j = 0; j < energies.length; j++) {
+    channels.forEach((x, c) => {
+      const energy = weightedEnergy(filters[c] as KFilter, x, edges[j] as number, edges[j + 1] as number)
+      energies[j] = (energies[j] as number) + (weights[c] as number) * energy
+    })
+    yield (j + 1) / energies.length
+  }
   return energies
 }
 
