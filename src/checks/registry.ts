@@ -2,6 +2,7 @@
 import type { ParameterSet } from '../set/types.ts'
 import { levelDc } from './levelDc.ts'
 import { levelLine } from './levelLine.ts'
+import { levelLoudness } from './levelLoudness.ts'
 import { levelMono } from './levelMono.ts'
 import { levelPeak } from './levelPeak.ts'
 import { LIMITS } from './limits.ts'
@@ -33,6 +34,7 @@ const UNSORTED: readonly CheckEntry[] = [
   { id: 'level.peak', kind: 'closed', run: levelPeak },
   { id: 'level.line', kind: 'closed', run: levelLine },
   { id: 'level.dc', kind: 'rendered', run: levelDc },
+  { id: 'level.loudness', kind: 'rendered', run: levelLoudness },
   { id: 'level.mono', kind: 'closed', run: levelMono },
   { id: 'shaper.harmonics', kind: 'closed', run: shaperHarmonics },
   { id: 'shaper.alias', kind: 'closed', run: shaperAlias },

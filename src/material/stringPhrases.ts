@@ -70,5 +70,5 @@ export function bassLine(sampleRate: number): Float64Array {
 }
 
 function strike(circle: Float64Array, sampleRate: number, seconds: number, string: PluckedString): void {
-  for (const _ of pluckSteps(circle, sampleRate, Math.round(seconds * sampleRate), string));
+  pluck(circle, sampleRate, Math.round(seconds * sampleRate), string)
 }
