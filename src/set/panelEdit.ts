@@ -1,6 +1,6 @@
 // Editing a panel: knobs and moves put in, taken out, changed. Functions from set to set; where it can be, what sounds stays what it was.
 import { fieldEnds, isListed, movePosition, moveValue, steppedPosition, switchValues } from './panel.ts'
-import { isMovable } from './panelProblems.ts'
+import { isMovable, moveProblems } from './panelProblems.ts'
 import { KNOB_NAME, MAX_KNOBS, MAX_MOVES } from './parameters/panel.ts'
 import { type Parameter, parameter } from './parameters.ts'
 import { getAt, withAt } from './path.ts'
@@ -79,6 +79,8 @@ export function changeMove(set: ParameterSet, index: number, at: number, change:
   const knob = knobAt(set, index)
   const move: Move = { ...(knob.moves[at] as Move), ...change }
   const changed = changeKnob(set, index, { moves: knob.moves.with(at, move) })
+  // A move that cannot stand gives no value; whoever judges the set says why.
+  if (moveProblems(move, '').length > 0) return changed
   const stored = getAt(set, move.parameter)
   const alone = knob.moves.length === 1
   const position = alone ? movePosition(move, stored) : null

@@ -134,6 +134,12 @@ describe('moves', () => {
     expect([reversed.panel[0]?.position, reversed.mix.wet]).toEqual([0, 0.5])
   })
 
+  it('changed to what cannot stand are left to be refused', () => {
+    const changed = changeMove(on('sweep.rateHz'), 0, 0, { min: 0, taper: 'log' })
+    expect(changed.panel[0]?.position).toBe(on('sweep.rateHz').panel[0]?.position)
+    expect(setProblems(changed).map(({ path }) => path)).toEqual(['panel[0].moves[0].taper'])
+  })
+
   it('changed on a knob with others leave it standing and take the value it gives', () => {
     const set = { ...on('mix.wet'), mix: { ...defaultSet().mix, wet: 0.5 } }
     const panel = [

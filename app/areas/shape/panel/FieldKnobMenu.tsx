@@ -6,7 +6,6 @@ import { getAt } from '../../../../src/set/path.ts'
 import type { Problem } from '../../../../src/set/result.ts'
 import { announce } from '../../../shell/announce.ts'
 import { say } from '../../../shell/messages.ts'
-import { topBarElement } from '../../../shell/topBarElement.ts'
 import { useOpenedTrigger } from '../../../shell/usePopup.ts'
 import { useCurrent } from '../../../state/current.ts'
 import { committedSet } from '../../../state/document.ts'
@@ -29,8 +28,9 @@ export function FieldKnobMenu({ button, path }: FieldKnobMenuProps) {
   return (
     <Menu.Root modal={false}>
       <Menu.Trigger ref={trigger} render={button} />
-      <Menu.Portal container={topBarElement}>
-        <Menu.Positioner className="cw-menu-positioner" align="start" sideOffset={4}>
+      {/* Inside the area, so that it belongs to its landmark. */}
+      <Menu.Portal container={document.getElementById('shape')}>
+        <Menu.Positioner className="cw-menu-positioner" positionMethod="fixed" align="start" sideOffset={4}>
           <Menu.Popup className="cw-menu">
             {found ? (
               <>

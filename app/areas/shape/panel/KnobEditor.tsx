@@ -49,9 +49,6 @@ export function KnobEditor({ set, index, onPlaced }: KnobEditorProps) {
   return (
     <section className="cw-knob-editor" aria-label={`Knob ${name}`}>
       <TextField spec={{ ...KNOB_NAME, label: 'Name' }} binding={nameBinding} />
-      <NumberField spec={KNOB_POSITION} binding={positionBinding} />
-      <NumberField spec={KNOB_STEPS} binding={stepsBinding} notes={[stepsNote(steps)]} lines={1} />
-      <NumberField spec={KNOB_SMOOTH} binding={smoothBinding} />
       <h3 className="cw-panel-head">Moves</h3>
       <ul>
         {knob.moves.map((move, at) => (
@@ -59,6 +56,11 @@ export function KnobEditor({ set, index, onPlaced }: KnobEditorProps) {
         ))}
       </ul>
       {full === null ? <FieldChooser label="Move another field" onChoose={(path) => void putOnKnob(path, index)} /> : <p>{full}</p>}
+      <div className="cw-knob-settings">
+        <NumberField spec={KNOB_POSITION} binding={positionBinding} />
+        <NumberField spec={KNOB_STEPS} binding={stepsBinding} notes={[stepsNote(steps)]} lines={1} />
+        <NumberField spec={KNOB_SMOOTH} binding={smoothBinding} />
+      </div>
       <div className="cw-knob-acts">
         <ActButton label="◂ Earlier" spoken={`Put knob ${name} earlier`} off={index === 0} act={() => shift(index - 1)} />
         <ActButton label="Later ▸" spoken={`Put knob ${name} later`} off={index === set.panel.length - 1} act={() => shift(index + 1)} />

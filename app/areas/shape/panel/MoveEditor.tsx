@@ -1,5 +1,5 @@
 // One parameter that a knob moves: from where to where, along which taper.
-import { type ReactNode, useId, useMemo, useState } from 'react'
+import { useId, useMemo, useState } from 'react'
 import { TAPER_POINTS } from '../../../../src/set/drawnPoints.ts'
 import { moveValue, switchValues } from '../../../../src/set/panel.ts'
 import { MOVE_TAPER } from '../../../../src/set/parameters/panel.ts'
@@ -32,13 +32,12 @@ export function MoveEditor({ set, place, move }: MoveEditorProps) {
   const label = parameterLabel(move.parameter)
   const [refusal, setRefusal] = useState<Refusal>(null)
   const values = switchValues(row)
-  const taper = useTaper(place, move, values !== null, setRefusal)
   return (
     <li className="cw-move">
       <fieldset>
         <div className="cw-field-row">
           <legend className="cw-move-name">{label}</legend>
-          {taper}
+          <Taper {...{ place, move, setRefusal }} listed={values !== null} />
           <button
             type="button"
             className="cw-icon"
@@ -62,8 +61,15 @@ export function MoveEditor({ set, place, move }: MoveEditorProps) {
   )
 }
 
-function useTaper(place: MovePlace, move: Move, listed: boolean, refuse: (refusal: Refusal) => void): ReactNode {
-  const id = useId()
+interface TaperProps {
+  readonly place: MovePlace
+  readonly move: Move
+  /** The move steps through listed values, which have no ratios. */
+  readonly listed: boolean
+  readonly setRefusal: (refusal: Refusal) => void
+}
+
+function Taper({ place, move, listed, setRefusal }: TaperProps) {
   const shown = TAPER_WORDS[move.taper]
   return (
     <span className="cw-choice cw-taper">
@@ -71,12 +77,11 @@ function useTaper(place: MovePlace, move: Move, listed: boolean, refuse: (refusa
         {shown} <span className="cw-choice-arrow">▾</span>
       </span>
       <select
-        id={id}
         className="cw-choice-select"
         aria-label={`Taper of ${parameterLabel(move.parameter).toLowerCase()}`}
         title={MOVE_TAPER.help}
         value={move.taper}
-        onChange={(event) => refuse(chooseTaper(place, event.target.value as Move['taper']))}
+        onChange={(event) => setRefusal(chooseTaper(place, event.target.value as Move['taper']))}
       >
         {(['linear', 'log', 'drawn'] as const)
           .filter((taper) => !listed || taper !== 'log')
