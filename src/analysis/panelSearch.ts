@@ -13,6 +13,8 @@ export interface PanelFigure {
   readonly directions: (box: PanelBox) => Readonly<Record<string, Direction>>
   /** Numbers in which it is quasi-convex together. */
   readonly convex?: (box: PanelBox) => readonly string[]
+  /** A bound this close to what was found is as good as met; one part in 10⁴ where absent. */
+  readonly near?: number
   /** The figure: larger is worse. Never throws, whatever the place. */
   readonly worse: (set: ParameterSet, sampleRate: number) => number
 }
@@ -36,7 +38,6 @@ export interface PanelFind {
 const MOST_SPLITS = 300
 const MOST_LISTED = 128
 const MOST_CORNERS = 64
-/** A bound this close to what was found, relatively, is as good as met. */
 const MET = 1e-4
 /** Parts of a turn narrower than this are not split. */
 const NARROW = 1e-7
@@ -58,36 +59,44 @@ interface Search {
   places: { readonly positions: readonly number[]; readonly value: number }[]
 }
 
+/** The largest figure there can be, and how well that is known: a search of which the place does not matter. */
+export function* boundPanel(space: PanelSpace, figure: PanelFigure): Generator<void, Pick<PanelFind, 'bound' | 'by'>> {
+  return yield* search(space, figure, false)
+}
+
 /** Searches all positions; gives way after every box. Deterministic. */
-export function* searchPanel(space: PanelSpace, figure: PanelFigure): Generator<void, PanelFind> {
+export const searchPanel = (space: PanelSpace, figure: PanelFigure): Generator<void, PanelFind> => search(space, figure, true)
+
+function* search(space: PanelSpace, figure: PanelFigure, tidy: boolean): Generator<void, PanelFind> {
   const { boxes, all } = firstBoxes(space, figure.listed)
-  const search: Search = { space, figure, looks: 0, knobs: new Set(), places: [] }
+  const state: Search = { space, figure, looks: 0, knobs: new Set(), places: [] }
   const open: Looked[] = []
   for (const spans of boxes) {
-    open.push(look(search, spans))
+    open.push(look(state, spans))
     yield
   }
-  const found = () => search.places[0]?.value ?? Number.NEGATIVE_INFINITY
+  const found = () => state.places[0]?.value ?? Number.NEGATIVE_INFINITY
   let splits = 0
   for (; splits < MOST_SPLITS; splits++) {
     const worst = open.reduce((a, b) => (b.bound > a.bound ? b : a))
-    if (worst.split === null || met(worst.bound, found())) break
+    if (worst.split === null || met(figure, worst.bound, found())) break
     open.splice(open.indexOf(worst), 1)
-    for (const spans of halves(search, worst, worst.split)) open.push(look(search, spans))
+    for (const spans of halves(state, worst, worst.split)) open.push(look(state, spans))
     yield
   }
   const bound = Math.max(found(), ...open.map((box) => box.bound))
   const picked = !all || open.some((box) => box.picked)
-  const exact = splits === 0 && met(bound, found())
-  const { positions, knobs } = needed(search, search.places[0]?.positions ?? space.own, found())
+  const exact = splits === 0 && met(figure, bound, found())
+  const worst = state.places[0]?.positions ?? space.own
+  const { positions, knobs } = tidy ? needed(state, worst, found()) : { positions: worst, knobs: [] }
   return {
     positions,
     value: found(),
     bound,
     by: picked ? 'samples' : exact ? 'corners' : 'intervals',
-    looks: search.looks,
+    looks: state.looks,
     knobs,
-    places: search.places,
+    places: state.places,
   }
 }
 
@@ -105,7 +114,8 @@ function needed(search: Search, worst: readonly number[], value: number): { posi
   return { positions, knobs: turned.filter((k) => [0, 1, own[k] as number].some((end) => !asBad(at(positions, k, end)))) }
 }
 
-const met = (bound: number, found: number): boolean => bound <= found + MET * Math.max(1e-3, Math.abs(found))
+const met = ({ near }: PanelFigure, bound: number, found: number): boolean =>
+  bound <= found + (near ?? MET * Math.max(1e-3, Math.abs(found)))
 
 /** One box a combination of listed values; where there are too many, every value of each knob with the others where they stand. */
 function firstBoxes(space: PanelSpace, listed: readonly string[]): { readonly boxes: readonly (readonly Span[])[]; readonly all: boolean } {

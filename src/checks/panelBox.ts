@@ -5,6 +5,7 @@ import { panelSpace } from '../analysis/panelSpace.ts'
 import type { ParameterSet } from '../set/types.ts'
 import { type CheckId, labelOf } from './limits.ts'
 import { type Judged, judgedAt } from './panelBoxJudged.ts'
+import { panelLine, panelPeak } from './panelBoxLevels.ts'
 import { type PanelJudge, type PanelLook, panelLook, rankOf } from './panelBoxLook.ts'
 import { panelMargin, panelPoles, panelRing, panelStability } from './panelBoxLoop.ts'
 import { endsThatHold } from './panelBoxMends.ts'
@@ -23,6 +24,8 @@ const JUDGES: Partial<Record<CheckId, PanelJudge>> = {
   'sweep.range': panelRange,
   'sweep.detune': panelDetune,
   'sweep.fusion': panelFusion,
+  'level.peak': panelPeak,
+  'level.line': panelLine,
 }
 
 /** Figures that know no worse and no better: there is no worst place of them. */

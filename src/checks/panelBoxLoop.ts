@@ -13,7 +13,7 @@ import type { CheckEntry, Figure, Status } from './types.ts'
 const MOST_WORDS = 6
 const MOST_RINGS = 6
 
-export interface LoopFind {
+interface LoopFind {
   /** The gain below 1 of which the loop is proven, at its worst. */
   readonly gain: PanelFind
   /** Below 1: no held position has a gain of 1; below 1e9: a shaper holds the level. */
@@ -22,7 +22,7 @@ export interface LoopFind {
 
 const cache = new WeakMap<PanelSpace, LoopFind>()
 
-export function* loopFind(space: PanelSpace): Generator<void, LoopFind> {
+function* loopFind(space: PanelSpace): Generator<void, LoopFind> {
   const known = cache.get(space)
   if (known) return known
   const { sampleRate } = space

@@ -1,40 +1,58 @@
 // Whether a check surely holds at every knob position, from its bound alone: what a changed end of a knob is tried with.
-import { searchPanel } from '../analysis/panelSearch.ts'
+import { boundPanel } from '../analysis/panelSearch.ts'
 import type { PanelSpace } from '../analysis/panelSpace.ts'
 import { ringSeconds } from '../analysis/poles.ts'
 import { type CheckId, judge, limitOf } from './limits.ts'
-import { oneFind } from './panelBoxLook.ts'
-import { loopFind } from './panelBoxLoop.ts'
-import { closestRead, detuneOf, longestRead, poleCover } from './panelDirections.ts'
+import { closestRead, detuneOf, gainCover, longestRead, loopGainOf, poleCover } from './panelDirections.ts'
 
 type Sure = (space: PanelSpace) => Generator<void, boolean>
 
 function* rangeHolds(space: PanelSpace): Generator<void, boolean> {
-  const find = oneFind([yield* searchPanel(space, closestRead), yield* searchPanel(space, longestRead)])
-  return find.by !== 'samples' && -find.bound >= limitOf(space.set, 'sweep.range').margin
+  const { margin } = limitOf(space.set, 'sweep.range')
+  for (const figure of [closestRead, longestRead]) {
+    const { bound, by } = yield* boundPanel(space, figure)
+    if (by === 'samples' || -bound < margin) return false
+  }
+  return true
 }
 
 function* detuneHolds(space: PanelSpace): Generator<void, boolean> {
-  const { sampleRate } = space
-  const find = oneFind([yield* searchPanel(space, detuneOf('rise', sampleRate)), yield* searchPanel(space, detuneOf('fall', sampleRate))])
-  return find.by !== 'samples' && judge(limitOf(space.set, 'sweep.detune'), find.bound) === 'holds'
+  for (const side of ['rise', 'fall'] as const) {
+    const { bound, by } = yield* boundPanel(space, detuneOf(side, space.sampleRate))
+    if (by === 'samples' || judge(limitOf(space.set, 'sweep.detune'), bound) !== 'holds') return false
+  }
+  return true
+}
+
+/** The gain below 1 of which the loop is proven stays below `most`. */
+function* gainBelow(space: PanelSpace, most: number): Generator<void, boolean> {
+  for (const side of ['rise', 'fall'] as const) {
+    const { bound, by } = yield* boundPanel(space, loopGainOf(side, space.sampleRate))
+    if (by === 'samples' || bound >= 1 || bound > most) return false
+  }
+  return true
 }
 
 function* stabilityHolds(space: PanelSpace): Generator<void, boolean> {
-  const { gain } = yield* loopFind(space)
-  return gain.by !== 'samples' && gain.bound < 1
+  return yield* gainBelow(space, 1)
 }
 
 function* marginHolds(space: PanelSpace): Generator<void, boolean> {
-  const { gain } = yield* loopFind(space)
   const { limit, margin } = limitOf(space.set, 'loop.margin')
-  return gain.by !== 'samples' && gain.bound < 1 && gain.bound <= 10 ** (-((limit ?? 0) + margin) / 20)
+  return yield* gainBelow(space, 10 ** (-((limit ?? 0) + margin) / 20))
 }
 
 function* ringHolds(space: PanelSpace): Generator<void, boolean> {
-  const { bound, by } = yield* searchPanel(space, poleCover)
+  const { bound, by } = yield* boundPanel(space, poleCover)
   const seconds = bound <= -1e9 ? 0 : ringSeconds(bound, space.sampleRate)
   return by !== 'samples' && seconds !== null && judge(limitOf(space.set, 'loop.ring'), seconds) === 'holds'
+}
+
+function gainHolds(place: 'peak' | 'line'): Sure {
+  return function* (space) {
+    const { bound, by } = yield* boundPanel(space, gainCover(place))
+    return by !== 'samples' && judge(limitOf(space.set, `level.${place}`), bound) === 'holds'
+  }
 }
 
 /** By check; where one is missing nothing sure is known. */
@@ -44,4 +62,6 @@ export const SURE: Partial<Record<CheckId, Sure>> = {
   'loop.ring': ringHolds,
   'sweep.range': rangeHolds,
   'sweep.detune': detuneHolds,
+  'level.peak': gainHolds('peak'),
+  'level.line': gainHolds('line'),
 }

@@ -59,13 +59,14 @@ export const panelTried: PanelJudge = function* (look, entry): Generator<void, P
     if (here > worst.badness) worst = { positions, badness: here }
     yield
   }
+  const found = { positions: worst.positions, knobs, looks: places.length }
+  if (knobs.length === 0)
+    return { ...found, by: 'corners', formula: 'the same at all positions', source: 'no knob moves what it depends on' }
   return {
-    positions: worst.positions,
-    by: knobs.length === 0 ? 'corners' : 'samples',
-    knobs,
-    looks: places.length,
+    ...found,
+    by: 'samples',
+    bound: null,
     formula: 'tried where the knobs stand, at their ends and in the middle',
     source: 'no argument: nothing is shown of the places between',
-    ...(knobs.length > 0 && { bound: null }),
   }
 }

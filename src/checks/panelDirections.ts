@@ -2,6 +2,7 @@
 // the other parameters anywhere in it; what is not listed does not concern the figure. tests/checks/panelDirections.test.ts tries every line of it on random sets.
 
 import { sweepDetune } from '../analysis/detune.ts'
+import { gainBound } from '../analysis/panelGainBound.ts'
 import { loopBounds, poleBound } from '../analysis/panelLoopBounds.ts'
 import type { Direction } from '../analysis/panelOptions.ts'
 import type { PanelFigure } from '../analysis/panelSearch.ts'
@@ -236,4 +237,43 @@ export const poleCover: PanelFigure = {
         },
   convex: farConvex,
   worse: (set, sampleRate) => poleBound(set, sampleRate) ?? -1e9,
+}
+
+/**
+ * Bound of the worst gain, dB: at every frequency |dry| and |wet| √V times what the filters and the loop, reads counted as 1 with any phase, let through at most; or a shaper's
+ * ceiling. Each factor goes one way: gains, drive, ceilings and limits up; the lower a low cut, the higher a high cut or damping, the more passes; √V. Straight
+ * in |dry| and |wet| together. Delays do not count.
+ */
+export const gainCover = (place: 'peak' | 'line'): PanelFigure => ({
+  listed: [...loopKind, 'line.interpolation', 'input.shaper.curve', 'mix.shaper.curve', 'mix.dryTap'],
+  directions: () => ({
+    'input.gainDb': 'rises',
+    'loop.feedback': 'ends',
+    'loop.dampingHz': 'rises',
+    'loop.lowCutHz': 'falls',
+    ...shaperDirections('input.shaper'),
+    ...shaperDirections('loop.shaper'),
+    ...(place === 'peak' ? OUTPUT : {}),
+  }),
+  convex: () => ['mix.dry', 'mix.wet'],
+  near: 0.02,
+  worse: (set, sampleRate) => gainBound(set, sampleRate, place),
+})
+
+const shaperDirections = (path: string): Directions => ({
+  [`${path}.drive`]: 'rises',
+  [`${path}.ceiling`]: 'rises',
+  [`${path}.positive`]: 'rises',
+  [`${path}.negative`]: 'rises',
+  [`${path}.deadZone`]: 'falls',
+})
+
+const OUTPUT: Directions = {
+  'mix.dry': 'ends',
+  'mix.wet': 'ends',
+  'mix.outputGainDb': 'rises',
+  'mix.wetHighCutHz': 'rises',
+  'mix.wetLowCutHz': 'falls',
+  'voices.count': 'rises',
+  ...shaperDirections('mix.shaper'),
 }
