@@ -19,15 +19,20 @@ export interface LoopSweep {
   readonly to: number
   /** Places to look at first, ascending, ends included. */
   readonly places: readonly number[]
-  /** Positions at which both lines stand at one delay, and so come round in phase everywhere. */
+  /**
+   * Places always looked at in full: positions at which both lines stand at one delay, and so come round in phase everywhere; delays that end the sweep or bring
+   * the loudest frequency round in phase.
+   */
   readonly together: readonly number[]
   readonly at: (place: number) => FrozenLoop
 }
 
-/** Even places before refining, and how many of the positions are looked at in full after a cheap look at all. */
+/** Even places before refining, and how many of the places are looked at in full after a cheap look at all. */
 const EVEN = 8
 const POSITIONS = 128
 const FULL_LOOKS = 6
+/** Shortest delay, samples, from which on poles are so dense that the cheap look tells places apart. */
+const DENSE = 24
 const scratch = logGainResult()
 
 /** The frozen loops of a set over its sweep at `sampleRate` Hz. */
@@ -58,7 +63,8 @@ export function loopSweep(set: ParameterSet, sampleRate = set.sampleRate): LoopS
     return { ...template, reads: Array.from({ length: lines }, () => read) }
   }
   const { minSamples: from, maxSamples: to } = movement
-  return { over: 'delay', from, to, places: delayPlaces(from, to, at), together: [], at }
+  const places = delayPlaces(from, to, at)
+  return { over: 'delay', from, to, ...places, at }
 }
 
 /** Where a function that is smooth between `places` changes sign. */
@@ -71,22 +77,29 @@ function meetings(apart: (place: number) => number, places: readonly number[]): 
 }
 
 /** Ends, whole and half delays next to them (no loss there, or a recursive read at its longest), even steps, and the delays at which the loudest frequency comes round in phase. */
-function delayPlaces(from: number, to: number, at: (delay: number) => FrozenLoop): number[] {
+function delayPlaces(from: number, to: number, at: (delay: number) => FrozenLoop): Pick<LoopSweep, 'places' | 'together'> {
   const even = Array.from({ length: EVEN + 1 }, (_, i) => from + ((to - from) * i) / EVEN)
   const whole = [0, 0.5, 1, 1.5, 2, 2.5, 3].flatMap((i) => [Math.floor(to) - i, Math.floor(to) + 0.5, Math.ceil(from) + i])
-  const aligned = loopParts(at(to), 1).lines.flatMap((line) => alignedDelays(line, to))
+  const aligned = loopParts(at(to), 1).lines.flatMap((line) => alignedDelays(line, from, to))
   const places = [...even, ...even.map(Math.round), ...whole, ...aligned, ...aligned.map(Math.round)]
-  return ascending(places.filter((delay) => delay >= from && delay <= to))
+  const reached = (delays: readonly number[]) => ascending(delays.filter((delay) => delay >= from && delay <= to))
+  // Between a low cut and damping one narrow band is loudest: where it comes round in phase counts for more than the delay's length.
+  const { lowPass, highPass } = at(to).tone
+  const peaked = lowPass !== null && highPass !== null
+  const together = from < DENSE ? places : [from, to, Math.floor(to), Math.ceil(from), ...aligned, ...(peaked ? even : [])]
+  return { places: reached(places), together: reached(together) }
 }
 
-/** Largest delays up to `to` at which the angle of largest |F| has phase 0. */
-function alignedDelays(line: LoopLine, to: number): number[] {
+/** Delays in reach, from both ends inwards, at which the angle of largest |F| has phase 0. */
+function alignedDelays(line: LoopLine, from: number, to: number): number[] {
   const { theta } = lineMax(line)
   if (!(theta > 1e-9) || line.gain === 0) return []
   const { phase } = logGain(line, 0, theta, scratch)
-  // phase − D θ = 2π k for the largest D ≤ to, and the one before.
-  const turns = Math.floor((line.delay * theta - phase) / (2 * Math.PI))
-  return [0, 1].map((i) => (2 * Math.PI * (turns - i) + phase) / theta - (line.delay - to))
+  // phase − D θ = 2π k for the largest D ≤ to and the smallest D ≥ from.
+  const longer = line.delay - to
+  const last = Math.floor((line.delay * theta - phase) / (2 * Math.PI))
+  const first = Math.ceil(((from + longer) * theta - phase) / (2 * Math.PI))
+  return [last, last - 1, first, first + 1].map((turns) => (2 * Math.PI * turns + phase) / theta - longer)
 }
 
 const ascending = (values: readonly number[]): number[] => [...new Set(values)].sort((a, b) => a - b)
@@ -110,21 +123,41 @@ export function worstPlace(
     return value
   }
   // The far end first: a longer loop dies away more slowly, and a caller that only needs "enough" is often served at once.
-  const places = sweep.over === 'position' ? likeliest(sweep, estimate) : [...sweep.places].reverse()
+  const places = sweep.over === 'position' || estimate !== score ? likeliest(sweep, estimate) : [...sweep.places].reverse()
   for (const place of places) {
     consider(place)
     if (best.score > enough) return best
   }
   if (sweep.over === 'still') return best
   const i = sweep.places.indexOf(best.place)
-  const low = Math.max(sweep.places[i - 1] ?? sweep.from, best.place - 1)
-  const high = Math.min(sweep.places[i + 1] ?? sweep.to, best.place + 1)
+  const before = sweep.places[i - 1] ?? sweep.from
+  const after = sweep.places[i + 1] ?? sweep.to
+  if (sweep.over === 'position') {
+    const low = Math.max(before, best.place - 1)
+    const high = Math.min(after, best.place + 1)
+    if (high > low) consider(goldenMaximum((t) => estimate(sweep.at(t)), low, high, 1e-6).at)
+    return best
+  }
+  // Between distant places first, then within the sample, whose whole and half delays are corners of what is looked for.
+  const start = best.place
+  const below = sweep.places.findLast((place) => place < start - 2)
+  const above = sweep.places.find((place) => place > start + 2)
+  if (below !== undefined) goldenMaximum(consider, below, start, 0.7)
+  if (above !== undefined) goldenMaximum(consider, start, above, 0.7)
+  const within = (delay: number) => Math.min(sweep.to, Math.max(sweep.from, delay))
   const { place } = best
-  if (sweep.over === 'delay') {
-    goldenMaximum(consider, low, place, 0.002)
-    goldenMaximum(consider, place, high, 0.002)
-  } else if (high > low) consider(goldenMaximum((t) => estimate(sweep.at(t)), low, high, 1e-6).at)
+  if (!sweep.places.includes(place)) for (const delay of cornersAbout(place)) consider(within(delay))
+  const tolerance = sweep.from < DENSE ? 0.002 : 0.02
+  const centre = best.place
+  goldenMaximum(consider, within(Math.max(before, centre - 1)), centre, tolerance)
+  goldenMaximum(consider, centre, within(Math.min(after, centre + 1)), tolerance)
   return best
+}
+
+/** Whole delays either side, and half ones with what is read just below them. */
+function cornersAbout(delay: number): number[] {
+  const whole = Math.floor(delay)
+  return [whole, whole + 1, whole - 0.5, whole + 0.5, whole + 0.5 - 1e-9, whole + 1.5 - 1e-9]
 }
 
 /** The places of highest estimate, that one first, and those where the lines meet. */

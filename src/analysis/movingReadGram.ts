@@ -3,10 +3,12 @@
 // pivots must be positive. Source: Sylvester's law of inertia.
 //
 // Invariant: column m of RᵀR is complete once every row n' that follows has n' − (largest whole delay) − 2 > m. Columns wait in a ring until then.
-import { firstTap, splitDelay } from '../dsp/interpolators.ts'
+import { firstTap } from '../dsp/interpolators.ts'
 import type { Interpolation } from '../set/types.ts'
 
 const DIAGONALS = 4
+/** Rows added between two goes at factoring, a power of two. */
+const TOGETHER = 64
 
 export interface GramTest {
   readonly kind: Exclude<Interpolation, 'allpass1'>
@@ -30,7 +32,7 @@ export function createGramTest(
   t: number,
   range: { readonly shortest: number; readonly longest: number },
 ): GramTest {
-  const span = Math.ceil(range.longest) - Math.floor(range.shortest) + 16
+  const span = Math.ceil(range.longest) - Math.floor(range.shortest) + 16 + TOGETHER
   const size = 2 ** Math.ceil(Math.log2(span))
   return {
     kind,
@@ -74,19 +76,24 @@ function loadTaps(kind: GramTest['kind'], f: number): number {
 /** Adds the rows first, first + 1, … with these delays (samples) and factors every column they complete. Returns `positive`. */
 export function addRows(test: GramTest, first: number, delays: Float64Array, count = delays.length): boolean {
   const { kind, mask, band } = test
+  const half = kind === 'nearest' ? 0.5 : 0
+  const points = kind === 'nearest' ? 1 : kind === 'linear' ? 2 : 4
+  const back = firstTap(kind) + points - 1
+  test.column ??= first - test.longest - 4
   for (let i = 0; i < count && test.positive; i++) {
-    const n = first + i
-    const { whole, fraction } = splitDelay(kind, delays[i] as number)
-    const points = loadTaps(kind, fraction)
-    const oldest = n - whole - firstTap(kind) - (points - 1)
-    if (test.column === null) test.column = n - test.longest - 4
+    const delay = delays[i] as number
+    const whole = Math.floor(delay + half)
+    loadTaps(kind, delay - whole)
+    const oldest = first + i - whole - back
     for (let a = 0; a < points; a++) {
       const at = DIAGONALS * ((oldest + a) & mask)
       const h = taps[a] as number
       for (let b = a; b < points; b++) band[at + b - a] = (band[at + b - a] as number) + h * (taps[b] as number)
     }
-    factorUpTo(test, n - test.longest - 3)
+    // The columns a block of rows completes are factored together; the ring has room for them.
+    if ((i & (TOGETHER - 1)) === TOGETHER - 1) factorUpTo(test, first + i - test.longest - 3)
   }
+  factorUpTo(test, first + count - 1 - test.longest - 3)
   return test.positive
 }
 

@@ -35,6 +35,8 @@ export interface PoleOptions {
   readonly slope?: number
   /** Prove that no pole lies outside the one found (one line: the winding of L around 1; crossed lines: a fuller search). */
   readonly certify?: boolean
+  /** Only to choose among many loops one that is then looked at in full: on a coarser grid, nothing counted. */
+  readonly quick?: boolean
 }
 
 /** Pole of largest radius of the frozen loop, exact for one line; null without a loop (gain 0). */
@@ -43,9 +45,15 @@ export function largestPole(frozen: Frozen, options: PoleOptions = {}): LargestP
 }
 
 /** As largestPole, from the loop alone. sampleRate in Hz. */
-export function largestPoleOfLoop(loop: FrozenLoop, sampleRate: number, { slope, certify = false }: PoleOptions = {}): LargestPole | null {
+export function largestPoleOfLoop(
+  loop: FrozenLoop,
+  sampleRate: number,
+  { slope, certify = false, quick = false }: PoleOptions = {},
+): LargestPole | null {
   const { lines, pair } = loopParts(loop, slope)
-  const found = [...lines.map((line) => poleOf(line, certify)), pair === null ? null : poleOfPair(pair, certify)].filter((p) => p !== null)
+  const found = [...lines.map((line) => poleOf(line, certify, quick)), pair === null ? null : poleOfPair(pair, certify, quick)].filter(
+    (p) => p !== null,
+  )
   if (found.length === 0) return null
   const pole = found.reduce((a, b) => (b.x > a.x ? b : a))
   const lnBound = Math.max(...found.map((p) => p.bound))
@@ -62,13 +70,13 @@ interface Bounded extends Pole {
   readonly bound: number
 }
 
-function poleOf(line: LoopLine, certify: boolean): Bounded | null {
-  const pole = certify ? (certifiedPole(line)?.pole ?? null) : largestPoleOfLine(line)
+function poleOf(line: LoopLine, certify: boolean, quick: boolean): Bounded | null {
+  const pole = certify ? (certifiedPole(line)?.pole ?? null) : largestPoleOfLine(line, quick)
   return pole === null ? null : { ...pole, bound: pole.x }
 }
 
-function poleOfPair(pair: LoopPair, certify: boolean): Bounded | null {
-  const found = certify ? largestPoleOfPair(pair, 1200) : largestPoleOfPair(pair)
+function poleOfPair(pair: LoopPair, certify: boolean, quick: boolean): Bounded | null {
+  const found = largestPoleOfPair(pair, certify ? { starts: 1200 } : { quick })
   return found === null ? null : { ...found.pole, bound: found.bound }
 }
 

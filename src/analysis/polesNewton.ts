@@ -42,6 +42,29 @@ function folded(x: number, theta: number): Pole {
   return { x, theta: Math.abs(wrapAngle(theta)) }
 }
 
+/** The modulus equation at every angle of a grid, each started from its neighbour's: to about 1e-8 of a branch's share, −∞ where there is none. */
+export function modulusCurve(line: LoopLine, angles: Float64Array, start: number): Float64Array {
+  const longest = 2 / line.delay
+  const curve = new Float64Array(angles.length)
+  let known = start
+  for (let i = 0; i < angles.length; i++) {
+    let x = known
+    let found = Number.NEGATIVE_INFINITY
+    for (let j = 0; j < 60; j++) {
+      logGain(line, x, angles[i] as number, scratch)
+      const step = scratch.ln / scratch.dRe
+      if (!Number.isFinite(step) || scratch.dRe >= 0) break
+      x -= Math.abs(step) > longest ? Math.sign(step) * longest : step
+      if (Math.abs(step) > 1e-4 * longest) continue
+      found = x
+      known = x
+      break
+    }
+    curve[i] = found
+  }
+  return curve
+}
+
 /**
  * x at which |L| = 1 on the ray at angle θ (the modulus equation): every pole at that angle lies on this curve. `x` starts the search; null
  * where the ray has no such point (under a low cut's zero).

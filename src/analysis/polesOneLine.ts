@@ -3,7 +3,7 @@
 // searched for from more starts.
 import { type LoopLine, logGain, logGainResult, loopOrder, slowPair } from './loopLine.ts'
 import { bisect, goldenMaximum, localMaxima } from './loopSearch.ts'
-import { branchAngles, modulusEquation, newtonPole, type Pole } from './polesNewton.ts'
+import { branchAngles, modulusCurve, modulusEquation, newtonPole, type Pole } from './polesNewton.ts'
 import { allPolesOfShortLoop, SHORT_LOOP } from './polesPolynomial.ts'
 import { realPoles } from './polesRealAxis.ts'
 import { loopAngles, polesOutside } from './polesWinding.ts'
@@ -12,22 +12,29 @@ const scratch = logGainResult()
 
 /** Humps of the modulus curve that are followed to their top: filters and interpolators make fewer. */
 const TOPS = 12
+/** The same for a quick look, on every second angle. */
+const QUICK_TOPS = 5
 
-/** The pole of largest radius, or null without a loop (G = 0). Not certified: see certifiedPole. */
-export function largestPoleOfLine(line: LoopLine): Pole | null {
+/**
+ * The pole of largest radius, or null without a loop (G = 0). Not certified: see certifiedPole. `quick`: on half the grid, to choose among many loops one
+ * that is then looked at in full.
+ */
+export function largestPoleOfLine(line: LoopLine, quick = false): Pole | null {
   if (line.gain === 0) return null
-  return loopOrder(line) <= SHORT_LOOP ? largest(allPolesOfShortLoop(line)) : largestOfLongLine(line)
+  return loopOrder(line) <= SHORT_LOOP ? largest(allPolesOfShortLoop(line)) : largestOfLongLine(line, quick)
 }
 
 /** As largestPoleOfLine, for any length, by Newton's method alone. */
-export function largestOfLongLine(line: LoopLine): Pole | null {
+export function largestOfLongLine(line: LoopLine, quick = false): Pole | null {
   const start = Math.log(Math.abs(line.gain)) / line.delay
-  const curve = (theta: number) => modulusEquation(line, theta, start) ?? Number.NEGATIVE_INFINITY
-  const grid = loopAngles(line.delay)
-  const xs = grid.map(curve)
+  const grid = loopAngles(line.delay, quick)
+  const xs = modulusCurve(line, grid, start)
   // Without filters every pole is a branch, the real ones included.
-  const found: Pole[] = line.lowPass === null && line.highPass === null ? [] : [...realPoles(line), ...polesNearDc(line)]
-  for (const i of localMaxima(xs).slice(0, TOPS)) {
+  const found: Pole[] =
+    line.lowPass === null && line.highPass === null ? [] : [...realPoles(line, quick), ...polesNearDc(line, quick ? 8 : 24)]
+  for (const i of localMaxima(xs).slice(0, quick ? QUICK_TOPS : TOPS)) {
+    const near = xs[i] as number
+    const curve = (theta: number) => modulusEquation(line, theta, near) ?? Number.NEGATIVE_INFINITY
     const from = grid[Math.max(0, i - 1)] as number
     const to = grid[Math.min(grid.length - 1, i + 1)] as number
     const top = goldenMaximum(curve, from, to, 0.2 / line.delay)
@@ -76,11 +83,11 @@ function branches(line: LoopLine, maxTheta: number): Pole[] {
 }
 
 /** Free starts around 0 Hz, where a low cut comparable with 1/D leaves no branches to follow. */
-function polesNearDc(line: LoopLine): Pole[] {
+function polesNearDc(line: LoopLine, starts = 24): Pole[] {
   const poles: Pole[] = []
   const x = Math.log(Math.abs(line.gain)) / line.delay
-  for (let i = 0; i < 24; i++) {
-    const theta = (0.03 / line.delay) * 400 ** (i / 23)
+  for (let i = 0; i < starts; i++) {
+    const theta = (0.03 / line.delay) * 400 ** (i / (starts - 1))
     for (const start of [Math.min(0, x), -theta]) pushPole(poles, newtonPole(line, start, theta))
   }
   const slow = slowPair(line)

@@ -20,8 +20,11 @@ const COUNTED_DELAY = 600
 
 const det = new Float64Array(4)
 
-/** Largest pole of a crossed pair, with the bound, at a cost of at most about `starts` Newton runs. null without a loop. */
-export function largestPoleOfPair(pair: LoopPair, starts = STARTS): PairPole | null {
+/**
+ * Largest pole of a crossed pair, with the bound, at a cost of at most about `starts` Newton runs. null without a loop. `quick`: without counting what a short pair
+ * may hide near a filter's own pole, to choose among many pairs one that is then looked at in full.
+ */
+export function largestPoleOfPair(pair: LoopPair, { starts = STARTS, quick = false } = {}): PairPole | null {
   if (pair.lines[0].gain === 0) return null
   const curve = pairBound(pair)
   let best: Pole | null = null
@@ -36,7 +39,7 @@ export function largestPoleOfPair(pair: LoopPair, starts = STARTS): PairPole | n
   if (pole === null) return null
   const slow = pairOpenPoles(pair).some((open) => Math.log(Math.abs(open)) > pole.x - 4 / pairDelay(pair))
   if (complete && !slow) return { pole, bound: pole.x }
-  return pairDelay(pair) > COUNTED_DELAY ? { pole, bound: Math.max(curve.bound, pole.x) } : counted(pair, pole)
+  return quick || pairDelay(pair) > COUNTED_DELAY ? { pole, bound: Math.max(curve.bound, pole.x) } : counted(pair, pole)
 }
 
 /** The pole if counting finds none outside it; else the radius at which the count drops to none. */
@@ -136,10 +139,12 @@ function realPolesOfPair(pair: LoopPair): Pole[] {
     const positive = (x: number) =>
       (pairDeterminant(pair, x, theta, det)[0] as number) > 0 === (poles.filter((pole) => pole > Math.exp(x)).length % 2 === 0)
     const grid = axisGrid(poles)
+    let before = positive(grid[0] as number)
     for (let i = 1; i < grid.length; i++) {
-      const from = grid[i - 1] as number
       const to = grid[i] as number
-      if (positive(from) !== positive(to)) found.push({ x: bisect(positive, from, to), theta })
+      const after = positive(to)
+      if (after !== before) found.push({ x: bisect(positive, grid[i - 1] as number, to), theta })
+      before = after
     }
   }
   return found

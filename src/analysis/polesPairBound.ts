@@ -31,7 +31,7 @@ export function pairBound(pair: LoopPair): PairBound {
   const start = Math.log(Math.abs(pair.lines[0].gain)) / delay
   const curve = (t: number) => pairModulusEquation(pair, t, start) ?? Number.NEGATIVE_INFINITY
   // Every second angle: the bound is one of smooth moduli, and its tops are followed up.
-  const theta = loopAngles(delay).filter((_, i, all) => i % 2 === 0 || i === all.length - 1)
+  const theta = loopAngles(delay, true)
   const x = theta.map(curve)
   const cellTop = Float64Array.from(x)
   const tops = localMaxima(x)

@@ -25,7 +25,7 @@ const CIRCLE = 1e-12
 
 /** Place of the sweep where the largest pole is largest. */
 function worstPole(sweep: LoopSweep, sampleRate: number, slope: number | undefined): number {
-  const score = (loop: FrozenLoop) => largestPoleOfLoop(loop, sampleRate, { slope })?.lnRadius ?? Number.NEGATIVE_INFINITY
+  const score = (loop: FrozenLoop) => largestPoleOfLoop(loop, sampleRate, { slope, quick: true })?.lnRadius ?? Number.NEGATIVE_INFINITY
   return worstPlace(sweep, score, { estimate: radiusEstimate(slope) }).place
 }
 
@@ -111,7 +111,7 @@ export function everyPositionStable(
 
 function stableAtGain(set: ParameterSet, sampleRate: number, sweep: LoopSweep, slope: number): boolean {
   const score = (loop: FrozenLoop) => {
-    const pole = largestPoleOfLoop(loop, sampleRate, { slope })
+    const pole = largestPoleOfLoop(loop, sampleRate, { slope, quick: true })
     return pole === null ? Number.NEGATIVE_INFINITY : pole.lnRadius * Math.max(...loop.reads.map((read) => read.delaySamples))
   }
   const worst = worstPlace(sweep, score, { enough: -CIRCLE, estimate: radiusEstimate(slope) })

@@ -7,9 +7,22 @@ import { bisect, goldenMaximum, localMaxima } from './loopSearch.ts'
 
 const scratch = logGainResult()
 
-/** Angles from 0 to π dense enough to follow filters and interpolators: equal ratios below 0.05 rad, equal steps above. `delay` in samples. */
-export function loopAngles(delay: number): Float64Array {
+let lastAngles: { readonly low: number; readonly all: Float64Array; readonly half: Float64Array } | null = null
+
+/**
+ * Angles from 0 to π dense enough to follow filters and interpolators: equal ratios below 0.05 rad, equal steps above; every second one with `half`. `delay` in
+ * samples. Shared by all callers: not to be written to.
+ */
+export function loopAngles(delay: number, half = false): Float64Array {
   const low = Math.min(0.01 / delay, 1e-5)
+  if (lastAngles?.low !== low) {
+    const all = anglesFrom(low)
+    lastAngles = { low, all, half: all.filter((_, i) => i % 2 === 0 || i === all.length - 1) }
+  }
+  return half ? lastAngles.half : lastAngles.all
+}
+
+function anglesFrom(low: number): Float64Array {
   const below = 110
   const above = 180
   const angles = new Float64Array(1 + below + above + 1)

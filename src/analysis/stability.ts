@@ -75,18 +75,33 @@ export function loopGains(set: ParameterSet, sampleRate = set.sampleRate): LoopG
 
 /**
  * The strongest word for a valid set at `sampleRate` (Hz). Closed form but for `computed`, which factors the read operator over the sweep, and only where nothing
- * stronger holds and it could help. `budget`: rows that may cost (see certifiedNorm).
+ * stronger holds and it could help. `norm` is certified even where it does not help, for what a weaker word says and offers.
  */
-export function stability(set: ParameterSet, sampleRate = set.sampleRate, budget?: number): Stability {
+export function stability(set: ParameterSet, sampleRate = set.sampleRate): Stability {
+  return withNorm(set, sampleRate, stabilityWord(set, sampleRate))
+}
+
+/** The same word, proof, level and certified gain at a fraction of the cost: a norm that does not make the loop `computed` is left null. */
+export function stabilityWord(set: ParameterSet, sampleRate = set.sampleRate): Stability {
   const gains = loopGains(set, sampleRate)
   const proven = provenStability(set, sampleRate, gains)
   if (proven !== null) return proven
-  const gain = gains.feedback * gains.sector.bound * gains.toneMax
-  const norm = gain < 1 && gains.movement.moves ? certifiedNorm(set, sampleRate, budget) : null
-  const gammaN = norm && gain * norm.norm
-  const withNorm = { ...gains, norm, gammaN, level: null, pole: null }
-  if (gammaN !== null && gammaN < 1) return { ...withNorm, word: 'computed', proof: 'sweep', certified: { name: 'γN', value: gammaN } }
-  return { ...withNorm, certified: null, ...weakerWord(set, sampleRate, gains) }
+  const gain = energyGain(gains)
+  const norm = gain < 1 && gains.movement.moves ? certifiedNorm(set, sampleRate, { below: 1 / gain }) : null
+  if (norm === null) return { ...gains, norm, gammaN: null, certified: null, ...weakerWord(set, sampleRate, gains) }
+  const gammaN = gain * norm.norm
+  return { ...gains, norm, gammaN, level: null, pole: null, word: 'computed', proof: 'sweep', certified: { name: 'γN', value: gammaN } }
+}
+
+/** |g| σ max|F|: the energy gain of a loop whose read is passive. */
+const energyGain = ({ feedback, sector, toneMax: max }: LoopGains): number => feedback * sector.bound * max
+
+/** Adds the certified norm to a word weaker than `computed`. */
+export function withNorm(set: ParameterSet, sampleRate: number, word: Stability): Stability {
+  const gain = energyGain(word)
+  if (word.word === 'proven' || word.norm !== null || !word.movement.moves || !(gain < 1)) return word
+  const norm = certifiedNorm(set, sampleRate)
+  return { ...word, norm, gammaN: norm && gain * norm.norm }
 }
 
 /** The word `proven` with what it rests on, or null where the set cannot be proven in closed form. Cheap: a millisecond or so. */

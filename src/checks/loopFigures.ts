@@ -1,6 +1,6 @@
 // What the four checks of the loop share, each figure computed once a run and only when asked for.
 import { type SweptPole, sweptPole } from '../analysis/polesSweep.ts'
-import { type Stability, stability } from '../analysis/stability.ts'
+import { type Stability, stabilityWord, withNorm } from '../analysis/stability.ts'
 import type { CheckInput } from './types.ts'
 
 interface Known {
@@ -20,21 +20,21 @@ function known(input: CheckInput): Known {
 /** The strongest word with what decides it: cheap, because a norm that cannot decide is not certified. */
 export function loopWord(input: CheckInput): Stability {
   const figures = known(input)
-  figures.word ??= figures.whole ?? stability(input.set, input.sampleRate)
+  figures.word ??= stabilityWord(input.set, input.sampleRate)
   return figures.word
 }
 
 /** The same word with the norm of the sweep wherever one can be certified: what texts and mends of a weaker word show. */
 export function loopWhole(input: CheckInput): Stability {
   const figures = known(input)
-  figures.whole ??= stability(input.set, input.sampleRate)
+  figures.whole ??= withNorm(input.set, input.sampleRate, loopWord(input))
   return figures.whole
 }
 
 /** Largest pole for small signals over the sweep; null without a loop, or when the shaper passes no small signals. */
 export function loopPole(input: CheckInput): SweptPole | null {
   const figures = known(input)
-  if (figures.pole === undefined) figures.pole = (figures.word ?? figures.whole)?.pole ?? sweptPole(input.set, input.sampleRate)
+  if (figures.pole === undefined) figures.pole = figures.word?.pole ?? sweptPole(input.set, input.sampleRate)
   return figures.pole
 }
 

@@ -157,7 +157,7 @@ describe('certified norm over the sweep', () => {
     for (const kind of ['linear', 'lagrange3', 'allpass1'] as const) {
       const set = loopSet({ 'loop.interpolation': kind, 'sweep.rateHz': 0.7 })
       const cycles = certifiedNorm(set)
-      const windows = certifiedNorm(set, 48000, 0)
+      const windows = certifiedNorm(set, 48000, { budget: 0 })
       expect(cycles?.method).toBe('cycles')
       expect(windows?.method).toBe('windows')
       expect(Math.abs((windows?.measured ?? 0) - (cycles?.measured ?? 0))).toBeLessThan(0.01 * ((cycles?.measured ?? 0) - 1))
