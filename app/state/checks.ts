@@ -66,7 +66,9 @@ export function follow(client: AnalysisClient): () => void {
     const checks = listed(judged)
     const { fails, near, note, holds } = countStatus(checks)
     const late = inGesture || running === null || performance.now() - beganMs >= MARK_AFTER_MS
-    const before = late ? awaited().filter((id) => judged.has(id)) : []
+    // Those from formulas are a moment behind while a gesture runs, and are not marked for it.
+    const marked = ({ id }: Check) => judged.get(id)?.of !== currentSet() && (!inGesture || slow?.includes(id) === true)
+    const before = late ? checks.filter(marked).map(({ id }) => id) : []
     const now = useChecks.getState()
     useChecks.setState({
       checks,

@@ -1,5 +1,5 @@
-// Runs the worker's jobs one after another, in slices, so that a message (a cancellation, the next request) is heard
-// between them. Knows neither the jobs nor the worker's globals.
+// Runs the worker's jobs in slices, in turns, so that a message (a cancellation, the next request) is heard between them and a short
+// job waits for a slice of a long one, not for its end. Knows neither the jobs nor the worker's globals.
 
 /** A short job answers at once; a long one yields between slices, how far it is where that is worth telling, and returns its answer. */
 export type SlicedJob<Request, Reply, Progress = never> = (request: Request) => Reply | Generator<Progress | undefined, Reply>
@@ -56,13 +56,11 @@ export function createRunner({ jobs, post, later, now }: RunnerParts): (message:
     const job = queue[0]
     if (!job) return
     try {
-      const done = advance(job)
-      if (done) {
-        queue.shift()
-        post({ id: job.id, ok: true, value: done.value })
-      }
-    } catch (error) {
       queue.shift()
+      const done = advance(job)
+      if (done) post({ id: job.id, ok: true, value: done.value })
+      else queue.push(job)
+    } catch (error) {
       refuse(job.id, error)
     }
     schedule()

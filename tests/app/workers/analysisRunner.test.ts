@@ -66,6 +66,24 @@ describe('the runner of analysis jobs', () => {
     expect(turns).toBe(3)
   })
 
+  it('lets a short job in after one slice of a long one', () => {
+    const { hear, posted, turn, clock, waiting } = byHand({
+      *long() {
+        for (let k = 0; k < 5; k++) {
+          clock.ms += 20
+          yield
+        }
+        return 'long done'
+      },
+      short: () => 'short done',
+    })
+    hear(run(1, 'long'))
+    turn()
+    hear(run(2, 'short'))
+    while (waiting() > 0) turn()
+    expect(posted.map(({ id }) => id)).toEqual([2, 1])
+  })
+
   it('drops a cancelled job between its slices, without an answer', () => {
     let steps = 0
     const { hear, posted, turn, clock, waiting } = byHand({

@@ -29,6 +29,15 @@ const WHAT: Readonly<Record<string, string>> = {
   'shaper.harmonics': 'strongest, of −6 dBFS',
 }
 
+/** What panel.box says in its row: the figure of the worst check it found, and that check's name; `checks` are the others listed. */
+export function panelWords({ worst = [] }: Check, checks: readonly Check[]): { readonly figure: string; readonly what: string } {
+  const [first] = worst
+  if (!first) return { figure: 'none', what: 'no knobs' }
+  if (first.status === 'holds' || first.status === 'note') return { figure: 'all hold', what: 'at every position' }
+  const own = checks.find(({ id }) => id === first.id)
+  return { figure: checkFigure({ ...first, unit: own?.unit ?? '' }), what: (own?.label ?? first.id).toLowerCase() }
+}
+
 /** "limit 3 s", "own limit 4 s" where it is the set's; "at least computed" where words are ranked; what the figure is, or nothing, where none is judged. */
 export function checkLimit({ id, limit, unit }: Pick<Check, 'id' | 'limit' | 'unit'>, own: number | null = null): string {
   if (limit === null) return WHAT[id] ?? ''

@@ -1,8 +1,8 @@
 import { describe, expect, it } from 'vitest'
-import { checkFigure, checkLimit } from '../../../../../app/areas/shape/checks/checkWords.ts'
+import { checkFigure, checkLimit, panelWords } from '../../../../../app/areas/shape/checks/checkWords.ts'
 import { verdictWords } from '../../../../../app/areas/shape/checks/verdictWords.ts'
 import type { CheckId } from '../../../../../src/checks/limits.ts'
-import type { CheckValue, Status } from '../../../../../src/checks/types.ts'
+import type { Check, CheckValue, Status } from '../../../../../src/checks/types.ts'
 
 const figure = (id: CheckId, value: CheckValue, unit = '', status: Status = 'holds') => checkFigure({ id, status, value, unit })
 
@@ -34,6 +34,34 @@ describe('the limit of a check', () => {
     expect(checkLimit({ id: 'loop.stability', limit: 'computed', unit: '' })).toBe('at least computed')
     expect(checkLimit({ id: 'loop.poles', limit: null, unit: '' })).toBe('')
     expect(checkLimit({ id: 'response.extremes', limit: null, unit: 'Hz' })).toBe('first notch over the sweep')
+  })
+})
+
+describe('the panel’s row', () => {
+  const box = (worst: Check['worst']): Check => ({ ...line, id: 'panel.box', value: 'level.line', worst })
+  const line: Check = {
+    id: 'level.line',
+    status: 'holds',
+    value: 3,
+    limit: 12,
+    unit: 'dB',
+    label: 'Worst gain in the line',
+    text: '',
+    working: [],
+  }
+  const place = { at: {}, positions: [1], by: 'corners', text: '' } as const
+
+  it('has the figure of the worst check it found, and its name', () => {
+    const worst = [
+      { ...place, id: 'level.line', status: 'near', value: 11.5 },
+      { ...place, id: 'loop.ring', status: 'holds', value: 1 },
+    ] as const
+    expect(panelWords(box(worst), [line])).toEqual({ figure: '11.5 dB', what: 'worst gain in the line' })
+  })
+
+  it('says so when all hold everywhere, and when there is no panel', () => {
+    expect(panelWords(box([{ ...place, id: 'loop.ring', status: 'holds', value: 1 }]), [line]).figure).toBe('all hold')
+    expect(panelWords(box([]), [line])).toEqual({ figure: 'none', what: 'no knobs' })
   })
 })
 
