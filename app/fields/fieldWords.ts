@@ -11,6 +11,8 @@ import { showIn, showQuantity } from './quantity.ts'
 export function whyNot(path: string, problem: Problem, set: ParameterSet | null): string {
   const close = set && closeRead(set)
   if (close) return close
+  const knob = set?.panel[Number(/^panel\[(\d+)\]/.exec(problem.path)?.[1])]
+  if (knob) return `Knob ${knob.knob} moves something of what would be gone`
   if (isParameterPath(path) && problem.path === path) {
     const row = parameter(path)
     return `${row.label} takes ${withMinus(rangeText(row))}`
@@ -19,7 +21,8 @@ export function whyNot(path: string, problem: Problem, set: ParameterSet | null)
 }
 
 /** A button's words: "Also set depth to 0.70 ms", "Use 4.55 ms instead". */
-export function offerLabel({ instead, changes }: Offer): string {
+export function offerLabel({ instead, changes, words }: Offer): string {
+  if (words !== undefined) return words
   if (instead) return `Use ${changes.map(changeText).join(', ')} instead`
   return `Also set ${changes.map((change) => `${parameter(change.path).label.toLowerCase()} to ${changeText(change)}`).join(' and ')}`
 }

@@ -1,4 +1,5 @@
 // Second changes that would make a typed value possible, each tried before it is offered.
+import { withoutAbsent } from '../../src/set/panelEdit.ts'
 import { getAt, withAt } from '../../src/set/path.ts'
 import type { Problem } from '../../src/set/result.ts'
 import type { ParameterSet } from '../../src/set/types.ts'
@@ -14,6 +15,8 @@ export interface Offer {
   readonly instead: boolean
   readonly changes: readonly Change[]
   readonly set: ParameterSet
+  /** Its button's words, where the changes are of no field. */
+  readonly words?: string
 }
 
 /** Fields that mend by growing; the others mend by shrinking. */
@@ -21,6 +24,8 @@ const GROWS = new Set(['line.baseMs'])
 
 /** Offers for a set that became invalid when the field at `path` was typed, from what its problems say would mend them. */
 export function offersFor(set: ParameterSet, path: string, problems: readonly Problem[]): readonly Offer[] {
+  const rid = withoutAbsent(set)
+  if (rid !== set && setProblems(rid).length === 0) return [{ instead: false, changes: [], set: rid, words: 'Also take it off the panel' }]
   const byPath = new Map<string, number | string>()
   for (const mend of problems.flatMap((problem) => problem.mends ?? [])) {
     const before = byPath.get(mend.path)

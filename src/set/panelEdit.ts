@@ -71,6 +71,14 @@ export function removeMove(set: ParameterSet, index: number, at: number): Parame
   return moves.length === 1 ? removeKnob(set, index) : changeKnob(set, index, { moves: moves.toSpliced(at, 1) })
 }
 
+/** The set without the moves of shapers that are not there; itself when there are none. */
+export function withoutAbsent(set: ParameterSet): ParameterSet {
+  const isAbsent = ({ parameter: path }: Move) => getAt(set, path) === undefined
+  if (!set.panel.some(({ moves }) => moves.some(isAbsent))) return set
+  const panel = set.panel.map((knob) => ({ ...knob, moves: knob.moves.filter((move) => !isAbsent(move)) }))
+  return { ...set, panel: panel.filter(({ moves }) => moves.length > 0) }
+}
+
 /**
  * A move changed. A knob that moves nothing else turns to where it gives the value the set has; where no position does, and for a knob that moves
  * more, the knob stays (or goes to its nearer end) and the parameter takes what the knob gives there.

@@ -16,6 +16,7 @@ import {
   shiftKnob,
   standing,
   taperChange,
+  withoutAbsent,
 } from '../../src/set/panelEdit.ts'
 import { isMovable } from '../../src/set/panelProblems.ts'
 import { PARAMETERS } from '../../src/set/parameters.ts'
@@ -153,6 +154,16 @@ describe('moves', () => {
     ]
     const changed = changeMove({ ...set, panel }, 0, 0, { min: 0, max: 3 })
     expect([changed.panel[0]?.position, changed.mix.wet, changed.mix.dry]).toEqual([0.5, 1.5, 0.7071])
+  })
+
+  it('of a shaper that went go with it, and a knob that moved nothing else', () => {
+    const shaped = withAt(defaultSet(), 'loop.shaper', defaultShaper('tanh'))
+    const set = ['loop.shaper.drive', 'mix.wet'].reduce((to, path) => addKnob(to, knobOf(to, path)), shaped)
+    const both = addMove(set, 1, moveForField(set, 'loop.shaper.ceiling', 0.5) as Knob['moves'][number])
+    expect(withoutAbsent(both)).toBe(both)
+    const rid = withoutAbsent(withAt(both, 'loop.shaper', null))
+    expect(rid.panel.map(({ moves }) => moves.map(({ parameter }) => parameter))).toEqual([['mix.wet']])
+    expect(setProblems(rid)).toEqual([])
   })
 
   it('drawn from a log taper start on its curve: the middle of 1 to 100 is 10, 9 of 99 parts', () => {

@@ -1,9 +1,10 @@
 import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest'
 import { putOnKnob, putOnNewKnob, takeOffKnob } from '../../../app/areas/shape/panel/knobActs.ts'
+import { offerLabel } from '../../../app/fields/fieldWords.ts'
 import { currentSet } from '../../../app/state/current.ts'
 import { committedSet, restoreDocument, undo, useDocument } from '../../../app/state/document.ts'
 import { dropGesture, endGesture, useDraft } from '../../../app/state/draft.ts'
-import { commitField, tryField } from '../../../app/state/edit.ts'
+import { commitField, commitOffer, tryField } from '../../../app/state/edit.ts'
 import { heardSet, subscribeHeard } from '../../../app/state/heard.ts'
 import { applyMend } from '../../../app/state/mend.ts'
 import { commitPanel, commitTurn, goToPositions, knobName, tryPanel, tryTurn } from '../../../app/state/panel.ts'
@@ -209,6 +210,17 @@ describe('fields and their knobs', () => {
     expect(committedSet().panel).toHaveLength(3)
     expect(steps()).toBe(3)
     expect({ ...committedSet(), panel: null }).toEqual({ ...before, panel: null })
+  })
+
+  it('a shaper that a knob moves goes only with the offer to take it off the panel', () => {
+    commitField('loop.shaper.curve', 'tanh')
+    putOnNewKnob('loop.shaper.drive')
+    const proposal = commitField('loop.shaper.curve', null)
+    const [offer] = proposal.ok ? [] : proposal.offers
+    if (!offer) throw new Error('no offer')
+    expect(offerLabel(offer)).toBe('Also take it off the panel')
+    commitOffer('loop.shaper.curve', offer)
+    expect([committedSet().loop.shaper, committedSet().panel.length]).toEqual([null, 3])
   })
 
   it('a field that is off is switched on with it; one that shares a knob gets its own', () => {

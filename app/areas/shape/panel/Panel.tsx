@@ -2,7 +2,7 @@
 import './panel.css'
 import { useState } from 'react'
 import { turnKnob } from '../../../../src/set/panel.ts'
-import { useCurrent } from '../../../state/current.ts'
+import { currentSet, useCurrent } from '../../../state/current.ts'
 import { committedSet } from '../../../state/document.ts'
 import { usePanelView } from '../../../state/panelView.ts'
 import { Dial } from './Dial.tsx'
@@ -14,13 +14,15 @@ import { fullPanel, whyNotPanel } from './panelWords.ts'
 export function Panel() {
   const set = useCurrent((s) => s.set)
   const wanted = usePanelView((s) => s.knob)
-  const [held, setHeld] = useState<string | null>(null)
+  const [held, setHeld] = useState<{ readonly index: number; readonly position: number | undefined; readonly why: string } | null>(null)
   const chosen = Math.min(wanted, set.panel.length - 1)
   const choose = (knob: number) => usePanelView.setState({ knob })
   const add = (path: string) => {
     if (putOnNewKnob(path).length === 0) choose(committedSet().panel.length - 1)
   }
   const full = fullPanel(set)
+  // Said while the knob stands where it was held.
+  const isHeld = held !== null && set.panel[held.index]?.position === held.position
   return (
     <div className="cw-panel">
       {set.panel.length === 0 ? (
@@ -36,17 +38,25 @@ export function Panel() {
               chosen={index === chosen}
               onChoose={choose}
               onTurn={([problem], position) =>
-                setHeld(problem ? `Held: ${whyNotPanel(problem, turnKnob(committedSet(), index, position))}` : null)
+                setHeld(
+                  problem
+                    ? {
+                        index,
+                        position: currentSet().panel[index]?.position,
+                        why: `Held: ${whyNotPanel(problem, turnKnob(committedSet(), index, position))}`,
+                      }
+                    : null,
+                )
               }
             />
           ))}
         </fieldset>
       )}
       <p className="cw-field-held cw-panel-held" role="status">
-        {held !== null && (
+        {isHeld && (
           <>
             <span aria-hidden="true">△ </span>
-            {held}
+            {held.why}
           </>
         )}
       </p>

@@ -11,17 +11,29 @@ import { atPositions, goToPositions } from '../../../state/panel.ts'
 import { STATUS_SIGN, STATUS_WORD } from '../../../state/verdict.ts'
 import { checkFigure } from '../checks/checkWords.ts'
 import { type EndOffer, endThatHolds } from './endThatHolds.ts'
-import { parameterLabel, placesWords, valueWords, whyNotPanel } from './panelWords.ts'
+import { placesWords, whyNotPanel } from './panelWords.ts'
 
 const ROWS = new Map(LIMITS.map((row) => [row.id, row]))
 
 export function PanelWorst({ check }: { readonly check: Check }) {
+  const [all, setAll] = useState(false)
+  const places = check.worst ?? []
+  const troubled = places.filter(({ status }) => status === 'fails' || status === 'near')
+  const shown = all || troubled.length === 0 ? places : troubled
+  const rest = places.length - troubled.length
   return (
-    <ul className="cw-worst" aria-label="Worst places of the panel">
-      {(check.worst ?? []).map((worst) => (
-        <Place key={worst.id} worst={worst} />
-      ))}
-    </ul>
+    <div className="cw-worst">
+      <ul aria-label="Worst places of the panel">
+        {shown.map((worst) => (
+          <Place key={worst.id} worst={worst} />
+        ))}
+      </ul>
+      {troubled.length > 0 && rest > 0 && (
+        <button type="button" className="cw-link cw-worst-rest" tabIndex={-1} aria-expanded={all} onClick={() => setAll(!all)}>
+          {all ? 'Only what is not inside its limit' : `${rest} more inside their limits`}
+        </button>
+      )}
+    </div>
   )
 }
 
@@ -33,7 +45,6 @@ function Place({ worst }: { readonly worst: Worst }) {
     const problems = goToPositions(`Go to ${label.toLowerCase()}`, worst.positions)
     setRefused(problems.length === 0 ? null : refusedAt(worst, problems))
   }
-  const at = Object.entries(worst.at)
   return (
     <li className="cw-worst-place" data-status={worst.status}>
       <p className="cw-worst-head">
@@ -43,15 +54,11 @@ function Place({ worst }: { readonly worst: Worst }) {
         <span>{label}</span>
         <span className="cw-worst-figure">{checkFigure({ ...worst, unit })}</span>
       </p>
+      <p className="cw-worst-text">{worst.text}</p>
       <p className="cw-worst-where">
-        {STATUS_WORD[worst.status]} · {placesWords(set, worst.positions)}
+        {STATUS_WORD[worst.status]} · <span title={HOW_KNOWN[worst.by].title}>{HOW_KNOWN[worst.by].word}</span> ·{' '}
+        {placesWords(set, worst.positions, worst.at)}
       </p>
-      {at.length > 0 && (
-        <p className="cw-worst-where">
-          {at.map(([path, value]) => `${parameterLabel(path).toLowerCase()} ${valueWords(path, value)}`).join(', ')}
-        </p>
-      )}
-      <p className="cw-worst-where">{HOW_KNOWN[worst.by]}</p>
       <div className="cw-field-ways">
         <button type="button" className="cw-button" tabIndex={-1} aria-label={`Go there: ${label}`} onClick={go}>
           Go there
@@ -74,11 +81,11 @@ function Place({ worst }: { readonly worst: Worst }) {
   )
 }
 
-const HOW_KNOWN: Readonly<Record<Worst['by'], string>> = {
-  corners: 'worst corner of the knobs, the figure being monotone in each',
-  intervals: 'bounded over intervals of every knob',
-  samples: 'worst of the positions tried',
-  'rendered corners': 'worst of the corners rendered',
+const HOW_KNOWN: Readonly<Record<Worst['by'], { readonly word: string; readonly title: string }>> = {
+  corners: { word: 'a corner', title: 'In each knob the figure only grows or falls: its worst lies at a corner' },
+  intervals: { word: 'a bound', title: 'Bounded over intervals of every knob' },
+  samples: { word: 'of those tried', title: 'The worst of the positions tried; nothing is shown of those between' },
+  'rendered corners': { word: 'a rendered corner', title: 'The worst of the corners rendered' },
 }
 
 interface Refused {

@@ -44,14 +44,17 @@ export function placeWords(position: number): string {
   return `at ${position.toFixed(2)}`
 }
 
-/** "Regrowth at its right end, Tone at 0.50", for the knobs there are. */
-export const placesWords = (set: ParameterSet, positions: readonly number[]): string =>
+/** "Regrowth at its right end, 1.05; Tone at 0.50, 6000 Hz", for the knobs there are and the values `at` knows. */
+export const placesWords = (set: ParameterSet, positions: readonly number[], at: Readonly<Record<string, unknown>>): string =>
   set.panel
     .flatMap((knob, index) => {
       const position = positions[index]
-      return position === undefined ? [] : [`${knobName(knob, index)} ${placeWords(position)}`]
+      if (position === undefined) return []
+      const values = knob.moves.map(({ parameter: path }) => path).filter((path) => at[path] !== undefined)
+      const given = values.map((path) => valueWords(path, at[path])).join(', ')
+      return [`${knobName(knob, index)} ${placeWords(position)}${given === '' ? '' : `, ${given}`}`]
     })
-    .join(', ')
+    .join('; ')
 
 /** Why an edit of the panel cannot stand, in a sentence; `set` is what it would have become. */
 export function whyNotPanel(problem: Problem, set: ParameterSet | null): string {

@@ -93,8 +93,10 @@ describe('the panel in words', () => {
   })
 
   it('places by the knobs’ names', () => {
-    expect(placesWords(set, [0, 1])).toBe('Speed at its left end, Blend at its right end')
-    expect(placesWords(set, [0.25, 0.5])).toBe('Speed at 0.25, Blend at 0.50')
+    expect(placesWords(set, [0, 1], {})).toBe('Speed at its left end; Blend at its right end')
+    expect(placesWords(set, [0.25, 0.5], { 'sweep.rateHz': 2, 'mix.wet': 0.5, 'mix.invertRight': true })).toBe(
+      'Speed at 0.25, 2.00\u00a0Hz; Blend at 0.50, 0.50, on',
+    )
   })
 
   it('refusals without paths', () => {
