@@ -135,7 +135,7 @@ test('a filter is switched on where it last stood', async ({ page }) => {
   await toggle.click()
   await expect(field(page, 'Damping')).toHaveValue('off')
   await toggle.click()
-  await expect(field(page, 'Damping')).toHaveValue('6500')
+  await expect(field(page, 'Damping')).toHaveValue('6\u2009500')
 })
 
 test('first notch from … to … sets base and depth so that the response has it there', async ({ page }) => {

@@ -20,7 +20,7 @@ const PADDED: Readonly<Record<string, { readonly below: number; readonly decimal
   '': TWO,
 }
 
-/** "3.50", "−6.00", "6500", "12 000": four significant digits at most, thin spaces, a real minus sign. */
+/** "3.50", "−6.00", "6 500", "12 000": four significant digits at most, thin spaces, a real minus sign. */
 export function showNumber(value: number, { kind, unit }: Pick<NumberSpec, 'kind' | 'unit'>): string {
   const { number } = formatQuantity(value, unit)
   const padded = PADDED[unit]

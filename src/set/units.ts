@@ -92,7 +92,7 @@ const musicalHint = (unit: string) =>
   unit === 'ms' || unit === 's' || unit === 'Hz' ? ', a note such as A3, or a beat such as 1/8 @ 96' : ''
 
 export interface Formatted {
-  /** With a real minus sign (U+2212) and thin spaces (U+2009) between thousands from 10 000 on. */
+  /** With a real minus sign (U+2212) and thin spaces (U+2009) between thousands. */
   readonly number: string
   /** As given; "" for plain numbers. */
   readonly unit: string
@@ -123,6 +123,6 @@ const exponential = (size: number) =>
 
 function grouped(text: string): string {
   const [whole = '', fraction] = text.split('.')
-  const spaced = whole.length > 4 ? whole.replace(/\B(?=(\d{3})+$)/g, '\u2009') : whole
+  const spaced = whole.length > 3 ? whole.replace(/\B(?=(\d{3})+$)/g, '\u2009') : whole
   return fraction === undefined ? spaced : `${spaced}.${fraction}`
 }

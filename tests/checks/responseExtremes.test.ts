@@ -40,7 +40,7 @@ describe('response.extremes', () => {
 
   it('names the figures in a sentence', () => {
     const { text } = run(combSet({ samples: 48, dry: 1, wet: 1 }))
-    expect(text).toBe('First notch at 500 Hz, first peak at 1000 Hz, deepest notch a full null, highest peak 6.02 dB.')
+    expect(text).toBe('First notch at 500 Hz, first peak at 1\u2009000 Hz, deepest notch a full null, highest peak 6.02 dB.')
   })
 
   it('where one end has none it says so', () => {
@@ -64,7 +64,7 @@ describe('response.extremes', () => {
   it('looks no further than half the rate', () => {
     const { working, value } = run(combSet({ samples: 48 }), 8000)
     expect((value as unknown as Value).notches.most).toBe(4)
-    expect(working[0]?.result).toMatch(/up to 4000 Hz/)
+    expect(working[0]?.result).toMatch(/up to 4\u2009000 Hz/)
   })
 
   it('complete working, JSON without loss', () => {

@@ -32,7 +32,7 @@ describe('what follows from a value', () => {
 
   it('a damping: its true −3 dB point', () => {
     // Oracle: cos ω = (4a − 1 − a²)/(2a), a = exp(−2π 6500/48000), computed: 6933 Hz.
-    expect(spaced(notes('loop.dampingHz', withAt(base, 'loop.dampingHz', 6500)))).toEqual(['true −3 dB point 6933 Hz'])
+    expect(spaced(notes('loop.dampingHz', withAt(base, 'loop.dampingHz', 6500)))).toEqual(['true −3 dB point 6\u2009933 Hz'])
     expect(notes('loop.dampingHz')).toEqual([])
   })
 
