@@ -14,7 +14,7 @@ import { panelDetune, panelFusion, panelRange } from './panelBoxSweep.ts'
 import { knownText, valueText } from './panelBoxText.ts'
 import { panelTried } from './panelBoxTried.ts'
 import { CHECKS, type CheckOptions, checkInput, verdictOf } from './registry.ts'
-import type { Check, CheckEntry, CheckFunction, CheckProgress, Mend, WorkingStep } from './types.ts'
+import type { Check, CheckEntry, CheckFunction, CheckProgress, Mend, PanelWorst, WorkingStep } from './types.ts'
 
 const JUDGES: Partial<Record<CheckId, PanelJudge>> = {
   'loop.stability': panelStability,
@@ -79,7 +79,6 @@ function whole(judged: readonly Judged[], mend: readonly Mend[]): Check {
   const worst = judged.map((one) => one.worst)
   const status = verdictOf(worst)
   const [first, ...more] = worst.filter((one) => rankOf(one.status) >= rankOf('near'))
-  const tried = worst.filter(({ by }) => by === 'samples' || by === 'rendered corners').length
   const others =
     more.length === 0
       ? ''
@@ -91,13 +90,16 @@ function whole(judged: readonly Judged[], mend: readonly Mend[]): Check {
     limit: null,
     unit: '',
     label: labelOf('panel.box'),
-    text: first
-      ? `${first.text}${others}`
-      : `${worst.length - tried} checks hold at every knob position${tried > 0 ? `, ${tried} where they were tried` : ''}.`,
+    text: first ? `${first.text}${others}` : allHold(worst),
     working: [SCOPE, ...judged.map(stepOf)],
     ...(mend.length > 0 && { mend }),
     worst,
   }
+}
+
+function allHold(worst: readonly PanelWorst[]): string {
+  const tried = worst.filter(({ by }) => by === 'samples' || by === 'rendered corners').length
+  return `Every check holds: ${worst.length - tried} at all knob positions${tried > 0 ? `, ${tried} where ${tried === 1 ? 'it was' : 'they were'} tried` : ''}.`
 }
 
 const SCOPE: WorkingStep = {
