@@ -13,6 +13,8 @@ export interface CurveRequest {
   readonly amplitude: number
   /** Hz. */
   readonly sampleRate: number
+  /** Harmonics 2 to this. */
+  readonly highest: number
 }
 
 export interface CurveReply {
@@ -58,7 +60,6 @@ const POINTS = 600
 /** Shown beyond the larger of full scale and table. */
 const AIR = 1.12
 const SEEN_APART = 100
-export const HIGHEST_HARMONIC = 9
 const DRIVES = 120
 /** The track of the drive's field. */
 const LEAST_DRIVE = 0.1
@@ -122,26 +123,27 @@ function errorAround(
 let kept: { readonly key: string; readonly against: AgainstDrive } | null = null
 
 /** Does not depend on the drive itself: dragging it costs nothing here. */
-function againstDrive({ shaper, amplitude, sampleRate }: CurveRequest): AgainstDrive {
+function againstDrive(request: CurveRequest): AgainstDrive {
+  const { shaper, amplitude, sampleRate, highest } = request
   const low = Math.min(LEAST_DRIVE, shaper.drive)
   const high = Math.max(MOST_DRIVE, shaper.drive)
   const { drive, tableSize, tableRange, ...rest } = shaper
-  const key = JSON.stringify([rest, amplitude, sampleRate, low, high])
+  const key = JSON.stringify([rest, amplitude, sampleRate, highest, low, high])
   if (kept?.key === key) return kept.against
   const against = atDrives(
-    { shaper, amplitude, sampleRate },
+    request,
     Float64Array.from({ length: DRIVES + 1 }, (_, i) => low * (high / low) ** (i / DRIVES)),
   )
   kept = { key, against }
   return against
 }
 
-function atDrives({ shaper, amplitude, sampleRate }: CurveRequest, drives: Float64Array): AgainstDrive {
-  const sines = Array.from(drives, (drive) => drivenSine({ ...shaper, drive }, amplitude, HIGHEST_HARMONIC))
+function atDrives({ shaper, amplitude, sampleRate, highest }: CurveRequest, drives: Float64Array): AgainstDrive {
+  const sines = Array.from(drives, (drive) => drivenSine({ ...shaper, drive }, amplitude, highest))
   const decibels = (of: (i: number) => number | null) => drives.map((_, i) => of(i) ?? Number.NaN)
   return {
     drives,
-    harmonics: Array.from({ length: HIGHEST_HARMONIC - 1 }, (_, k) => decibels((i) => harmonicDb(sines[i]!, k + 2))),
+    harmonics: Array.from({ length: highest - 1 }, (_, k) => decibels((i) => harmonicDb(sines[i]!, k + 2))),
     distortion: decibels((i) => totalDistortion(sines[i]!)),
     dcDb: decibels((i) => {
       const dc = Math.abs(sines[i]!.amplitudes[0] as number)

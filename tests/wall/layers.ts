@@ -20,6 +20,7 @@ const PURE = [...BELOW_CHECKS, 'src/media', 'src/checks', 'src/handover', 'src/c
 const CLIENTS = [
   'app/workers/analysisClient.ts',
   'app/workers/analysisProtocol.ts',
+  'app/workers/curveClient.ts',
   'app/workers/materialClient.ts',
   'app/workers/materialProtocol.ts',
 ]

@@ -4,13 +4,13 @@ import type { PresentShaper } from '../../../src/checks/shaperFigures.ts'
 import { currentSet, subscribeSet } from '../../state/current.ts'
 import { onFrame } from '../../state/frames.ts'
 import { useView } from '../../state/view.ts'
+import { openCurveFeed } from '../../workers/curveClient.ts'
 import type { MountedPlot, PlotPlace } from '../plotTypes.ts'
 import { readingLine } from '../readingLine.ts'
 import { chosenShaper } from './chosenShaper.ts'
-import { openCurveFeed } from './curveFeed.ts'
 import type { CurveView } from './curveView.ts'
 import { NO_SHAPER, type Shown } from './curveWords.ts'
-import { mountHarmonics } from './harmonicsView.ts'
+import { HIGHEST_HARMONIC, mountHarmonics } from './harmonicsView.ts'
 import { mountTransfer } from './transferView.ts'
 
 const VIEWS = { transfer: { label: 'Transfer', mount: mountTransfer }, harmonics: { label: 'Harmonics', mount: mountHarmonics } } as const
@@ -56,7 +56,7 @@ export function mountCurve({ element, reading }: PlotPlace): MountedPlot {
     else if (next.path !== chosen?.path) shown = null
     chosen = next
     name.textContent = next ? next.name.charAt(0).toUpperCase() + next.name.slice(1) : 'No shaper'
-    if (next) feed.ask({ shaper: next.shaper, amplitude: next.amplitude, sampleRate: set.sampleRate })
+    if (next) feed.ask({ shaper: next.shaper, amplitude: next.amplitude, sampleRate: set.sampleRate, highest: HIGHEST_HARMONIC })
     if (shown === null) draw()
   }
 

@@ -1,6 +1,5 @@
 // Levels of a driven sine's harmonics against drive; DC and what folds (dashed); the shaper's own drive as a line.
 
-import { HIGHEST_HARMONIC } from '../../workers/curveJob.ts'
 import { axis, evenSplits } from '../host/axes.ts'
 import { cornerText, middleText } from '../host/corner.ts'
 import { createPlot, type Layer } from '../host/createPlot.ts'
@@ -10,6 +9,8 @@ import { decimal } from '../words.ts'
 import type { CurvePlace, CurveView } from './curveView.ts'
 import { driveIndex, driveWords, harmonicsNumbers, harmonicsSummary, harmonicsTable } from './curveWords.ts'
 
+/** Harmonics drawn, 2 to this. */
+export const HIGHEST_HARMONIC = 9
 const LOWEST_DB = -100
 const HIGHEST_DB = 6
 

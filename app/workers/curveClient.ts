@@ -1,5 +1,5 @@
 // The Curve plot's way to its worker: one request under way, of those that come meanwhile only the latest is kept.
-import type { CurveReply, CurveRequest } from '../../workers/curveJob.ts'
+import type { CurveReply, CurveRequest } from './curveJob.ts'
 
 export interface CurveFeed {
   ask(request: CurveRequest): void
@@ -13,7 +13,7 @@ export function openCurveFeed(onReply: (reply: CurveReply) => void, onFailure: (
 
   function started(): Worker {
     if (worker) return worker
-    const made = new Worker(new URL('../../workers/curve.worker.ts', import.meta.url), { type: 'module', name: 'curve' })
+    const made = new Worker(new URL('./curve.worker.ts', import.meta.url), { type: 'module', name: 'curve' })
     made.onmessage = ({ data }: MessageEvent<CurveReply>) => {
       busy = false
       const next = waiting
