@@ -31,7 +31,7 @@ export interface LargestGain {
 /** Found and bound closer than this are one figure: 0.009 dB. */
 const SAME = 0.999
 /** Reads that may be evaluated over all rows, at 10 to 20 ns each, and positions a row has at most. */
-const BUDGET = 200_000
+const BUDGET = 400_000
 const MOST_POSITIONS = 128
 const POINTS_PER_TOOTH = 6
 /** Rows looked at before the best places among them are followed. */

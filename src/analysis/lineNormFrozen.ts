@@ -33,10 +33,12 @@ export function impulseNorm(frozen: Frozen, most: number): ImpulseNorm {
   const perLine = frozen.channels.map(({ voices, wet }) => lineGain(frozen, voices, wet))
   const runs = strikes(frozen).map((strike) => runOut(frozen, strike, { most, perLine }))
   const again = Math.max(...runs.map(({ tail }) => tail.again))
+  // What comes before the line is a gain; an averaging shaper there only takes away.
+  const struck = frozen.inputGain * frozen.input.slope
   const total = again < 1 ? Math.max(...runs.map(({ run }) => lineTotal(run))) / (1 - again) : null
   const sumOf = (sums: (run: ImpulseRun) => number, waits: (tail: Tail) => number): NormSum => {
-    const sum = runs.reduce((all, { run }) => all + sums(run), 0)
-    return { sum, bound: total === null ? null : runs.reduce((all, { run, tail }) => all + sums(run) + waits(tail), 0) }
+    const sum = struck * runs.reduce((all, { run }) => all + sums(run), 0)
+    return { sum, bound: total === null ? null : sum + struck * runs.reduce((all, { tail }) => all + waits(tail), 0) }
   }
   return {
     outputs: frozen.channels.map((_, c) =>

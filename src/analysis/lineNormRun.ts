@@ -39,17 +39,14 @@ export interface ImpulseRun {
   readonly lineSums: Float64Array
 }
 
-/** A run from rest with an impulse of size `strike[l]` at the input of line l; `reach`: samples behind the newest that anything reads. */
+/** A run from rest with an impulse of size `strike[l]` as u of line l, the gain and shaper of the input apart; `reach`: samples behind the newest that anything reads. */
 export function startRun(frozen: Frozen, strike: readonly number[], reach: number): ImpulseRun {
   const pad = reach + 4
   const history = () => Array.from({ length: frozen.lines }, () => new Float64Array(pad + 2 * reach + 64))
   const toneState = (tone: FrozenTone): ToneState => ({ tone, memory: new Float64Array(3) })
   const u = history()
-  const { input, inputGain } = frozen
   u.forEach((x, l) => {
-    const size = inputGain * input.slope * (strike[l] as number)
-    if (input.averaged) x.fill(size / 2, pad, pad + 2)
-    else x[pad] = size
+    x[pad] = strike[l] as number
   })
   return {
     frozen,
