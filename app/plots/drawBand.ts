@@ -44,15 +44,18 @@ function edge(path: Path2D, box: PlotBox, levels: Levels, values: Float64Array, 
 const WASH = 0.12
 const OUTLINE = 0.35
 
+/** What is left of a wash that is of an older set. */
+const PALE = 0.3
+
 /** Wash and outline of everything the sweep reaches, over all columns. */
-export function drawWash({ ctx, box, theme, levels }: Surface, band: Band): void {
+export function drawWash({ ctx, box, theme, levels, pale }: Surface, band: Band): void {
   clipTo(ctx, box)
   const count = band.low.length
   ctx.fillStyle = theme.now
   ctx.strokeStyle = theme.now
-  ctx.globalAlpha = WASH
+  ctx.globalAlpha = pale ? PALE * WASH : WASH
   ctx.fill(bandFill(box, levels, band, count))
-  ctx.globalAlpha = OUTLINE
+  ctx.globalAlpha = pale ? PALE * OUTLINE : OUTLINE
   ctx.lineWidth = box.ratio
   ctx.stroke(bandEdges(box, levels, band, count))
 }

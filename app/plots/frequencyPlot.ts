@@ -15,6 +15,7 @@ import type { PlotTheme } from './host/theme.ts'
 import type { Levels } from './levels.ts'
 import type { MountedPlot, PlotNumbers, PlotPlace, PlotTable } from './plotTypes.ts'
 import { readingLine } from './readingLine.ts'
+import { COMPUTED, RENEWED, staleness } from './staleness.ts'
 import { decimal } from './words.ts'
 
 /** The kinds of job that answer frame by frame, and the one for the whole sweep beside each. */
@@ -51,9 +52,9 @@ export interface Surface {
   readonly box: PlotBox
   readonly theme: PlotTheme
   readonly levels: Levels
+  /** Of an older set. */
+  readonly pale?: boolean
 }
-
-const COMPUTED = 'being computed'
 
 export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec: FrequencyPlotSpec<L, W>, place: PlotPlace): MountedPlot {
   const { element, reading } = place
@@ -86,8 +87,9 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
   )
   const wholes = analysis().openFeed(
     spec.whole,
-    (reply) => {
+    (reply, { set }) => {
       whole = reply
+      age.shows(set)
       line.changed()
       fitLevels()
       plot.redraw()
@@ -113,12 +115,12 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
     series: [{ scale: 'level', show: false }],
     data: ends(columns),
     under: (ctx, box, theme) => {
-      if (whole) spec.drawWhole({ ctx, box, theme, levels }, whole)
+      if (whole) spec.drawWhole({ ctx, box, theme, levels, pale: age.isStale() }, whole)
     },
     over: (ctx, box, theme) => {
       cornerText(ctx, box, theme, 'topLeft', 'dB')
     },
-    legend: () => legend,
+    legend: () => (age.isStale() ? `${legend}${RENEWED}` : legend),
     live: (ctx, box, theme) => {
       if (problem !== '') middleText(ctx, box, theme, problem)
       else if (live) spec.drawLive({ ctx, box, theme, levels }, live)
@@ -159,6 +161,7 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
     reading(cursor === null ? rest : `${underCursor(cursor)}\u2003${rest}`)
   }
 
+  const age = staleness(() => plot.redraw())
   const line = readingLine(read)
   const stopDrawing = onFrame(() => {
     const set = currentSet()
@@ -185,6 +188,7 @@ export function mountFrequencyPlot<L extends LiveKind, W extends WholeKind>(spec
     destroy() {
       stopDrawing()
       line.stop()
+      age.stop()
       stopSet()
       lives.stop()
       wholes.stop()

@@ -33,16 +33,19 @@ const SUPERSCRIPT: Readonly<Record<string, string>> = {
 export function scientific(value: number, digits: number): string {
   if (value === 0) return '0'
   const power = Math.floor(Math.log10(Math.abs(value)) + 1e-12)
-  if (power >= -2 && power <= 3)
-    return decimal(value, Math.max(0, digits - 1 - power))
-      .replace(/(\.\d*?)0+$/, '$1')
-      .replace(/\.$/, '')
-  const mantissa = decimal(value / 10 ** power, digits - 1).replace(/\.0+$/, '')
+  if (power >= -2 && power <= 3) return short(value, Math.max(0, digits - 1 - power))
+  const mantissa = short(value / 10 ** power, digits - 1)
   const exponent = [...String(power)].map((sign) => SUPERSCRIPT[sign]).join('')
   return mantissa === '1' ? `10${exponent}` : `${mantissa} × 10${exponent}`
 }
 
-/** "x −0.42 → −0.781 · table off by −95.2 dB" */
+/** Without zeros at its end. */
+const short = (value: number, decimals: number): string => {
+  const text = decimal(value, decimals)
+  return text.includes('.') ? text.replace(/\.?0+$/, '') : text
+}
+
+/** "−0.420 → −0.781 · table off by −95.2 dB" */
 export function transferCursorWords({ transfer }: CurveReply, part: number): string {
   const i = Math.round(part * (transfer.x.length - 1))
   const off = transfer.error[i] as number

@@ -14,6 +14,7 @@ import type { PlotTheme } from '../host/theme.ts'
 import type { Levels } from '../levels.ts'
 import type { MountedPlot, PlotPlace } from '../plotTypes.ts'
 import { readingLine } from '../readingLine.ts'
+import { COMPUTED, RENEWED, staleness } from '../staleness.ts'
 import { nowMarker } from '../sweep/nowMarker.ts'
 import '../sweep/sweep.css'
 import './map.css'
@@ -24,23 +25,18 @@ import { frequencyHair } from './frequencyHair.ts'
 import { cellPicture, scalePicture, shadeLevels, themeShades } from './mapPicture.ts'
 import { firstNotchAt, mapLegend, mapNumbers, mapSummary, mapTable, placeWords, restWords } from './mapWords.ts'
 
-const COMPUTED = 'being computed'
 const HEAD_PX = 26
 /** A first picture with few positions at once, the whole one when nothing has changed for a while. */
 const COARSE = { positions: 48, rowPx: 3 }
 const CELL_PX = 2
 const MOST_POSITIONS = 400
 const REST_MS = 200
-/** An old picture pales after this long. */
-const STALE_MS = 300
 
 export function mountMap({ element, reading }: PlotPlace): MountedPlot {
   let size = { widthPx: element.clientWidth, heightPx: element.clientHeight }
   let rows = rowsOf(size.heightPx)
   let map: SweepMap | null = null
   let shownSet = currentSet()
-  let changedMs = performance.now()
-  let stale = false
   let levels: Levels = { minDb: -24, maxDb: 6 }
   let problem = ''
   let channel = 0
@@ -58,7 +54,7 @@ export function mountMap({ element, reading }: PlotPlace): MountedPlot {
       shownSet = request.set
       problem = ''
       picture = null
-      stale = false
+      age.shows(request.set)
       levels = shadeLevels(reply)
       placed = Number.NaN
       choice.offer(reply.differs)
@@ -85,9 +81,9 @@ export function mountMap({ element, reading }: PlotPlace): MountedPlot {
       const shades = themeShades(theme)
       picture = { theme, cells: cellPicture(map, channel, levels, shades), scale: scalePicture(shades) }
     }
-    drawCells(surface, picture.cells, stale)
+    drawCells(surface, picture.cells, age.isStale())
     drawScale(surface, picture.scale)
-    if (!stale) drawTracks(surface, map.tracks)
+    if (!age.isStale()) drawTracks(surface, map.tracks)
   }
   const shadeAxis = axis({
     scale: 'shade',
@@ -134,7 +130,7 @@ export function mountMap({ element, reading }: PlotPlace): MountedPlot {
     over: (ctx, box, theme) => {
       if (problem !== '' || !map) middleText(ctx, box, theme, problem === '' ? COMPUTED : problem)
     },
-    legend: () => (map ? mapLegend(map) : ''),
+    legend: () => (map ? `${mapLegend(map)}${age.isStale() ? RENEWED : ''}` : ''),
     onCursor: (part) => {
       across = part
       read()
@@ -200,24 +196,20 @@ export function mountMap({ element, reading }: PlotPlace): MountedPlot {
     )
   }
 
-  function frame(timeMs: number) {
-    if (!stale && map && shownSet !== currentSet() && timeMs - changedMs > STALE_MS) {
-      stale = true
-      plot.redraw()
-    }
+  function frame() {
     const position = shownPosition()
     if (position === placed) return
     placed = position
     line.changed()
-    const hz = map && !stale ? firstNotchAt(map, position) : null
+    const hz = map && !age.isStale() ? firstNotchAt(map, position) : null
     marker.place(position * size.widthPx, hz === null ? null : (1 - partOf(rows, hz)) * size.heightPx)
   }
 
+  const age = staleness(() => plot.redraw())
   const line = readingLine(read)
   const stopFrames = onFrame(frame)
   const stopView = useView.subscribe(line.changed)
   const stopSet = subscribeSet(() => {
-    changedMs = performance.now()
     rows = rowsOf(size.heightPx)
     ask()
   })
@@ -234,6 +226,7 @@ export function mountMap({ element, reading }: PlotPlace): MountedPlot {
       stopView()
       stopSet()
       line.stop()
+      age.stop()
       feed.stop()
       choice.destroy()
       hair.destroy()
