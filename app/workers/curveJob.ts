@@ -88,6 +88,7 @@ function transferOf(shaper: Shaper): Transfer {
     x,
     y: x.map(curve),
     error: x.map((at) => {
+      if (figures.largest === 0) return Math.abs(at) > table.range ? Number.NaN : 0
       const near = corners.filter((corner) => Math.abs(corner.x - at) <= half).map((corner) => error(corner.x))
       return Math.max(errorAround(error, at, half, table), ...near)
     }),

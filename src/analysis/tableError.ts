@@ -6,7 +6,7 @@ import { bendPlaces, beyondEnds, shaperCorners, steepestBend, worstCorners } fro
 
 export interface TableError {
   readonly table: ShaperTable
-  /** Largest |table(x) − shaper(x)| over ±tableRange, and where. */
+  /** Largest |table(x) − shaper(x)| over ±tableRange, and where; 0 where the two agree to rounding. */
   readonly largest: number
   readonly at: number
   /** What it cannot exceed. */
@@ -36,18 +36,22 @@ export function tableError(p: Shaper): TableError {
   // An odd table's middle points are not the curve's own where its halves differ.
   const moved = p.tableSize % 2 === 1 ? Math.abs(curve(table.step / 2) + curve(-table.step / 2)) / 2 : 0
   if (moved > 0) places.push(-table.step / 2, table.step / 2)
-  let largest = 0
+  // Below this there is only rounding: such a table is exact.
+  let largest = ROUNDING * table.values.reduce((most, value) => Math.max(most, Math.abs(value)), 0)
+  const least = largest
   let at = 0
   for (const x of places) {
     if (error(x) <= largest) continue
     largest = error(x)
     at = x
   }
+  if (largest === least) largest = 0
   const measure = straight(p) ? worstCorners(corners, table.step) : steepestBend(p, table.range)
   const bound = moved + (straight(p) ? (table.step * measure) / 4 : (table.step * table.step * measure) / 8)
   return { table, largest, at, bound, boundBy: straight(p) ? 'corners' : 'bend', measure, beyond: beyondEnds(p, table.range, curve) }
 }
 
+const ROUNDING = 1e-14
 /** Up to this many intervals are all looked at. */
 const ALL = 4096
 /** Beside each special place when there are more: past them the error only falls. */
