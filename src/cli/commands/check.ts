@@ -9,6 +9,7 @@ import { readChoice, readNumberOption } from '../arguments.ts'
 import { checkReport } from '../checkReport.ts'
 import { EXIT_CHECK, EXIT_GOOD } from '../failure.ts'
 import { readSetFile } from '../files.ts'
+import { readMaterial } from '../material.ts'
 import { printJson } from '../output.ts'
 import type { Session } from '../program.ts'
 import { runSteps } from '../runSteps.ts'
@@ -16,6 +17,7 @@ import { runSteps } from '../runSteps.ts'
 interface CheckOptions {
   readonly rate?: string
   readonly panel?: boolean
+  readonly material?: string
   readonly failOn: string
   readonly working?: boolean
   readonly json?: boolean
@@ -30,6 +32,7 @@ export function addCheck(program: Command, session: Session): void {
     .argument('<set>', 'a set file')
     .option('--rate <hz>', `judge it as if run at this rate, ${RATE.min} to ${RATE.max} Hz`)
     .option('--panel', 'judge it at every position of its knobs as well: adds panel.box, which names the worst places')
+    .option('--material <file>', 'measure loudness on this WAV file instead of the built-in plucked chords')
     .option('--fail-on <status>', 'exit 1 on fails, or already on near', 'fails')
     .option('--working', 'print the working of every check, not only of those that fail or are near')
     .option('--json', 'print { set, verdict, checks } as JSON')
@@ -41,7 +44,8 @@ export function addCheck(program: Command, session: Session): void {
       const failOn = readChoice(options.failOn, '--fail-on', ['fails', 'near'])
       const sampleRate = options.rate === undefined ? undefined : readNumberOption(options.rate, { ...RATE, name: '--rate' })
       const set = readSetFile(file)
-      const checks = judged(set, { sampleRate }, options.panel ?? false)
+      const material = options.material === undefined ? undefined : readMaterial(options.material, set, sampleRate ?? set.sampleRate)
+      const checks = judged(set, { sampleRate, material }, options.panel ?? false)
       const verdict = verdictOf(checks)
       if (options.json) printJson({ set: set.name, verdict, checks: checks.map(inOrder) })
       else process.stdout.write(checkReport(set, checks, options))
