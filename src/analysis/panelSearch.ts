@@ -38,6 +38,8 @@ export interface PanelFind {
 const MOST_SPLITS = 300
 const MOST_LISTED = 128
 const MOST_CORNERS = 64
+/** Sets looked at before a search ends: with its bound where every box was begun, as places tried where not. */
+const MOST_LOOKS = 1500
 const MET = 1e-4
 /** Parts of a turn narrower than this are not split. */
 const NARROW = 1e-7
@@ -72,12 +74,14 @@ function* search(space: PanelSpace, figure: PanelFigure, tidy: boolean): Generat
   const state: Search = { space, figure, looks: 0, knobs: new Set(), places: [] }
   const open: Looked[] = []
   for (const spans of boxes) {
+    if (state.looks > MOST_LOOKS) break
     open.push(look(state, spans))
     yield
   }
+  const begun = all && open.length === boxes.length
   const found = () => state.places[0]?.value ?? Number.NEGATIVE_INFINITY
   let splits = 0
-  for (; splits < MOST_SPLITS; splits++) {
+  for (; splits < MOST_SPLITS && state.looks <= MOST_LOOKS; splits++) {
     const worst = open.reduce((a, b) => (b.bound > a.bound ? b : a))
     if (worst.split === null || met(figure, worst.bound, found())) break
     open.splice(open.indexOf(worst), 1)
@@ -85,7 +89,7 @@ function* search(space: PanelSpace, figure: PanelFigure, tidy: boolean): Generat
     yield
   }
   const bound = Math.max(found(), ...open.map((box) => box.bound))
-  const picked = !all || open.some((box) => box.picked)
+  const picked = !begun || open.some((box) => box.picked)
   const exact = splits === 0 && met(figure, bound, found())
   const worst = state.places[0]?.positions ?? space.own
   const { positions, knobs } = tidy ? needed(state, worst, found()) : { positions: worst, knobs: [] }

@@ -10,6 +10,7 @@ import type { Bench, Row } from './bench.ts'
 const BENCHES: Readonly<Record<string, () => Promise<Bench>>> = {
   engine: async () => (await import('./engine.ts')).engineBench,
   allocation: async () => (await import('./allocation.ts')).allocationBench,
+  checks: async () => (await import('./checks.ts')).checksBench,
   'page-worklet': async () => (await import('./page-worklet.ts')).pageWorklet,
   'page-worklet-live': async () => (await import('./page-worklet-live.ts')).pageWorkletLive,
   'page-frame': async () => (await import('./page-frame.ts')).pageFrame,
