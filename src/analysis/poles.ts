@@ -80,21 +80,45 @@ function poleOfPair(pair: LoopPair, certify: boolean, quick: boolean): Bounded |
   return found === null ? null : { ...found.pole, bound: found.bound }
 }
 
+/** Branches looked through for the slowest: of one line, and of crossed lines, where each costs four Newton runs. */
+const BRANCHES = 400
+const PAIR_BRANCHES = 30
+const HIGHEST_HZ = 20000
+
+/**
+ * The `count` slowest resonances of a frozen loop, slowest first, and how far up they were looked for, Hz: 20 kHz, or the first 400 (crossed lines: 30)
+ * of them. sampleRate in Hz.
+ */
+export function slowestResonances(loop: FrozenLoop, sampleRate: number, count: number): { found: Resonance[]; upToHz: number } {
+  const { lines, pair } = loopParts(loop)
+  const delay = Math.max(1, ...loop.reads.map((read) => read.delaySamples))
+  const upToHz = Math.min(
+    HIGHEST_HZ,
+    sampleRate / 2,
+    ((pair ? PAIR_BRANCHES : BRANCHES) * sampleRate) / (delay * Math.max(1, lines.length)),
+  )
+  const found = resonancesOf({ lines, pair }, sampleRate, upToHz)
+  return { found: found.sort((a, b) => b.lnRadius - a.lnRadius).slice(0, count), upToHz }
+}
+
 /** Every resonance up to maxHz (0 to fs/2), ascending in frequency. */
 export function resonances(frozen: Frozen, maxHz: number): Resonance[] {
   if (!(maxHz >= 0 && maxHz <= frozen.sampleRate / 2))
     throw new RangeError(`maxHz must be in [0, ${frozen.sampleRate / 2}] Hz, got ${maxHz}`)
-  const maxTheta = (2 * Math.PI * maxHz) / frozen.sampleRate
-  const { lines, pair } = loopParts(frozen.loop)
+  return resonancesOf(loopParts(frozen.loop), frozen.sampleRate, maxHz)
+}
+
+function resonancesOf({ lines, pair }: ReturnType<typeof loopParts>, sampleRate: number, maxHz: number): Resonance[] {
+  const maxTheta = (2 * Math.PI * maxHz) / sampleRate
   const poles = lines.flatMap((line) => allPolesOfLine(line, maxTheta))
   if (pair !== null) poles.push(...distinctPoles(allPolesOfPair(pair, maxTheta), pairDelay(pair)))
   return poles
     .filter((pole) => pole.theta <= maxTheta)
     .sort((a, b) => a.theta - b.theta)
     .map(({ x, theta }) => ({
-      frequencyHz: (theta * frozen.sampleRate) / (2 * Math.PI),
+      frequencyHz: (theta * sampleRate) / (2 * Math.PI),
       radius: Math.exp(x),
       lnRadius: x,
-      ringSeconds: ringSeconds(x, frozen.sampleRate),
+      ringSeconds: ringSeconds(x, sampleRate),
     }))
 }

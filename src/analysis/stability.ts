@@ -2,6 +2,7 @@
 // a moving delay, so the proofs go through norms; every number a proof uses is kept for the working.
 import type { ParameterSet } from '../set/types.ts'
 import { freeze } from './frozen.ts'
+import { largestCrossing } from './loopCrossing.ts'
 import { loopParts } from './loopPair.ts'
 import { type LoopMovement, loopMovement } from './movingRead.ts'
 import { type CertifiedNorm, certifiedNorm } from './movingReadNorm.ts'
@@ -40,8 +41,11 @@ export interface Stability extends LoopGains {
   /** Certified N and γN = |g| σ max|F| N; null where they were not needed or cannot be had. */
   readonly norm: CertifiedNorm | null
   readonly gammaN: number | null
-  /** The smallest loop gain that is certified while the loop moves; null where none is. */
-  readonly certified: { readonly name: 'γ∞' | 'γ2' | 'γN' | 'max|L|'; readonly value: number } | null
+  /**
+   * The smallest loop gain that is certified while the loop moves; null where none is. Of a loop that stands still, `max|L|`, its largest gain, or where that
+   * passes 1 and its poles prove it all the same, `|L| in phase`, the largest gain at which it comes back in phase.
+   */
+  readonly certified: { readonly name: 'γ∞' | 'γ2' | 'γN' | 'max|L|' | '|L| in phase'; readonly value: number } | null
   /** Level the line stays below for an input within ±1, where the word is `frozen` or `bounded` and there is one. */
   readonly level: number | null
   /** Largest pole over the sweep, where the word needed it. */
@@ -113,7 +117,7 @@ export function provenStability(set: ParameterSet, sampleRate = set.sampleRate, 
   if (feedback * sector.bound === 0) return proven('noLoop', null)
   if (!movement.moves && set.loop.shaper === null) {
     const pole = stillPole(set, sampleRate)
-    return pole === null ? null : proven('poles', frozenGain < 1 ? smallestGain(gains) : null, pole)
+    return pole === null ? null : proven('poles', frozenGain < 1 ? smallestGain(gains) : inPhaseGain(set, sampleRate), pole)
   }
   if (gammaInfinity < 1) return proven('peak')
   if (gamma2 !== null && gamma2 < 1) return proven('energy')
@@ -127,6 +131,13 @@ function stillPole(set: ParameterSet, sampleRate: number): SweptPole | null {
   const { pair } = loopParts(freeze(set, set.sweep.startPhase, sampleRate).loop)
   // Crossed lines too long to be searched through are counted round the circle.
   return pair !== null && pole.lnBound >= 0 && pairPolesOutside(pair, 0) > 0 ? null : pole
+}
+
+/** Largest |L| of a still loop where L is real and positive, if that is below 1: so far the feedback may be raised (Nyquist). Not known of crossed lines. */
+function inPhaseGain(set: ParameterSet, sampleRate: number): Stability['certified'] {
+  const { lines, pair } = loopParts(freeze(set, set.sweep.startPhase, sampleRate).loop)
+  const value = pair === null ? Math.max(...lines.map(largestCrossing)) : Number.POSITIVE_INFINITY
+  return value < 1 ? { name: '|L| in phase', value } : null
 }
 
 function weakerWord(set: ParameterSet, sampleRate: number, gains: LoopGains): Pick<Stability, 'word' | 'proof' | 'level' | 'pole'> {

@@ -1,10 +1,10 @@
 // The one table of limits. `holds` inside the limit, `near` within the margin of it, `outside` beyond it.
 // A set's own `limits` replaces the limit by id; the margin stays.
-import type { CHECK_IDS } from '../set/checkIds.ts'
+import { CHECK_IDS, type CheckId, type LimitableId } from '../set/checkIds.ts'
 import type { ParameterSet } from '../set/types.ts'
 import type { Status } from './types.ts'
 
-export type CheckId = (typeof CHECK_IDS)[number]
+export type { CheckId } from '../set/checkIds.ts'
 
 export interface LimitRow {
   readonly id: CheckId
@@ -21,13 +21,17 @@ export interface LimitRow {
   readonly source: string
 }
 
+/** A check that a set may limit has a sense, the others have none: what set validation refuses and what is judged cannot disagree. */
+type Rows = {
+  readonly [Id in CheckId]: Omit<LimitRow, 'id' | 'sense'> & { readonly sense: Id extends LimitableId ? 'atMost' | 'atLeast' : 'none' }
+}
+
 const q15 = (set: ParameterSet): boolean => set.target.numberFormat === 'q15'
 const practice = 'common practice, no source'
 const ours = 'this project’s choice'
 
-const ROWS: readonly LimitRow[] = [
-  {
-    id: 'loop.stability',
+const ROWS: Rows = {
+  'loop.stability': {
     label: 'Stability under the sweep',
     unit: '',
     sense: 'none',
@@ -36,8 +40,7 @@ const ROWS: readonly LimitRow[] = [
     outside: 'fails',
     source: 'small-gain theorem; frozen poles alone prove nothing about a moving delay',
   },
-  {
-    id: 'loop.margin',
+  'loop.margin': {
     label: 'Loop gain margin',
     unit: 'dB',
     sense: 'atLeast',
@@ -46,8 +49,7 @@ const ROWS: readonly LimitRow[] = [
     outside: 'fails',
     source: `0 dB: small-gain theorem; margin: ${ours}`,
   },
-  {
-    id: 'loop.poles',
+  'loop.poles': {
     label: 'Largest pole radius',
     unit: '',
     sense: 'none',
@@ -56,9 +58,8 @@ const ROWS: readonly LimitRow[] = [
     outside: 'note',
     source: 'a value, not judged',
   },
-  { id: 'loop.ring', label: 'Longest ring', unit: 's', sense: 'atMost', limit: 3, margin: 0, outside: 'near', source: practice },
-  {
-    id: 'response.extremes',
+  'loop.ring': { label: 'Longest ring', unit: 's', sense: 'atMost', limit: 3, margin: 0, outside: 'near', source: practice },
+  'response.extremes': {
     label: 'Notches and peaks',
     unit: 'Hz',
     sense: 'none',
@@ -67,8 +68,7 @@ const ROWS: readonly LimitRow[] = [
     outside: 'note',
     source: 'values, not judged',
   },
-  {
-    id: 'sweep.range',
+  'sweep.range': {
     label: 'Delay range',
     unit: 'ms',
     sense: 'none',
@@ -77,8 +77,7 @@ const ROWS: readonly LimitRow[] = [
     outside: 'fails',
     source: 'smallest delay of each interpolator, from its points; margin 1 sample',
   },
-  {
-    id: 'sweep.detune',
+  'sweep.detune': {
     label: 'Largest detune',
     unit: 'cents',
     sense: 'atMost',
@@ -87,9 +86,8 @@ const ROWS: readonly LimitRow[] = [
     outside: 'near',
     source: practice,
   },
-  { id: 'sweep.fusion', label: 'Longest delay', unit: 'ms', sense: 'atMost', limit: 50, margin: 0, outside: 'note', source: practice },
-  {
-    id: 'sweep.steps',
+  'sweep.fusion': { label: 'Longest delay', unit: 'ms', sense: 'atMost', limit: 50, margin: 0, outside: 'note', source: practice },
+  'sweep.steps': {
     label: 'Stepping artefacts',
     unit: 'dB',
     sense: 'atMost',
@@ -98,8 +96,7 @@ const ROWS: readonly LimitRow[] = [
     outside: 'fails',
     source: practice,
   },
-  {
-    id: 'tone.droop',
+  'tone.droop': {
     label: 'Interpolation loss',
     unit: 'dB',
     sense: 'none',
@@ -108,8 +105,7 @@ const ROWS: readonly LimitRow[] = [
     outside: 'note',
     source: 'a value, not judged',
   },
-  {
-    id: 'level.peak',
+  'level.peak': {
     label: 'Worst gain at the output',
     unit: 'dB',
     sense: 'atMost',
@@ -118,8 +114,7 @@ const ROWS: readonly LimitRow[] = [
     outside: 'fails',
     source: 'the set’s target.headroomDb',
   },
-  {
-    id: 'level.line',
+  'level.line': {
     label: 'Worst gain in the line',
     unit: 'dB',
     sense: 'atMost',
@@ -128,9 +123,8 @@ const ROWS: readonly LimitRow[] = [
     outside: 'fails',
     source: 'the set’s target.headroomDb',
   },
-  { id: 'level.dc', label: 'DC left', unit: 'dBFS', sense: 'atMost', limit: -40, margin: 20, outside: 'fails', source: practice },
-  {
-    id: 'level.loudness',
+  'level.dc': { label: 'DC left', unit: 'dBFS', sense: 'atMost', limit: -40, margin: 20, outside: 'fails', source: practice },
+  'level.loudness': {
     label: 'Loudness against bypass',
     unit: 'LU',
     sense: 'none',
@@ -139,8 +133,7 @@ const ROWS: readonly LimitRow[] = [
     outside: 'note',
     source: 'ITU-R BS.1770; not judged',
   },
-  {
-    id: 'level.mono',
+  'level.mono': {
     label: 'Loss in the mono sum',
     unit: 'dB',
     sense: 'atMost',
@@ -149,8 +142,7 @@ const ROWS: readonly LimitRow[] = [
     outside: 'fails',
     source: practice,
   },
-  {
-    id: 'shaper.harmonics',
+  'shaper.harmonics': {
     label: 'Harmonics of the shapers',
     unit: 'dB',
     sense: 'none',
@@ -159,8 +151,7 @@ const ROWS: readonly LimitRow[] = [
     outside: 'note',
     source: 'values, not judged',
   },
-  {
-    id: 'shaper.alias',
+  'shaper.alias': {
     label: 'Folded energy of the shapers',
     unit: 'dB',
     sense: 'atMost',
@@ -169,8 +160,7 @@ const ROWS: readonly LimitRow[] = [
     outside: 'fails',
     source: practice,
   },
-  {
-    id: 'number.noise',
+  'number.noise': {
     label: 'Noise of the number format',
     unit: 'dBFS',
     sense: 'atMost',
@@ -179,10 +169,9 @@ const ROWS: readonly LimitRow[] = [
     outside: 'fails',
     source: practice,
   },
-  { id: 'number.limitCycle', label: 'Limit cycle', unit: 'LSB', sense: 'atMost', limit: 4, margin: 3, outside: 'fails', source: practice },
-  { id: 'number.saturation', label: 'Saturation', unit: 'hits', sense: 'none', limit: null, margin: 0, outside: 'fails', source: ours },
-  {
-    id: 'target.ram',
+  'number.limitCycle': { label: 'Limit cycle', unit: 'LSB', sense: 'atMost', limit: 4, margin: 3, outside: 'fails', source: practice },
+  'number.saturation': { label: 'Saturation', unit: 'hits', sense: 'none', limit: null, margin: 0, outside: 'fails', source: ours },
+  'target.ram': {
     label: 'RAM',
     unit: '%',
     sense: 'atMost',
@@ -191,8 +180,7 @@ const ROWS: readonly LimitRow[] = [
     outside: 'fails',
     source: `the part; margin: ${ours}`,
   },
-  {
-    id: 'target.flash',
+  'target.flash': {
     label: 'Flash',
     unit: '%',
     sense: 'atMost',
@@ -201,8 +189,7 @@ const ROWS: readonly LimitRow[] = [
     outside: 'fails',
     source: `the part; margin: ${ours}`,
   },
-  {
-    id: 'target.load',
+  'target.load': {
     label: 'Share of the clock',
     unit: '%',
     sense: 'atMost',
@@ -211,8 +198,7 @@ const ROWS: readonly LimitRow[] = [
     outside: 'fails',
     source: `the part; margin: ${ours}`,
   },
-  {
-    id: 'panel.box',
+  'panel.box': {
     label: 'Worst knob position',
     unit: '',
     sense: 'none',
@@ -221,11 +207,11 @@ const ROWS: readonly LimitRow[] = [
     outside: 'fails',
     source: 'as the worst check',
   },
-]
+}
 
 /** Every check's row, in the order checks are listed. */
-export const LIMITS = ROWS
-const byId = new Map(ROWS.map((row) => [row.id, row]))
+export const LIMITS: readonly LimitRow[] = CHECK_IDS.map((id) => ({ id, ...ROWS[id] }))
+const byId = new Map(LIMITS.map((row) => [row.id, row]))
 
 function rowOf(id: CheckId): LimitRow {
   const row = byId.get(id)
@@ -248,7 +234,7 @@ export interface Limit {
 export function limitOf(set: ParameterSet, id: CheckId): Limit {
   const row = rowOf(id)
   const table = typeof row.limit === 'function' ? row.limit(set) : row.limit
-  const own = row.sense === 'none' ? undefined : set.limits[id]
+  const own = set.limits[id]
   return { row, limit: own ?? table, margin: typeof row.margin === 'function' ? row.margin(set) : row.margin, own: own !== undefined }
 }
 

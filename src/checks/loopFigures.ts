@@ -1,7 +1,8 @@
 // What the four checks of the loop share, each figure computed once a run and only when asked for.
 import { type SweptPole, sweptPole } from '../analysis/polesSweep.ts'
 import { type Stability, stabilityWord, withNorm } from '../analysis/stability.ts'
-import type { CheckInput } from './types.ts'
+import { quantity } from './loopText.ts'
+import type { CheckInput, WorkingStep } from './types.ts'
 
 interface Known {
   word?: Stability
@@ -42,4 +43,19 @@ export function loopPole(input: CheckInput): SweptPole | null {
 export function noLoopReason(input: CheckInput): string | null {
   if (input.set.loop.feedback === 0) return 'No loop: feedback is 0'
   return loopWord(input).sector.bound === 0 ? 'No loop: the loop shaper lets nothing through' : null
+}
+
+/** The working where there is nothing to work out. */
+export function noLoopWorking(input: CheckInput): WorkingStep[] {
+  const { feedback, shaper } = input.set.loop
+  const bound = loopWord(input).sector.bound
+  return [
+    {
+      formula: 'w[n] = u[n] + g · s[n]',
+      numbers: `g = ${quantity(feedback)}${shaper === null ? '' : `, σ = sup |shaper(r)/r| = ${quantity(bound)}`}`,
+      result:
+        feedback === 0 || bound === 0 ? 'w = u: nothing comes back' : 'nothing comes back of small signals: the shaper’s slope at 0 is 0',
+      source: 'the signal path',
+    },
+  ]
 }

@@ -2,7 +2,7 @@
 import type { Stability } from '../analysis/stability.ts'
 import { roundedDown } from '../analysis/stabilityRaise.ts'
 import { judge, type Limit, labelOf, limitOf } from './limits.ts'
-import { loopWhole, loopWord, noLoopReason } from './loopFigures.ts'
+import { loopWhole, loopWord, noLoopReason, noLoopWorking } from './loopFigures.ts'
 import { marginDb, nearOne, quantity } from './loopText.ts'
 import type { Check, CheckFunction, CheckInput, Figure, Mend, Status } from './types.ts'
 
@@ -28,32 +28,49 @@ export const loopMargin: CheckFunction = (input): Check => {
     text: value === null ? `${noLoopReason(input)}.` : marginText(value, stability),
     working:
       value === null
-        ? []
+        ? noLoopWorking(input)
         : [
             {
               formula: `−20 log₁₀ ${name}`,
               numbers: `${name} = ${nearOne(gain)}`,
               result: quantity(value, 'dB'),
-              source: stability.certified ? 'smallest certified loop gain' : 'largest frozen loop gain: none is certified while it moves',
+              source: sourceText(stability),
             },
           ],
     ...(mend && { mend: [mend] }),
   }
 }
 
+function sourceText({ certified, word }: Stability): string {
+  if (certified?.name === '|L| in phase')
+    return 'largest gain at a phase of 0: with more feedback than that the loop sings (Nyquist’s criterion)'
+  if (certified) return 'smallest certified loop gain'
+  return word === 'proven'
+    ? 'largest loop gain; the poles prove the loop all the same'
+    : 'largest frozen loop gain: none is certified while it moves'
+}
+
 function decisive({ certified, frozenGain }: Stability): { name: string; gain: number } {
   return certified ? { name: certified.name, gain: certified.value } : { name: '|g| σ max|A F|', gain: frozenGain }
 }
 
-/** A shaper may hold a loop whose gain passes 1: then it is near, not outside. */
-function statusOf({ set }: CheckInput, limit: Limit, value: number | null): Status {
+/**
+ * Beyond the limit no gain is certified. A shaper may still hold such a loop, and the poles of one that stands still may prove it though its gain passes 1 where
+ * it comes back out of phase: then it is near, for what is stable must not fail.
+ */
+function statusOf(input: CheckInput, limit: Limit, value: number | null): Status {
   const status = judge(limit, value)
-  return status === 'fails' && set.loop.shaper !== null ? 'near' : status
+  const held = () => input.set.loop.shaper !== null || (loopWord(input).word === 'proven' && (value ?? 0) <= 0)
+  return status === 'fails' && held() ? 'near' : status
 }
 
-function marginText(value: number, { certified, word }: Stability): string {
+function marginText(value: number, { certified, word, movement, gammaInfinity }: Stability): string {
   const db = quantity(Math.abs(value), 'dB')
-  if (certified) return `The loop gain stays ${db} below 1, certified while it moves.`
+  if (certified?.name === '|L| in phase')
+    return `Where the loop comes back in phase its gain stays ${db} below 1; elsewhere it passes 1, which a loop that stands still may.`
+  if (certified && !movement.moves) return `The loop gain stays ${db} below 1; the loop stands still.`
+  if (certified)
+    return `The loop gain stays ${db} below 1, certified ${certified.value === gammaInfinity ? 'for any movement' : 'while it moves'}.`
   if (value > 0) return `Held anywhere, the loop gain stays ${db} below 1; while it moves that is not certified.`
   return `The loop gain reaches ${db} above 1${word === 'proven' ? ', though not where it comes back in phase' : ''}.`
 }

@@ -2,7 +2,7 @@
 // at 1 and above it is at least a note, because nothing that grows should read as holding.
 import type { SweptPole } from '../analysis/polesSweep.ts'
 import { labelOf } from './limits.ts'
-import { loopPole, noLoopReason } from './loopFigures.ts'
+import { loopPole, noLoopReason, noLoopWorking } from './loopFigures.ts'
 import { delaysText, nearOne, quantity } from './loopText.ts'
 import type { Check, CheckFunction, CheckInput, FigureFunction } from './types.ts'
 
@@ -16,7 +16,7 @@ export const loopPolesFigure: FigureFunction = (input) => {
 export const loopPoles: CheckFunction = (input): Check => {
   const pole = loopPole(input)
   const base = { id: 'loop.poles', status: 'holds', limit: null, unit: '', label: labelOf('loop.poles') } as const
-  if (pole === null) return { ...base, value: null, text: `${noLoopReason(input) ?? QUIET}.`, working: [] }
+  if (pole === null) return { ...base, value: null, text: `${noLoopReason(input) ?? QUIET}.`, working: noLoopWorking(input) }
   const searched = pole.bound > pole.radius
   return {
     ...base,

@@ -2,12 +2,12 @@
 
 import type { Stability } from '../analysis/stability.ts'
 import type { Raise } from '../analysis/stabilityRaise.ts'
-import { loopPole } from './loopFigures.ts'
+import { loopPole, noLoopWorking } from './loopFigures.ts'
 import { counted, delaysText, nearOne, quantity } from './loopText.ts'
 import type { CheckInput, WorkingStep } from './types.ts'
 
 export function stabilityWorking(input: CheckInput, stability: Stability, changes: readonly Raise[]): WorkingStep[] {
-  if (stability.proof === 'noLoop') return []
+  if (stability.proof === 'noLoop') return noLoopWorking(input)
   return [
     peakStep(stability),
     movementStep(input, stability),

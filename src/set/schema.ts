@@ -1,7 +1,7 @@
 // The shape of a set file, made from the parameter table. It fills in defaults and refuses unknown keys; what it finds
 // wrong carries a Problem of ours, and schemaProblems.ts words the rest.
 import * as z from 'zod/mini'
-import { CHECK_IDS } from './checkIds.ts'
+import { LIMITABLE_IDS } from './checkIds.ts'
 import { defaultSet } from './defaults.ts'
 import { type PointRule, pointProblems, SHAPER_POINTS, SWEEP_POINTS, TAPER_POINTS } from './drawnPoints.ts'
 import { moveProblems } from './panelProblems.ts'
@@ -77,7 +77,7 @@ const knob = z.strictObject({
   moves: z.array(move).check(z.minLength(1), z.maxLength(MAX_MOVES)),
 })
 
-const limits = z.strictObject(Object.fromEntries(CHECK_IDS.map((id) => [id, z.optional(z.number())])))
+const limits = z.strictObject(Object.fromEntries(LIMITABLE_IDS.map((id) => [id, z.optional(z.number())])))
 
 function sweep() {
   const { updateEvery, between, ...before } = rows('sweep.')

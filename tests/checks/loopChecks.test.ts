@@ -76,6 +76,26 @@ describe('loop.margin', () => {
     expect(Math.abs((check.value as number) - db)).toBeLessThan(1e-6)
   })
 
+  it('a still loop that its poles prove does not fail though its gain passes 1: what counts is where it comes back in phase', () => {
+    const still = { 'voices.count': 1, 'sweep.depthMs': 0, 'loop.delay': 'fixed', 'line.baseMs': 0.0625, 'loop.lowCutHz': 8000 }
+    const set = loopSet({ ...still, 'loop.feedback': 1.02 })
+    const check = checkOf(set, 'loop.margin')
+    expect(checkOf(set, 'loop.stability').value).toBe('proven')
+    expect(['holds', 'near']).toContain(check.status)
+    expect(check.text).toContain('in phase')
+    // The margin is how much more feedback it takes: a thousandth less is proven, a thousandth more diverges.
+    const limit = 1.02 * 10 ** ((check.value as number) / 20)
+    const word = (g: number) => checkOf(loopSet({ ...still, 'loop.feedback': g }), 'loop.stability').value
+    expect([word(limit * 0.999), word(limit * 1.001)]).toEqual(['proven', 'diverges'])
+  })
+
+  it('says of a still loop that it stands still, and of a moving one what movement the margin is certified for', () => {
+    const text = (fields: Record<string, unknown>) => checkOf(loopSet(fields), 'loop.margin').text
+    expect(text({ 'loop.feedback': 0.9, 'loop.delay': 'fixed' })).toBe('The loop gain stays 0.92 dB below 1; the loop stands still.')
+    expect(text({ 'loop.feedback': 0.9 })).toBe('The loop gain stays 0.92 dB below 1, certified for any movement.')
+    expect(text({ 'loop.feedback': 0.95, 'loop.interpolation': 'lagrange3' })).toContain('certified while it moves')
+  })
+
   it('its button leads inside the margin', () => {
     for (const fields of [
       { 'loop.feedback': -0.97 },
@@ -112,6 +132,16 @@ describe('loop.poles and loop.ring', () => {
     expect(ring.value).toBeGreaterThan(2.7)
   })
 
+  it('the ring’s working lists the slowest resonances, each with its own decay', () => {
+    // A damped comb: the higher the resonance the faster it dies, so the slowest are the lowest, 1/τ apart (FACTS 1: teeth at k/τ; filters move them a little).
+    const fields = { 'loop.feedback': 0.9, 'loop.dampingHz': 2000, 'loop.delay': 'fixed', 'line.baseMs': 5 }
+    const { working } = checkOf(loopSet(fields), 'loop.ring')
+    expect(working[1]?.result).toMatch(/^0 Hz: 0\.3\d+ s; 19\d(\.\d)? Hz: 0\.\d+ s; 39\d(\.\d)? Hz: 0\.\d+ s; /)
+    const seconds = [...(working[1]?.result.matchAll(/: ([\d.]+) s/g) ?? [])].map(([, s]) => Number(s))
+    expect(seconds).toEqual([...seconds].sort((a, b) => b - a))
+    expect(seconds).toHaveLength(5)
+  })
+
   it('a loop that does not die away has no ring time and is near', () => {
     expect(checkOf(loopSet({ 'loop.feedback': 1.1 }), 'loop.ring')).toMatchObject({ value: null, status: 'near' })
   })
@@ -132,5 +162,6 @@ it('without feedback all four hold and say so', () => {
     expect(check.status).toBe('holds')
     expect(check.text).toContain('No loop')
     if (check.id !== 'loop.stability') expect(check.value).toBeNull()
+    expect(check.working.map(({ result }) => result)).toEqual(['w = u: nothing comes back'])
   }
 })
