@@ -77,8 +77,13 @@ export { type SolvedSweep, solveFirstExtremes } from './analysis/solveFirstExtre
 
 // Measure the sweep
 
+/** What interpolator and update interval add to the wet signal, against a windowed-sinc read of the true delay: overall, per octave, and whose fault. */
+export type { ArtefactBand, ArtefactLevels } from './analysis/artefactLevels.ts'
+export { type Artefacts, artefactSteps, artefacts } from './analysis/artefacts.ts'
 /** Largest bend of pitch, up and down. */
 export { type SweepDetune, sweepDetune } from './analysis/detune.ts'
+/** Treble lost by interpolating, at worst over the sweep. */
+export { type Droop, droop, type ReadDroop } from './analysis/droop.ts'
 /** Delay and cents of every voice over the cycle. */
 export { type SweepTable, sweepTable } from './analysis/sweepTable.ts'
 /** Smallest and largest delay, against what the reads can do. */
@@ -92,6 +97,17 @@ export { type LoopGainCurve, loopGain } from './analysis/loopGain.ts'
 export { type LargestPole, largestPole, type Resonance, resonances } from './analysis/poles.ts'
 /** The five words: proven, computed, frozen, bounded, diverges. */
 export { type Stability, type StabilityWord, stability } from './analysis/stability.ts'
+
+// Measure levels
+
+/** DC that uneven shapers leave of a tone. */
+export { type DcFigures, dcSteps } from './analysis/dc.ts'
+/** Worst gain over frequency and sweep at the output and in the line, worst sample, and what shapers hold. */
+export { type LevelFigure, type LevelFigures, levelFigures } from './analysis/levels.ts'
+/** Loudness against the bypass. */
+export { type LoudnessFigures, loudnessSteps } from './analysis/levelsLoudness.ts'
+/** What the sum of both outputs loses. */
+export { type MonoLoss, monoLoss } from './analysis/mono.ts'
 
 // Judge
 

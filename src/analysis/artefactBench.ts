@@ -22,9 +22,9 @@ export interface ArtefactBench {
   estimates: Estimates | null
 }
 
-/** Prepares the references of a valid set whose sweep moves. Yields the part done. */
-export function* artefactBench(set: ParameterSet, sampleRate: number): Generator<number, ArtefactBench> {
-  const stage = yield* artefactStage(set, sampleRate)
+/** Prepares the references of a valid set whose sweep moves, with other `material` in the line if given (artefactStage). Yields the part done. */
+export function* artefactBench(set: ParameterSet, sampleRate: number, material?: Float64Array): Generator<number, ArtefactBench> {
+  const stage = yield* artefactStage(set, sampleRate, material)
   return { stage, weights: artefactWeights(set, sampleRate, stage.length / 2 + 1), known: new Map(), estimates: null }
 }
 
@@ -86,8 +86,8 @@ export interface CheapestSetting {
 
 const KINDS = Object.keys(READ_COST) as Interpolation[]
 const INTERVALS = [1, 2, 4, 8, 16, 32, 64]
-const BETWEEN: readonly Between[] = ['hold', 'ramp']
-const UPDATES = INTERVALS.flatMap((updateEvery) => BETWEEN.map((between) => ({ updateEvery, between }))).slice(1)
+const BETWEEN: readonly Between[] = ['ramp', 'hold']
+const UPDATES = INTERVALS.flatMap((updateEvery) => BETWEEN.map((between) => ({ updateEvery, between })))
 /** Settings estimated to miss by more than this, dB, are not measured. */
 const ESTIMATE_DB = 1
 

@@ -102,9 +102,13 @@ function collect(group: Group, x: Spectrum, e: Spectrum): void {
   }
 }
 
+/** Bins with less than this part of the strongest bin's power hold no signal, but what the window lets in: nothing in e is owed to that. */
+const NO_SIGNAL = 1e-10
+
 function powersOf({ count, signal, error, crossRe, crossIm }: Group): GroupPower {
-  const standing = signal.map((x, k) => (x > 0 ? ((crossRe[k] as number) ** 2 + (crossIm[k] as number) ** 2) / x : 0))
-  const freedom = count / (count - 1)
-  const moving = error.map((e, k) => Math.max(0, e - (standing[k] as number)) * freedom)
+  const least = NO_SIGNAL * signal.reduce((most, x) => Math.max(most, x), 0)
+  const standing = signal.map((x, k) => (x > least ? ((crossRe[k] as number) ** 2 + (crossIm[k] as number) ** 2) / x : 0))
+  // H takes one of the stretches' degrees of freedom with it.
+  const moving = error.map((e, k) => Math.max(0, e - (standing[k] as number)) * ((signal[k] as number) > least ? count / (count - 1) : 1))
   return { signal, moving, standing }
 }

@@ -65,7 +65,9 @@ function steepestPlaces(sweep: ParameterSet['sweep']): readonly SteepPlace[] {
   const middle = (at: typeof up): SteepPlace => ({ phase: at.phase, width: at.width })
   // A piece a hundred times slower than the fastest is not what is looked for: a ramp's own run beside its edge.
   const fastest = Math.max(up.slope, -down.slope)
-  return [up, down].filter(({ slope }) => Math.abs(slope) > 0.1 * fastest).map(middle)
+  const steep = [up, down].filter(({ slope }) => Math.abs(slope) > 0.1 * fastest).map(middle)
+  // Drawn so that it stands between leaps, like a square without an edge.
+  return steep.length > 0 ? steep : [{ phase: corners[0] as number, width: 0 }]
 }
 
 /** The fastest changes from one random value to the next among the first 64 cycles of voice 0. */

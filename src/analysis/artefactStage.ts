@@ -49,18 +49,21 @@ export interface ArtefactStage {
   readonly loops: boolean
 }
 
-/** Stretches of 85 ms at 48 kHz, 12 over the cycle and 12 at its steepest; 8 each where many voices at a high rate would take too long. */
-export function* artefactStage(set: ParameterSet, sampleRate: number): Generator<number, ArtefactStage> {
+/**
+ * Stretches of 85 ms at 48 kHz, 12 over the cycle and 12 at its steepest; 8 each from three voices on, of which each adds its own. `material`: one period
+ * of what is in the line instead of the noise, {@link NOISE_PERIOD} samples.
+ */
+export function* artefactStage(set: ParameterSet, sampleRate: number, material?: Float64Array): Generator<number, ArtefactStage> {
   const length = sampleRate <= 64000 || set.voices.count > 4 ? 4096 : 8192
   const loops = set.loop.feedback !== 0 && set.loop.delay === 'moving'
-  const count = length * set.voices.count > 20000 ? 8 : 12
+  const count = length * set.voices.count > 8192 ? 8 : 12
   const { cycle, steepest } = artefactPlaces(set, count)
   const places = [...cycle.map((phase) => ['cycle', phase] as const), ...steepest.map((phase) => ['steepest', phase] as const)]
   // D at every sample, exactly: what updates and interpolators are to come near.
   const motion = createMotion(set, sampleRate, { every: 1, between: 'ramp' }, loops)
   const window = hann(length)
   yield 0
-  const noise = artefactNoise(sampleRate)
+  const noise = material ?? artefactNoise(sampleRate)
   yield 0
   const stretches: Stretch[] = []
   for (const [i, [group, middle]] of places.entries()) {
