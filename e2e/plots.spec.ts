@@ -127,10 +127,10 @@ test('two plots stand at once; a tab shows another, and takes from the other pan
   await expect(lower.getByRole('tab', { name: 'Sweep' })).toHaveAttribute('aria-selected', 'true')
   await lower.getByRole('tab', { name: 'Sweep' }).focus()
   await page.keyboard.press('ArrowRight')
-  await expect(lower.getByRole('tab', { name: 'Loop' })).toHaveAttribute('aria-selected', 'true')
+  await expect(lower.getByRole('tab', { name: 'Map' })).toHaveAttribute('aria-selected', 'true')
   await show(lower, 'Response')
   await expect(lower.getByRole('tab', { name: 'Response' })).toHaveAttribute('aria-selected', 'true')
-  await expect(upper.getByRole('tab', { name: 'Loop' })).toHaveAttribute('aria-selected', 'true')
+  await expect(upper.getByRole('tab', { name: 'Map' })).toHaveAttribute('aria-selected', 'true')
   await expect(page.locator('.cw-plot')).toHaveCount(2)
 })
 
