@@ -5,6 +5,7 @@ import { loopMarginFigure } from './loopMargin.ts'
 import { loopPolesFigure } from './loopPoles.ts'
 import { loopRingFigure } from './loopRing.ts'
 import { loopStabilityFigure } from './loopStability.ts'
+import { shaperAliasFigure } from './shaperFigures.ts'
 import type { CheckEntry, CheckFunction, CheckInput, Figure, FigureFunction } from './types.ts'
 
 /** Checks whose words, working or mends cost more than their figure. The others are as cheap run whole. */
@@ -15,6 +16,7 @@ const FIGURES: { readonly [id: string]: FigureFunction | undefined } = {
   'loop.ring': loopRingFigure,
   'level.peak': levelPeakFigure,
   'level.line': levelLineFigure,
+  'shaper.alias': shaperAliasFigure,
 }
 
 /**

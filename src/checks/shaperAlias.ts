@@ -18,7 +18,7 @@ export const shaperAlias: CheckFunction = (input): Check => {
     return { ...base, status: 'holds', value: null, text: `${noShaperText(set)}: nothing folds.`, working: [noneStep(noShaperText(set))] }
   const value = worst.folded.db
   const status = judge(limit, value)
-  const mend = status === 'holds' ? [] : softer(input, worst)
+  const mend = status === 'holds' ? [] : softer(input, worst, status)
   return {
     ...base,
     status,

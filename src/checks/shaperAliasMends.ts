@@ -17,9 +17,8 @@ const HALVINGS = 11
 const RANK: Readonly<Record<Status, number>> = { fails: 0, near: 1, note: 2, holds: 2 }
 
 /** Anti-aliasing, less drive (of a dead zone: a smaller one), a softer curve: those that raise the status of the whole check on a set that stays valid. */
-export function softer(input: CheckInput, { present }: ShaperFold): Mend[] {
+export function softer(input: CheckInput, { present }: ShaperFold, now: Status): Mend[] {
   const { path, shaper } = present
-  const now = shaperAliasFigure(input).status
   const [key, label, least] =
     shaper.curve === 'deadZone' ? (['deadZone', 'Dead zone', 1e-6] as const) : (['drive', 'Drive', 0.001] as const)
   const candidates: Mend[] = []

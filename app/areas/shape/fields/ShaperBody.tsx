@@ -1,5 +1,4 @@
 // What a shaper has besides its curve, each value with what follows from it.
-import { curveValue } from '../../../../src/dsp/shaperCurves.ts'
 import { SHAPER_POINTS } from '../../../../src/set/drawnPoints.ts'
 import type { Point } from '../../../../src/set/types.ts'
 import { PointsField } from '../../../fields/PointsField.tsx'
@@ -29,7 +28,6 @@ export function ShaperBody({ owner, shaper }: ShaperBodyProps) {
   )
 }
 
-const TANH = { curve: 'tanh', deadZone: 0, points: [] } as const
 /** Room past the last point, so that it can be drawn on. */
 const AIR = 1.15
 
@@ -44,7 +42,6 @@ function DrawnCurve({ owner }: ShaperBodyProps) {
         {...drawn}
         xRange={[0, nice(AIR * largest(points, 0))]}
         yRange={[Math.min(0, -nice(-least(points))), nice(AIR * largest(points, 1))]}
-        compare={(t) => curveValue(TANH, t)}
         meaning={meaning}
       />
       <PointsField label="Points" rule={SHAPER_POINTS} points={points} apply={apply} />
