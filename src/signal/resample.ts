@@ -11,6 +11,8 @@
 //
 // Design: stop-band A = 120 dB from the slower rate's Nyquist frequency on, so nothing folds; transition from 0.9 to 1 of it, c in its middle.
 
+import { cubicWeights, kaiserWindow } from './kaiser.ts'
+
 const STOP_DB = 120
 const CUTOFF = 0.95
 const TRANSITION = 0.1
@@ -87,17 +89,20 @@ function convert(x: Channel, { up, down }: { up: number; down: number }, source:
   return out
 }
 
+let kaiser: ((u: number) => number) | undefined
+
 function tapSource(up: number, down: number): TapSource {
   // In input samples: downwards the sinc stretches with the slower output rate.
   const stretch = Math.max(1, down / up)
   const reach = Math.ceil(RESAMPLE_REACH * stretch) + 1
-  const window = kaiserTable()
+  kaiser ??= kaiserWindow(BETA)
+  const window = kaiser
   const tapsAt = (fraction: number): Float64Array => {
     const taps = new Float64Array(2 * reach)
     let sum = 0
     for (let i = 0; i < taps.length; i++) {
       const t = (fraction + reach - 1 - i) / stretch
-      const value = sinc(CUTOFF * t) * windowAt(window, Math.abs(t) / RESAMPLE_REACH)
+      const value = sinc(CUTOFF * t) * window(Math.abs(t) / RESAMPLE_REACH)
       taps[i] = value
       sum += value
     }
@@ -158,41 +163,4 @@ function wholeSteps(name: string, hz: number): number {
 
 function sinc(x: number): number {
   return x === 0 ? 1 : Math.sin(Math.PI * x) / (Math.PI * x)
-}
-
-// The window is smooth: from 4096 points, cubic interpolation misses it by less than 1e-11, far below the stop-band.
-const WINDOW_POINTS = 4096
-let kaiser: Float64Array | undefined
-
-/** w at u = (i − 1)/WINDOW_POINTS, one point of each side spare for the cubic; w is even, and 0 beyond u = 1. */
-function kaiserTable(): Float64Array {
-  kaiser ??= Float64Array.from({ length: WINDOW_POINTS + 3 }, (_, i) => {
-    const u = Math.abs(i - 1) / WINDOW_POINTS
-    return besselI0Of(BETA * BETA * (1 - u * u)) / besselI0Of(BETA * BETA)
-  })
-  return kaiser
-}
-
-function windowAt(table: Float64Array, u: number): number {
-  if (u >= 1) return 0
-  const at = u * WINDOW_POINTS
-  const i = Math.floor(at)
-  const [a, b, c, d] = cubicWeights(at - i)
-  return a * (table[i] as number) + b * (table[i + 1] as number) + c * (table[i + 2] as number) + d * (table[i + 3] as number)
-}
-
-/** Third-order Lagrange weights of the points −1, 0, 1, 2 for a place f in [0, 1]. */
-function cubicWeights(f: number): readonly [number, number, number, number] {
-  return [(-f * (f - 1) * (f - 2)) / 6, ((f + 1) * (f - 1) * (f - 2)) / 2, (-(f + 1) * f * (f - 2)) / 2, ((f + 1) * f * (f - 1)) / 6]
-}
-
-/** I0(√q) = Σ (q/4)^k / (k!)², for q > −1 too, where the window's formula goes on smoothly past its edge. */
-function besselI0Of(q: number): number {
-  let term = 1
-  let sum = 1
-  for (let k = 1; Math.abs(term) > 1e-17 * sum; k++) {
-    term *= q / 4 / (k * k)
-    sum += term
-  }
-  return sum
 }
