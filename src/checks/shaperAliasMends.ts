@@ -11,8 +11,8 @@ import { CURVE_NAMES, type ShaperFold, shaperAliasFigure } from './shaperFigures
 import type { CheckInput, Mend, Status } from './types.ts'
 
 const SOFT: readonly Shaper['curve'][] = ['cubic', 'tanh', 'arctan']
-/** Halvings of the value's logarithm: the value to a hundredth. */
-const HALVINGS = 11
+/** Halvings of the value's logarithm: the value to a few hundredths, of which one or two digits are offered. */
+const HALVINGS = 8
 
 const RANK: Readonly<Record<Status, number>> = { fails: 0, near: 1, note: 2, holds: 2 }
 

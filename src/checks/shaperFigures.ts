@@ -3,7 +3,7 @@ import { type Folded, foldedEnergy } from '../analysis/folded.ts'
 import type { ParameterSet, Shaper } from '../set/types.ts'
 import { judge, limitOf } from './limits.ts'
 import { quantity } from './loopText.ts'
-import type { Check, CheckInput } from './types.ts'
+import type { CheckInput, Figure } from './types.ts'
 
 /** −6 dBFS of a sine whose full scale is a peak of 1. */
 export const TONE_DBFS = -6
@@ -41,13 +41,26 @@ export interface ShaperFold {
 
 /** Each heard shaper with what it folds, the worst first. */
 export function shaperFolds({ set, sampleRate }: Pick<CheckInput, 'set' | 'sampleRate'>): ShaperFold[] {
-  const folds = heardShapers(set).map((present) => ({ present, folded: foldedEnergy(present.shaper, present.amplitude, sampleRate) }))
+  const folds = heardShapers(set).map((present) => ({ present, folded: foldOf(present, sampleRate) }))
   const size = ({ folded }: ShaperFold) => folded.db ?? Number.NEGATIVE_INFINITY
   return folds.sort((a, b) => size(b) - size(a))
 }
 
+const known = new WeakMap<Shaper, { readonly key: string; readonly folded: Folded }>()
+
+/** Found once for a shaper that stays the same while another is changed. */
+function foldOf({ shaper, amplitude }: PresentShaper, sampleRate: number): Folded {
+  const key = `${amplitude} ${sampleRate}`
+  let found = known.get(shaper)
+  if (found?.key !== key) {
+    found = { key, folded: foldedEnergy(shaper, amplitude, sampleRate) }
+    known.set(shaper, found)
+  }
+  return found.folded
+}
+
 /** Status and value of shaper.alias without words or mends. */
-export function shaperAliasFigure(input: CheckInput): Pick<Check, 'status' | 'value'> {
+export function shaperAliasFigure(input: CheckInput): Figure {
   const value = shaperFolds(input)[0]?.folded.db ?? null
   return { status: judge(limitOf(input.set, 'shaper.alias'), value), value }
 }
