@@ -54,7 +54,13 @@ export function Dial({ set, index, chosen, onChoose, onTurn }: DialProps) {
         {name}
       </span>
       {typeof first.min === 'number' && parameter(first.parameter).kind !== 'choice' ? (
-        <KnobValue index={index} name={name} move={first} value={getAt(set, first.parameter) as number | null} />
+        <KnobValue
+          index={index}
+          name={name}
+          move={first}
+          value={getAt(set, first.parameter) as number | null}
+          onFocus={() => onChoose(index)}
+        />
       ) : (
         <span className="cw-knob-value">{valueWords(first.parameter, getAt(set, first.parameter))}</span>
       )}

@@ -18,18 +18,29 @@ interface KnobValueProps {
   readonly name: string
   readonly move: Move
   readonly value: number | null
+  readonly onFocus: () => void
 }
 
 /** What a knob gives, typed with its unit: the knob turns to where it gives that. */
-export function KnobValue({ index, name, move, value }: KnobValueProps) {
+export function KnobValue({ index, name, move, value, onFocus }: KnobValueProps) {
   const id = useId()
   const spec = parameter(move.parameter) as NumberParameter
   const binding = useMemo((): Binding<number | null> => ({ value, ...turnActs(index, name, move) }), [index, name, move, value])
   const text = useNumberText({ spec: { ...spec, nullable: false }, binding, context: quantityContext, whenOff: move.min as number })
+  const focused: typeof text.onFocus = (event) => {
+    onFocus()
+    text.onFocus(event)
+  }
   return (
     <>
       <span className="cw-knob-value">
-        <NumberInput text={text} spec={spec} value={value} label={`${name}, ${spec.label.toLowerCase()}`} describedBy={id} />
+        <NumberInput
+          text={{ ...text, onFocus: focused }}
+          spec={spec}
+          value={value}
+          label={`${name}, ${spec.label.toLowerCase()}`}
+          describedBy={id}
+        />
         {spec.unit !== '' && value !== null && <span className="cw-field-unit">{spec.unit}</span>}
       </span>
       <span id={id} className="cw-knob-notes">
