@@ -34,13 +34,22 @@ const ROOT_HZ = 0.002
 const SAME_LEVEL = 2.3e-7
 /** Power this far below the largest is rounding. */
 const ROUNDING = 1e-24
+/** Power this far below the largest, at 0 Hz or fs/2, is a null. */
+const NULL_POWER = 1e-20
+
+export interface ExtremeOptions {
+  readonly maxHz?: number
+  readonly withinHz?: number
+  /** List a null at exactly 0 Hz too, where |H| always stands level. */
+  readonly fromDc?: boolean
+}
 
 /**
  * Notches and peaks in (0, maxHz], by channel, then rising frequency. maxHz in (0, sampleRate/2], by default
  * sampleRate/2, where |H| always stands level: what is there counts when it is a null, or a turn after another one.
  * Frequencies within `withinHz` (0.002 Hz); pairs that differ by less than 1e-6 dB are left out. Throws RangeError for maxHz.
  */
-export function frozenExtremes(frozen: Frozen, options: { readonly maxHz?: number; readonly withinHz?: number } = {}): Extreme[] {
+export function frozenExtremes(frozen: Frozen, options: ExtremeOptions = {}): Extreme[] {
   const nyquist = frozen.sampleRate / 2
   const maxHz = options.maxHz ?? nyquist
   if (!(maxHz > 0 && maxHz <= nyquist)) throw new RangeError(`maxHz must be in (0, ${nyquist}] Hz, got ${maxHz}`)
@@ -55,7 +64,7 @@ export function frozenExtremes(frozen: Frozen, options: { readonly maxHz?: numbe
   // What stands at maxHz itself turns within the tolerance of it.
   walkGrid(transferOf(frozen), Math.min(Math.PI, perHz * maxHz + tolerance), lowestCorner(frozen), trails)
   return trails.flatMap((trail) =>
-    ended(trail, maxHz === nyquist).map(({ kind, omega, power }) => ({
+    ended(trail, maxHz === nyquist, options.fromDc ?? false).map(({ kind, omega, power }) => ({
       channel: trail.search.channel,
       kind,
       frequencyHz: Math.min(maxHz, omega / perHz),
@@ -120,14 +129,16 @@ function settle(trail: Trail, a: PowerSample, b: PowerSample, bent: boolean): vo
   trail.bentBefore = bent
 }
 
-function ended(trail: Trail, toNyquist: boolean): FoundExtreme[] {
+function ended(trail: Trail, toNyquist: boolean, fromDc: boolean): FoundExtreme[] {
   const { a, b, search } = trail
   if (a && b) settle(trail, a, b, false)
   let { largest } = trail
   for (const { power } of search.found) largest = Math.max(largest, power)
   const found = significant(search.found, largest)
   if (toNyquist && b) found.push(...atNyquist(search, b, found.at(-1), largest))
-  return found
+  if (!fromDc) return found
+  const { power } = samplePower(search, 0)
+  return power < NULL_POWER * largest ? [{ kind: 'notch', omega: 0, power }, ...found] : found
 }
 
 /** Nothing but rounding between a and b: an all-pass, or a voice alone read to the nearest sample. */
@@ -151,7 +162,7 @@ function significant(found: readonly FoundExtreme[], largest: number): FoundExtr
 function atNyquist(search: Search, last: PowerSample, before: FoundExtreme | undefined, largest: number): FoundExtreme[] {
   const { power } = samplePower(search, Math.PI)
   const kind: ExtremeKind = last.slope > 0 ? 'peak' : 'notch'
-  const isNull = kind === 'notch' && power < 1e-20 * largest
+  const isNull = kind === 'notch' && power < NULL_POWER * largest
   if (before ? before.kind === kind : !isNull) return []
   const here = { kind, omega: Math.PI, power }
   return before && significant([before, here], largest).length === 0 ? [] : [here]

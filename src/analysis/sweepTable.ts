@@ -18,10 +18,13 @@ export interface SweepTable {
   readonly voices: readonly VoiceSweep[]
 }
 
-/** dτ/dt of a read whose sweep stands at phase φ: time law depth · s'(φ) · rate, ratio law τ ln 2 · octaves · s'(φ) · rate. Seconds a second. */
+/**
+ * dτ/dt of a read whose sweep stands at phase φ: time law depth · s'(φ) · rate, ratio law τ ln 2 · octaves · s'(φ) · rate. Seconds a second. The sine that stands for
+ * a drift runs at half its rate: from −1 to 1 in one cycle, as the steepest drift does, so that no more is bent than drift can bend.
+ */
 export function delaySlope(set: ParameterSet, phi: number, voice: number): number {
   const { sweep } = set
-  const perSecond = shapeSlope(sweep, phi) * sweep.rateHz
+  const perSecond = shapeSlope(sweep, phi) * (sweep.shape === 'drift' ? sweep.rateHz / 2 : sweep.rateHz)
   if (perSecond === 0) return 0
   if (sweep.law === 'time') return (sweep.depthMs / 1000) * perSecond
   return (frozenDelayMs(set, phi, voice) / 1000) * Math.LN2 * sweep.depthOctaves * perSecond

@@ -36,6 +36,16 @@ describe('closed forms', () => {
     expectAt(hertz(extremesOf(set, 'peak')), ladder(FS / 2 / samples, FS / samples, FS / 2))
   })
 
+  it('y = x − x[n−48]: the null at 0 Hz, k = 0 of k fs/M, is listed where it is asked for; a mere dip there is not', () => {
+    const fromDc = (wet: number) =>
+      frozenExtremes(freeze(combSet({ samples: 48, wet }), 0), { fromDc: true }).filter(({ frequencyHz }) => frequencyHz === 0)
+    expect(fromDc(-1).map(({ channel, kind }) => [channel, kind])).toEqual([[0, 'notch']])
+    expect(fromDc(-1)[0]?.db).toBeLessThan(-250)
+    expect(fromDc(-0.9)).toEqual([])
+    expect(fromDc(1)).toEqual([])
+    expect(hertz(extremesOf(combSet({ samples: 48, wet: -1 }), 'notch'))).not.toContain(0)
+  })
+
   it('levels are |b0| + |bM| and ||b0| − |bM||, full nulls only where they are equal', () => {
     const uneven = frozenExtremes(freeze(combSet({ samples: 48, dry: 0.8, wet: 0.5 }), 0))
     for (const { kind, db } of uneven) expect(db).toBeCloseTo(20 * Math.log10(kind === 'peak' ? 1.3 : 0.3), 9)

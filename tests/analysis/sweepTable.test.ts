@@ -1,5 +1,6 @@
 // Oracles: FACTS 4 (cents of sine and triangle sweeps, computed there from 1200 log2(1 − dτ/dt)), and slopes taken by difference.
 import { describe, expect, it } from 'vitest'
+import { sweepDetune } from '../../src/analysis/detune.ts'
 import { shapeCorners, shapeSlope } from '../../src/analysis/sweepSlope.ts'
 import { centsOfSlope, sweepTable } from '../../src/analysis/sweepTable.ts'
 import { frozenShapeValue } from '../../src/dsp/sweep.ts'
@@ -54,6 +55,16 @@ describe('cents', () => {
     expect(centsOfSlope(3)).toBeNull()
     // FACTS 4, small-signal rule: about 1731.2 per unit of slope.
     expect(centsOfSlope(-1e-6)! / 1e-6).toBeCloseTo(1731.23, 2)
+  })
+
+  it('a drift bends no more than sweep.detune allows it: its sine runs as slowly as the steepest drift', () => {
+    for (const law of ['time', 'ratio'] as const) {
+      const set = sweptSet('drift', 2, 1, { law, depthOctaves: 0.3, updateEvery: 1 })
+      const detune = sweepDetune(set)
+      const { cents } = sweepTable(set, 4000).voices[0]!
+      expect(Math.abs(largest(cents) - detune.upCents)).toBeLessThan(1e-3)
+      expect(Math.abs(smallest(cents) - (detune.downCents ?? 0))).toBeLessThan(1e-3)
+    }
   })
 
   it('rate 0 bends nothing, a sweep too steep gives null, never NaN', () => {
@@ -146,7 +157,8 @@ describe('sweepTable', () => {
         const after = (delayMs[k + 1]! - delayMs[k]!) * points
         // Corners have two slopes.
         if (Math.abs(after - before) > 0.02 * Math.max(Math.abs(after), Math.abs(before))) continue
-        const slope = ((before + after) / 2000) * set.sweep.rateHz
+        // A drift's sine lasts two of its cycles.
+        const slope = ((before + after) / 2000) * (set.sweep.shape === 'drift' ? set.sweep.rateHz / 2 : set.sweep.rateHz)
         if (slope > 0.99) continue
         expect(Math.abs((cents[k] ?? 0) - (1200 * Math.log1p(-slope)) / Math.LN2)).toBeLessThan(
           0.02 * Math.max(0.1, Math.abs(cents[k] ?? 0)),

@@ -47,7 +47,7 @@ export function addResponse(program: Command): void {
       const frozen = freeze(set, position ?? (set.sweep.rateHz === 0 ? set.sweep.startPhase : 0))
       refuseHeld(file, frozen)
       const channels = frozenResponse(frozen, readFrequencies(options, frozen.sampleRate))
-      const extremes = options.extremes ? frozenExtremes(frozen) : undefined
+      const extremes = options.extremes ? frozenExtremes(frozen, { fromDc: true }) : undefined
       if (options.json) printJson(responseJson(frozen, channels, extremes))
       else printResponse(channels, extremes)
     })
