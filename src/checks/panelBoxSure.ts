@@ -1,9 +1,12 @@
-// Whether a check surely holds at every knob position, from its bound alone: what a changed end of a knob is tried with.
+// Whether a check holds at every knob position, as far as can be told quickly: from its bound alone, or where it is tried. What a changed end of a knob is tried with.
 import { boundPanel } from '../analysis/panelSearch.ts'
 import type { PanelSpace } from '../analysis/panelSpace.ts'
 import { ringSeconds } from '../analysis/poles.ts'
 import { type CheckId, judge, limitOf } from './limits.ts'
+import { panelLook } from './panelBoxLook.ts'
+import { panelTried } from './panelBoxTried.ts'
 import { closestRead, detuneOf, gainCover, longestRead, loopGainOf, poleCover } from './panelDirections.ts'
+import { CHECKS } from './registry.ts'
 
 type Sure = (space: PanelSpace) => Generator<void, boolean>
 
@@ -55,13 +58,23 @@ function gainHolds(place: 'peak' | 'line'): Sure {
   }
 }
 
-/** By check; where one is missing nothing sure is known. */
+/** Of a check that is only tried: that it holds where it is tried. */
+function* aliasHolds(space: PanelSpace): Generator<void, boolean> {
+  const entry = CHECKS.find(({ id }) => id === 'shaper.alias')
+  if (entry === undefined) return false
+  const look = panelLook(space)
+  const { positions } = yield* panelTried(look, entry)
+  return look.figureAt(entry, positions).status === 'holds'
+}
+
+/** By check; where one is missing nothing is known, or trying it would take too long. */
 export const SURE: Partial<Record<CheckId, Sure>> = {
   'loop.stability': stabilityHolds,
   'loop.margin': marginHolds,
   'loop.ring': ringHolds,
   'sweep.range': rangeHolds,
   'sweep.detune': detuneHolds,
+  'shaper.alias': aliasHolds,
   'level.peak': gainHolds('peak'),
   'level.line': gainHolds('line'),
 }

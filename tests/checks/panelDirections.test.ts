@@ -25,8 +25,9 @@ import {
 } from '../../src/checks/panelDirections.ts'
 import { defaultSet } from '../../src/set/defaults.ts'
 import { moveValue } from '../../src/set/panel.ts'
+import { isMovable } from '../../src/set/panelProblems.ts'
 import type { NumberParameter } from '../../src/set/parameters/kinds.ts'
-import { parameter } from '../../src/set/parameters.ts'
+import { PARAMETERS, type Parameter, parameter } from '../../src/set/parameters.ts'
 import { getAt, withAt } from '../../src/set/path.ts'
 import type { ParameterSet } from '../../src/set/types.ts'
 import { createRandom } from '../../src/signal/random.ts'
@@ -107,6 +108,44 @@ describe('directions', () => {
     60_000,
   )
 })
+
+describe('what is left out', () => {
+  it.each(Object.keys(FIGURES))(
+    'does not concern %s',
+    (name) => {
+      const figure = FIGURES[name] as PanelFigure
+      fc.assert(
+        fc.property(anySet, fc.nat(), (drawn, seed) => {
+          const next = createRandom(seed)
+          const set = withAt(drawn, 'loop.feedback', drawn.loop.feedback / 2)
+          for (const row of PARAMETERS.filter(isMovable)) {
+            const { path } = row
+            const now = getAt(set, path)
+            if (figure.listed.includes(path) || now === undefined || now === null) continue
+            const value = otherValue(row, next)
+            const ends = [now, value].map(Number).sort((a, b) => a - b) as [number, number]
+            const numeric = row.kind === 'number' || (row.kind === 'integer' && !row.values)
+            if (numeric && figure.directions(boxOf(set, path, ends))[path] !== undefined) continue
+            const changed = figure.worse(withAt(set, path, value), set.sampleRate)
+            const same = figure.worse(set, set.sampleRate)
+            const close = changed === same || Math.abs(changed - same) <= 1e-6 * Math.max(1, Math.abs(same))
+            expect(close, `${path} from ${now} to ${value}: ${same} became ${changed}`).toBe(true)
+          }
+        }),
+        { numRuns: 25 },
+      )
+    },
+    60_000,
+  )
+})
+
+function otherValue(row: Parameter, next: () => number): unknown {
+  if (row.kind === 'choice') return row.options[Math.floor(next() * row.options.length)]?.value
+  if (row.kind === 'boolean') return next() < 0.5
+  const { min, max, values } = row as NumberParameter
+  if (values) return values[Math.floor(next() * values.length)]
+  return row.kind === 'integer' ? Math.round(min + (max - min) * next()) : min + (max - min) * next()
+}
 
 describe('bounds', () => {
   it('no pole of the sweep lies outside the bound, and no word is weaker than the gains say', () => {
