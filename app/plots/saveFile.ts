@@ -1,16 +1,6 @@
 // A plot's picture and numbers as files of the user's.
+import { download } from '../shell/fileAccess.ts'
 import type { PlotNumbers } from './plotTypes.ts'
-
-/** Hands a file to the browser's downloads. */
-export function saveFile(name: string, content: Blob): void {
-  const url = URL.createObjectURL(content)
-  const link = document.createElement('a')
-  link.href = url
-  link.download = name
-  link.click()
-  // The browser has the content once the click is handled; a later turn lets slow ones take it.
-  setTimeout(() => URL.revokeObjectURL(url), 10_000)
-}
 
 /** Comma-separated, one head line, points as decimal mark (RFC 4180); an empty field where there is no number. */
 export function csvText({ head, columns }: PlotNumbers): string {
@@ -38,5 +28,5 @@ export async function savePicture(name: string, picture: HTMLCanvasElement): Pro
     picture.toBlob(done, 'image/png')
   })
   if (!content) throw new TypeError('this browser made no picture of the plot')
-  saveFile(name, content)
+  download(name, content)
 }

@@ -31,15 +31,15 @@ export async function writeTo(place: PickedPlace, text: string): Promise<void> {
   await file.close()
 }
 
-/** Hands text to the browser's downloads. */
-export function download(name: string, text: string): void {
-  const url = URL.createObjectURL(new Blob([text], { type: 'application/json' }))
+/** Hands a file to the browser's downloads. */
+export function download(name: string, content: Blob): void {
+  const url = URL.createObjectURL(content)
   const link = document.createElement('a')
   link.href = url
   link.download = name
   link.click()
-  // The browser has taken the text over once the click is done; a second leaves room for slow ones.
-  setTimeout(() => URL.revokeObjectURL(url), 1000)
+  // The browser has the content once the click is handled; a later turn lets slow ones take it.
+  setTimeout(() => URL.revokeObjectURL(url), 10_000)
 }
 
 /** Asks for one file; null when the user changed their mind. */

@@ -74,7 +74,7 @@ export async function saveSet(): Promise<void> {
   endGesture()
   const set = committedSet()
   if (place === null) {
-    download(fileName(set), writeSet(set))
+    download(fileName(set), new Blob([writeSet(set)], { type: 'application/json' }))
     announce(`${fileName(set)} handed to the browser’s downloads`)
     return
   }

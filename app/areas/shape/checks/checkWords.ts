@@ -1,6 +1,7 @@
 // A check's figure and limit as they stand in its row.
 import type { Check, CheckValue } from '../../../../src/checks/types.ts'
 import { formatQuantity } from '../../../../src/set/units.ts'
+import { showIn } from '../../../fields/quantity.ts'
 import { duration, hertz, milliseconds, radius } from '../../../plots/words.ts'
 
 type Group = { readonly [key: string]: CheckValue }
@@ -10,6 +11,8 @@ const FIGURES: Readonly<Record<string, (value: CheckValue) => string | null>> = 
   'loop.poles': (value) => (typeof value === 'number' ? radius(value) : null),
   'loop.ring': (value) => (typeof value === 'number' ? duration(value) : null),
   'response.extremes': (value) => span(part(value, 'firstNotchHz'), hertz, 'Hz'),
+  // As its field writes it: 1.0, not 1.
+  'sweep.detune': (value) => (typeof value === 'number' ? showIn(value, 'cents').replace('\u00a0', ' ') : null),
   'sweep.range': (value) => span([part(value, 'smallestMs'), part(value, 'largestMs')], (ms) => milliseconds(ms).replace(' ms', ''), 'ms'),
   'shaper.harmonics': strongestHarmonic,
 }

@@ -1,7 +1,8 @@
 // The menu of what can be had of a plot besides looking at it.
 import { Menu } from '@base-ui/react/menu'
 import { useState } from 'react'
-import { csvText, plotFileName, saveFile, savePicture } from '../../../plots/saveFile.ts'
+import { csvText, plotFileName, savePicture } from '../../../plots/saveFile.ts'
+import { download } from '../../../shell/fileAccess.ts'
 import { useOpenedTrigger } from '../../../shell/usePopup.ts'
 import { currentSet } from '../../../state/current.ts'
 import type { PlotMenuProps } from './PlotMenu.tsx'
@@ -15,7 +16,7 @@ export function PlotPopup({ button, id, mounted, asTable, onTable }: PlotPopupPr
   const [problem, setProblem] = useState('')
   const name = (ending: string) => plotFileName(currentSet().name, id, ending)
   const numbers = () => {
-    if (mounted) saveFile(name('csv'), new Blob([csvText(mounted.numbers())], { type: 'text/csv' }))
+    if (mounted) download(name('csv'), new Blob([csvText(mounted.numbers())], { type: 'text/csv' }))
   }
   const picture = () => {
     if (!mounted) return

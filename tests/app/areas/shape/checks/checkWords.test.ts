@@ -16,6 +16,7 @@ describe('the figure of a check', () => {
     [figure('loop.ring', null, 's'), 'none'],
     [figure('loop.ring', null, 's', 'near'), 'endless'],
     [figure('sweep.detune', 171.4, 'cents'), '171.4 cents'],
+    [figure('sweep.detune', 0.9974, 'cents'), '1.0 cents'],
     [figure('sweep.range', { smallestMs: 1, largestMs: 6, roomSamples: 47 }, 'ms'), '1.00 – 6.00 ms'],
     [figure('sweep.range', { smallestMs: 5, largestMs: 5, roomSamples: 47 }, 'ms'), '5.00 ms'],
     [figure('response.extremes', { firstNotchHz: [96.8, 558.6] }, 'Hz'), '96.8 – 559 Hz'],
