@@ -2,7 +2,8 @@
 // anywhere (l1 norm), and a bound on that sample for any movement. All for inputs within ±1, so that a gain in dB is also a level in dB of full scale.
 import type { ParameterSet } from '../set/types.ts'
 import { freeze } from './frozen.ts'
-import { type LargestGain, largestGain } from './levelsSearch.ts'
+import type { LargestGain } from './levelsPlace.ts'
+import { largestGain } from './levelsSearch.ts'
 import { freezeAtLargestSlope, lineAsOutput, sweepStands } from './levelsSet.ts'
 import { type PeakBounds, peakBounds, readL1 } from './lineNorm.ts'
 import { impulseNorm } from './lineNormFrozen.ts'

@@ -1,32 +1,17 @@
 // The largest |H| over frequency and sweep. Rows of one frequency over every position are looked at where the bound of levelsBound.ts is largest first; the
 // best places are followed to their summits, and the search ends when what was found comes up to the bound, or the work allowed for is done: then the true
 // largest lies between the two, and both are given.
-import { frozenShapeValue, phaseOffset, wrapPhase } from '../dsp/sweep.ts'
 import type { ParameterSet } from '../set/types.ts'
 import { frozenExtremes } from './extremes.ts'
-import { type Frozen, freeze } from './frozen.ts'
-import { frozenRead } from './frozenRead.ts'
-import { boundAt, type FrequencyBound, frequencyBound, hasFilters, largestBound } from './levelsBound.ts'
-import { freezeAtLargestSlope, lineAsOutput, readsTogether } from './levelsSet.ts'
+import type { Frozen } from './frozen.ts'
+import { boundAt, hasFilters, largestBound } from './levelsBound.ts'
+import { frozenAt, type Ground, groundOf, type LargestGain, named, type Place } from './levelsPlace.ts'
+import { freezeAtLargestSlope, lineAsOutput } from './levelsSet.ts'
 import { goldenMaximum } from './loopSearch.ts'
 import { type PathTable, pathPositions, pathStretches, pathTable } from './pathTable.ts'
 import { createTuning, pathValues, type Tuning, tune } from './pathValues.ts'
-import { pathDelays, pathReads, type SweepPath, sweepPath } from './sweepPath.ts'
-import { shapeCorners } from './sweepSlope.ts'
+import { pathDelays } from './sweepPath.ts'
 import { transferAt, transferOf } from './transfer.ts'
-
-export interface LargestGain {
-  /** Reached: |H| at this place. */
-  readonly gain: number
-  /** No held position and no frequency has more; Infinity where the loop gain is not below 1. */
-  readonly bound: number
-  readonly channel: number
-  readonly frequencyHz: number
-  /** Position of the cycle, of voice 0 of channel 0, at which `channel` (or its like) has this gain. */
-  readonly position: number
-  /** Delay of the channel's first voice there, ms. */
-  readonly delayMs: number
-}
 
 /** Found and bound closer than this are one figure: 0.009 dB. */
 const SAME = 0.999
@@ -38,13 +23,8 @@ const POINTS_PER_TOOTH = 6
 const BATCH = 48
 const SPREAD = 400
 const FOLLOWED = 4
-
-interface Place {
-  readonly channel: number
-  readonly omega: number
-  readonly t: number
-  readonly gain: number
-}
+/** Teeth of a standing comb that are looked at one by one. */
+const MOST_TEETH = 1500
 
 interface Search extends Ground {
   readonly tuning: Tuning
@@ -63,10 +43,12 @@ export function largestGain(set: ParameterSet, sampleRate = set.sampleRate): Lar
   const top = tops.reduce((a, b) => (b.value > a.value ? b : a)).omega
   const quick = quickLook(ground, top)
   if (quick.gain >= bound * SAME) return named(ground.path, quick, bound)
-  if (ground.path.stops.length === 1) return standing(ground, quick)
-  const search = createSearch(ground, quick)
+  const still = ground.path.stops.length === 1 ? standing(ground, quick) : null
+  if (still?.whole) return named(ground.path, still.best, still.best.gain)
+  const search = createSearch(ground, still?.best ?? quick)
   const rows = rowsOf(search, top)
-  const cost = search.table.first.length
+  // A row costs its reads, and the phasors of every delay.
+  const cost = search.table.first.length + search.tuning.re.length / 8
   let left = BUDGET
   for (let i = 0; i < rows.length && search.best.gain < bound * SAME && left > 0; i += BATCH) {
     const seeds: Place[] = []
@@ -82,24 +64,6 @@ export function largestGain(set: ParameterSet, sampleRate = set.sampleRate): Lar
     }
   }
   return named(ground.path, search.best, bound)
-}
-
-interface Ground {
-  readonly path: SweepPath
-  readonly frozen: Frozen
-  readonly bounds: readonly FrequencyBound[]
-  readonly delays: Float64Array
-}
-
-function groundOf(set: ParameterSet, sampleRate: number): Ground {
-  const path = sweepPath(set, sampleRate)
-  const frozen = freezeAtLargestSlope(set, 0, sampleRate)
-  return {
-    path,
-    frozen,
-    bounds: Array.from({ length: path.walked }, (_, c) => frequencyBound(frozen, c, inPhase(set, frozen, c))),
-    delays: new Float64Array(pathReads(path)),
-  }
 }
 
 /** Both ends of the path at 0, at π and where the bound is largest: with signs that agree and no low cut, 0 Hz has it all. */
@@ -120,16 +84,19 @@ function quickLook(ground: Ground, top: number): Place {
   return best
 }
 
-/** One position: every peak of its response. */
-function standing({ path, frozen, delays, bounds }: Ground, ends: Place): LargestGain {
+/** One position: every peak of its response, `whole`, or of so many teeth from 0 Hz on. */
+function standing({ path, frozen, delays, bounds }: Ground, ends: Place): { best: Place; whole: boolean } {
   const held = frozenAt({ path, frozen, delays, bounds }, ends.t)
   const perHz = (2 * Math.PI) / path.sampleRate
+  const tooth = toothOf(held)
+  const whole = Math.PI <= MOST_TEETH * tooth
+  const maxHz = whole ? path.sampleRate / 2 : (MOST_TEETH * tooth) / perHz
   let best = ends
-  for (const { kind, channel, frequencyHz, db } of frozenExtremes(held, { withinHz: toothOf(held) / perHz / 1e4 })) {
+  for (const { kind, channel, frequencyHz, db } of frozenExtremes(held, { maxHz, withinHz: tooth / perHz / 1e4 })) {
     const gain = 10 ** (db / 20)
     if (kind === 'peak' && gain > best.gain) best = { channel, omega: frequencyHz * perHz, t: ends.t, gain }
   }
-  return named(path, best, best.gain)
+  return { best, whole }
 }
 
 const toothOf = (frozen: Frozen): number => (2 * Math.PI) / transferOf(frozen).longest
@@ -160,9 +127,6 @@ function createSearch({ path, frozen, bounds, delays }: Ground, best: Place): Se
   }
 }
 
-const inPhase = (set: ParameterSet, { dryDelay, loop }: Frozen, c: number): boolean =>
-  dryDelay === 0 && loop.crossFeed === 0 && readsTogether(set, c)
-
 const highestAt = ({ bounds }: Search, omega: number): number => Math.max(...bounds.map((bound) => boundAt(bound, omega)))
 
 /** ω of every row, the likeliest first: where the bound is largest, the first teeth, and between them the whole range spread evenly by the golden ratio. */
@@ -171,8 +135,10 @@ function rowsOf(search: Search, top: number): number[] {
   const step = tooth / POINTS_PER_TOOTH
   const near = [0, Math.PI, top]
   for (let i = 1; i <= 2 * POINTS_PER_TOOTH; i++) near.push(i * step, top - i * step, top + i * step)
-  const spread = standingPeaks(search) ?? Array.from({ length: SPREAD }, (_, i) => Math.PI * (((i + 1) * 0.6180339887498949) % 1))
   const inside = (omega: number) => omega >= 0 && omega <= Math.PI
+  const peaks = standingPeaks(search)
+  if (peaks !== null) return alternating(near.filter(inside), peaks)
+  const spread = Array.from({ length: SPREAD }, (_, i) => Math.PI * (((i + 1) * 0.6180339887498949) % 1))
   if (!bounds.some(hasFilters)) return alternating(near.filter(inside), spread)
   const bound = (omega: number) => Math.max(...bounds.map((b) => boundAt(b, omega)))
   const ranked = spread.map((omega) => ({ omega, value: bound(omega) })).sort((a, b) => b.value - a.value)
@@ -182,7 +148,7 @@ function rowsOf(search: Search, top: number): number[] {
   )
 }
 
-/** A loop that stands while the voices move rings at its own frequencies, and only there: its peaks up to the 400th. null for others. */
+/** A loop that stands while the voices move rings at its own frequencies, and only there: its peaks up to the 400th, highest first. null for others. */
 function standingPeaks({ path: { set, sampleRate }, frozen }: Search): number[] | null {
   if (frozen.loop.gain === 0 || set.loop.delay !== 'fixed') return null
   const line = freezeAtLargestSlope(lineAsOutput(set), 0, sampleRate)
@@ -191,6 +157,7 @@ function standingPeaks({ path: { set, sampleRate }, frozen }: Search): number[] 
   const maxHz = Math.min(sampleRate / 2, (SPREAD * tooth) / perHz)
   return frozenExtremes(line, { maxHz, withinHz: tooth / perHz / 1e4 })
     .filter(({ kind }) => kind === 'peak')
+    .sort((a, b) => b.db - a.db)
     .map(({ frequencyHz }) => frequencyHz * perHz)
 }
 
@@ -259,67 +226,6 @@ function follow(search: Search, seed: Place): void {
   if (to === from) return
   if (search.best.t === seed.t) omega = search.best.omega
   goldenMaximum(summit, from, to, (to - from) * 0.02)
-}
-
-/** The path's state at t as a frozen set, from which one channel's response is had exactly. */
-function frozenAt({ path, frozen, delays }: Ground, t: number): Frozen {
-  pathDelays(path, t, delays)
-  const { set, lines } = path
-  const voices = set.voices.count
-  // A line that is not walked stands like the first.
-  const loopOf = (line: number) => delays[line < lines ? line : 0] as number
-  return {
-    ...frozen,
-    loop: { ...frozen.loop, reads: frozen.loop.reads.map((_, line) => frozenRead(set.loop.interpolation, loopOf(line))) },
-    channels: frozen.channels.map((channel, c) => ({
-      ...channel,
-      voices: channel.voices.map((_, v) =>
-        frozenRead(set.line.interpolation, delays[lines + (c < path.walked ? c * voices : 0) + v] as number),
-      ),
-    })),
-  }
-}
-
-function named(path: SweepPath, best: Place, bound: number): LargestGain {
-  const { set, sampleRate } = path
-  // Channels that do not hear each other's sweep are walked as if in phase.
-  const walked = path.offsets === null ? 0 : (path.offsets[path.lines + best.channel * set.voices.count] as number)
-  const phase = (path.offsets === null ? positionOf(set, best.t) : best.t) + walked
-  const position = path.stops.length === 1 ? best.t : wrapPhase(phase - phaseOffset(set, best.channel, 0))
-  const { channels } = freeze(set, position, sampleRate)
-  return {
-    gain: best.gain,
-    bound: Math.max(bound, best.gain),
-    channel: best.channel,
-    frequencyHz: (best.omega * sampleRate) / (2 * Math.PI),
-    position,
-    delayMs: ((channels[best.channel]?.voices[0]?.delaySamples ?? 0) * 1000) / sampleRate,
-  }
-}
-
-/** The first position of the cycle at which the shape stands at s. */
-function positionOf({ sweep }: ParameterSet, s: number): number {
-  const corners = [0, ...shapeCorners(sweep), 1]
-  let nearest = { position: 0, away: Number.POSITIVE_INFINITY }
-  const visit = (position: number) => {
-    const away = Math.abs(frozenShapeValue(sweep, position) - s)
-    if (away < nearest.away - 1e-12) nearest = { position: wrapPhase(position), away }
-  }
-  for (let i = 1; i < corners.length; i++) {
-    let a = corners[i - 1] as number
-    let b = (corners[i] as number) - 1e-12
-    if (b <= a) continue
-    visit(a)
-    const rising = frozenShapeValue(sweep, b) > frozenShapeValue(sweep, a)
-    for (let k = 0; k < 60; k++) {
-      const middle = (a + b) / 2
-      if (frozenShapeValue(sweep, middle) < s === rising) a = middle
-      else b = middle
-    }
-    visit(a)
-    visit(b)
-  }
-  return nearest.position
 }
 
 /** What no held position and no frequency exceeds, linear; Infinity where the loop gain is not below 1. A fraction of a millisecond. */

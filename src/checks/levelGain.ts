@@ -1,37 +1,11 @@
 // What level.peak and level.line share: the worst gain against the headroom, the worst sample beside it.
-import { type LevelFigure, type LevelFigures, levelFigures } from '../analysis/levels.ts'
+import type { LevelFigure, LevelFigures } from '../analysis/levels.ts'
 import { levelMends } from './levelMends.ts'
+import { CALLED, type LevelPlace, levelStatus, levelsOf } from './levelStatus.ts'
 import { levelWorking } from './levelWorking.ts'
-import { judge, type Limit, labelOf, limitOf } from './limits.ts'
+import { type Limit, labelOf, limitOf } from './limits.ts'
 import { quantity } from './loopText.ts'
-import type { Check, CheckInput, Figure, Status } from './types.ts'
-
-/** Which of both levels, and how it is called. */
-export type LevelPlace = 'peak' | 'line'
-const CALLED = { peak: { id: 'level.peak', where: 'at the output' }, line: { id: 'level.line', where: 'in the line' } } as const
-
-const cache = new WeakMap<CheckInput, LevelFigures>()
-
-/** The levels of an input's set, computed once a run. */
-export function levelsOf(input: CheckInput): LevelFigures {
-  const known = cache.get(input) ?? levelFigures(input.set, input.sampleRate)
-  cache.set(input, known)
-  return known
-}
-
-/** Status and value of level.peak or level.line, without words or mends. */
-export function levelGainFigure(input: CheckInput, place: LevelPlace): Figure {
-  const level = levelsOf(input)[place]
-  return { status: levelStatus(limitOf(input.set, CALLED[place].id), level), value: level.db }
-}
-
-/** No finite gain fails; a worst sample past the limit is near, though the worst gain holds. */
-export function levelStatus(limit: Limit, { db, sampleDb }: Pick<LevelFigure, 'db' | 'sampleDb'>): Status {
-  if (db === null) return 'fails'
-  const status = judge(limit, db)
-  const over = sampleDb === null || (limit.limit !== null && sampleDb > limit.limit)
-  return status === 'holds' && over ? 'near' : status
-}
+import type { Check, CheckInput } from './types.ts'
 
 export function levelGain(input: CheckInput, place: LevelPlace): Check {
   const { id, where } = CALLED[place]

@@ -1,5 +1,6 @@
 // level.line: the worst gain over frequency and sweep of what is written into the line, which often overflows before the output does.
-import { levelGain, levelGainFigure } from './levelGain.ts'
+import { levelGain } from './levelGain.ts'
+import { levelGainFigure } from './levelStatus.ts'
 import type { CheckFunction, FigureFunction } from './types.ts'
 
 export const levelLine: CheckFunction = (input) => levelGain(input, 'line')

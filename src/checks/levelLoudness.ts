@@ -15,7 +15,9 @@ export function* levelLoudness(input: CheckInput): CheckSteps {
   const { name, channels, resampled } = yield* materialOf(input)
   if ((channels[0]?.length ?? 0) < 0.4 * sampleRate) {
     const text = `${name} is shorter than the 0.4 s that loudness is measured over.`
-    return { ...base, status: 'note', value: null, text, working: [] }
+    const numbers = `${quantity(channels[0]?.length ?? 0)} samples at ${quantity(sampleRate, 'Hz')}`
+    const step = { formula: 'at least one block of 0.4 s', numbers, result: 'not measured', source: 'ITU-R BS.1770-5, gating blocks' }
+    return { ...base, status: 'note', value: null, text, working: [step] }
   }
   const figures = loudnessSteps(set, channels, sampleRate)
   let step = figures.next()

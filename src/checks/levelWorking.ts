@@ -2,7 +2,7 @@
 import type { HeldNorm, LevelFigure, LevelFigures } from '../analysis/levels.ts'
 import { levelDb } from '../analysis/levels.ts'
 import type { PeakBounds } from '../analysis/lineNorm.ts'
-import type { LevelPlace } from './levelGain.ts'
+import type { LevelPlace } from './levelStatus.ts'
 import type { Limit } from './limits.ts'
 import { counted, quantity } from './loopText.ts'
 import type { CheckInput, WorkingStep } from './types.ts'
