@@ -120,6 +120,7 @@ export function mountTransfer({ element, shown, why, changed }: CurvePlace): Cur
     const { transfer: t, request } = now.reply
     const parts = [t.tableX.length > 0 ? 'dots: table points' : `table: ${decimal(request.shaper.tableSize + 1, 0)} points`]
     parts.push(t.largest > 0 ? 'dashed: table error' : 'table exact')
+    if (reach !== '') parts.push('thick: the sound now')
     const beyond = beyondWords(t, request.shaper.tableRange)
     if (beyond) parts.push(beyond)
     return parts.join(' · ')
@@ -185,16 +186,15 @@ export function mountTransfer({ element, shown, why, changed }: CurvePlace): Cur
   }
 
   return {
-    update() {
-      plot.u.setData(data())
-      reach = ''
-    },
+    update: () => plot.u.setData(data()),
     frame() {
       const level = soundingReach(shown())
       const next = level ? `${level.of} ${level.peak.toFixed(3)}` : ''
       if (next === reach) return
+      const comesOrGoes = (next === '') !== (reach === '')
       reach = next
-      plot.drawLive()
+      if (comesOrGoes) plot.redraw()
+      else plot.drawLive()
     },
     reading: ({ reply }) => (cursor === null ? transferRestWords(reply) : transferCursorWords(reply, cursor)),
     summary: transferSummary,
