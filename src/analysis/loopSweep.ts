@@ -149,8 +149,9 @@ export function worstPlace(
   if (!sweep.places.includes(place)) for (const delay of cornersAbout(place)) consider(within(delay))
   const tolerance = sweep.from < DENSE ? 0.002 : 0.02
   const centre = best.place
-  goldenMaximum(consider, within(Math.max(before, centre - 1)), centre, tolerance)
-  goldenMaximum(consider, centre, within(Math.min(after, centre + 1)), tolerance)
+  const [low, high] = [within(Math.max(before, centre - 1)), within(Math.min(after, centre + 1))]
+  if (centre - low > tolerance) goldenMaximum(consider, low, centre, tolerance)
+  if (high - centre > tolerance) goldenMaximum(consider, centre, high, tolerance)
   return best
 }
 

@@ -25,10 +25,13 @@ export function allPolesOfShortLoop(line: LoopLine): Pole[] {
     re[i] = start * Math.cos(angle)
     im[i] = start * Math.sin(angle)
   }
+  let before = Number.POSITIVE_INFINITY
   for (let round = 0; round < 200; round++) {
     let moved = 0
     for (let i = 0; i < order; i++) moved = Math.max(moved, improve(line, den, re, im, i))
-    if (moved < 4e-16) break
+    // Convergence is cubic: from 1e-12 on, what no longer shrinks is rounding.
+    if (moved < 4e-16 || (moved < 1e-12 && moved >= before)) break
+    before = moved
   }
   const poles: Pole[] = []
   for (let i = 0; i < order; i++) {
