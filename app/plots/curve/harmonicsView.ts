@@ -1,5 +1,6 @@
 // Levels of a driven sine's harmonics against drive; DC and what folds (dashed); the shaper's own drive as a line.
 
+import { aliasToneHz } from '../../../src/analysis/folded.ts'
 import { axis, evenSplits } from '../host/axes.ts'
 import { cornerText, middleText } from '../host/corner.ts'
 import { createPlot, type Layer } from '../host/createPlot.ts'
@@ -74,7 +75,7 @@ export function mountHarmonics({ element, shown, why, changed }: CurvePlace): Cu
   })
 
   const toneText = () => {
-    const hz = Math.min(5000, 0.4 * (shown()?.reply.request.sampleRate ?? 48000))
+    const hz = aliasToneHz(shown()?.reply.request.sampleRate ?? 48000)
     return `${decimal(hz / 1000, hz % 1000 === 0 ? 0 : 1)} kHz`
   }
 

@@ -6,8 +6,6 @@ import { loadOrSay } from '../../../shell/usePopup.ts'
 import { useCurrent } from '../../../state/current.ts'
 import { SetField } from './SetField.tsx'
 
-export { applyPoints } from '../../../fields/pointsEditor/drawnBinding.ts'
-
 export type ShaperOwner = 'input.shaper' | 'loop.shaper' | 'mix.shaper'
 
 export interface ShaperBodyProps {
