@@ -10,6 +10,7 @@ interface Start {
   readonly name: string
   readonly notes: string
   readonly layout?: ParameterSet['layout']
+  readonly input?: Partial<ParameterSet['input']>
   readonly line?: Partial<ParameterSet['line']>
   readonly sweep?: Partial<ParameterSet['sweep']>
   readonly voices?: Partial<ParameterSet['voices']>
@@ -68,13 +69,15 @@ const STARTS: Readonly<Record<Intent, Start>> = {
   },
   comb: {
     name: 'New comb',
-    notes: 'Stands still: peaks at multiples of 220 Hz, or close to it, which damping rounds off upwards.',
+    notes:
+      'Stands still: peaks at multiples of 220 Hz, or close to it, which damping rounds off upwards. The input gain keeps them inside the line, the output gain gives it back.',
     layout: 'mono',
+    input: { gainDb: -6 },
     line: { baseMs: 4.54 },
     sweep: { rateHz: 0, depthMs: 0, stereoPhase: 0 },
     voices: ONE_VOICE,
     loop: { feedback: 0.8, delay: 'fixed', interpolation: 'lagrange3', dampingHz: 8000 },
-    mix: { dry: 0.7071, wet: 0.3 },
+    mix: { dry: 0.7071, wet: 0.3, outputGainDb: 6 },
     knobs: [
       ['Pitch', 'line.baseMs', 20, 1, 'log'],
       ['Ring', 'loop.feedback', 0, 0.95, 'linear'],
@@ -100,6 +103,7 @@ export function startingSet(intent: Intent): ParameterSet {
     notes,
     intent,
     layout,
+    input: { ...set.input, ...groups.input },
     line: { ...set.line, ...groups.line },
     sweep: { ...set.sweep, ...groups.sweep },
     voices: { ...set.voices, ...groups.voices },

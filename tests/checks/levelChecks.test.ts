@@ -8,6 +8,7 @@ import { levelPeak, levelPeakFigure } from '../../src/checks/levelPeak.ts'
 import { checkInput } from '../../src/checks/registry.ts'
 import type { Check, CheckFunction, CheckMaterial, CheckSteps, Figure } from '../../src/checks/types.ts'
 import { defaultShaper } from '../../src/set/defaults.ts'
+import { startingSet } from '../../src/set/intents.ts'
 import { withAt } from '../../src/set/path.ts'
 import type { ParameterSet } from '../../src/set/types.ts'
 import { integratedLoudness } from '../../src/signal/loudness.ts'
@@ -115,6 +116,15 @@ describe('both', () => {
       }
     }
   })
+})
+
+describe('starting sets', () => {
+  it.each(['chorus', 'flanger', 'vibrato', 'doubler', 'comb', 'other'] as const)(
+    '%s begins inside its headroom, and whole in mono',
+    (intent) => {
+      for (const check of [levelPeak, levelLine, levelMono]) expect(run(check, startingSet(intent)).status).toBe('holds')
+    },
+  )
 })
 
 describe('level.mono', () => {
