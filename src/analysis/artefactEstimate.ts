@@ -8,7 +8,7 @@ import type { ArtefactWeights } from './artefactLevels.ts'
 import { createMotion, type MotionRead, runMotion, startMotion, type Updates } from './artefactMotion.ts'
 import { noisePower, noiseTopHz } from './artefactNoise.ts'
 import { type ArtefactStage, muteLeaps } from './artefactStage.ts'
-import { frozenRead } from './frozenRead.ts'
+import { type FrozenRead, frozenRead } from './frozenRead.ts'
 
 /** Powers against the wet signal: of the voices' reads, and of the loop's with all its passes. */
 export interface EstimatedPower {
@@ -25,6 +25,8 @@ interface Tone {
 
 const STEP_BINS = 8
 const FRACTIONS = 32
+/** Of the stretches of a group, one in so many is looked at. */
+const EVERY_STRETCH = 3
 
 export function tonesOf({ stage: { sampleRate, length }, weights }: { stage: ArtefactStage; weights: ArtefactWeights }): Tone[] {
   const tones: Tone[] = []
@@ -44,14 +46,18 @@ export function interpolatorPower(kind: Interpolation, tones: readonly Tone[]): 
   const reads = delays.map((delay) => frozenRead(kind, delay))
   for (const { omega, voices, loop } of tones) {
     let [re, im, square] = [0, 0, 0]
-    for (const [i, { first, taps, pole }] of reads.entries()) {
+    const [c, s] = [Math.cos(omega), Math.sin(omega)]
+    for (let i = 0; i < FRACTIONS; i++) {
+      const { first, taps, pole } = reads[i] as FrozenRead
       const phase = omega * ((delays[i] as number) - first)
-      let [nr, ni] = [0, 0]
-      for (const [k, tap] of taps.entries()) {
-        nr += tap * Math.cos(phase - k * omega)
-        ni += tap * Math.sin(phase - k * omega)
+      // The phasor of each tap is the last one's, turned back by ω.
+      let [pr, pi, nr, ni] = [Math.cos(phase), Math.sin(phase), 0, 0]
+      for (let k = 0; k < taps.length; k++) {
+        nr += (taps[k] as number) * pr
+        ni += (taps[k] as number) * pi
+        ;[pr, pi] = [pr * c + pi * s, pi * c - pr * s]
       }
-      const [dr, di] = [1 + pole * Math.cos(omega), -pole * Math.sin(omega)]
+      const [dr, di] = [1 + pole * c, -pole * s]
       const d2 = dr * dr + di * di
       re += (nr * dr + ni * di) / d2
       im += (ni * dr - nr * di) / d2
@@ -70,16 +76,16 @@ export function* updatesPower(stage: ArtefactStage, tones: readonly Tone[], upda
   const windowPower = stage.window.reduce((sum, w) => sum + w * w, 0)
   const misses = { cycle: { voices: 0, loop: 0 }, steepest: { voices: 0, loop: 0 } }
   const motion = createMotion(stage.set, stage.sampleRate, updates, stage.loops)
-  for (const { group, phase, voices, loop } of stage.stretches) {
+  const stretches = stage.stretches.filter((_, i) => i % EVERY_STRETCH === 0)
+  for (const { group, phase, voices, loop } of stretches) {
     const tracks = loop ? [...voices, loop] : voices
     const reads = tracks.map(({ read }): MotionRead => ({ r: read, kind: 'linear', line: null, out: new Float64Array(stage.length) }))
     startMotion(motion, phase)
     runMotion(motion, reads, 0, stage.length)
     for (const [k, { out }] of reads.entries()) {
       const { delays, leaps, read } = tracks[k] as (typeof tracks)[number]
-      const miss = out.map((delay, j) => (delay - (delays[j] as number)) * (stage.window[j] as number))
-      muteLeaps(miss, leaps, updates.every)
-      const power = miss.reduce((sum, x) => sum + x * x, 0) / windowPower / stage.stretches.length
+      const power =
+        missPower(out, delays, stage.window, leaps.length > 0 ? { leaps, every: updates.every } : null) / windowPower / stretches.length
       if (read === LOOPS) misses[group].loop += 2 * power
       else misses[group].voices += (2 * power) / voices.length
     }
@@ -91,4 +97,18 @@ export function* updatesPower(stage: ArtefactStage, tones: readonly Tone[], upda
     voices: Math.max(cycle.voices, steepest.voices) * squares('voices'),
     loop: Math.max(cycle.loop, steepest.loop) * squares('loop'),
   }
+}
+
+/** Σ ((D − true D) · window)², without what is near leaps. Overwrites `out`, which holds D. */
+function missPower(
+  out: Float64Array,
+  delays: Float64Array,
+  window: Float64Array,
+  near: { readonly leaps: readonly number[]; readonly every: number } | null,
+): number {
+  for (let j = 0; j < out.length; j++) out[j] = ((out[j] as number) - (delays[j] as number)) * (window[j] as number)
+  if (near) muteLeaps(out, near.leaps, near.every)
+  let power = 0
+  for (let j = 0; j < out.length; j++) power += (out[j] as number) ** 2
+  return power
 }

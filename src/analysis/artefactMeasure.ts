@@ -68,9 +68,9 @@ function errorsOf({ length }: ArtefactStage, stretch: Stretch, motion: Motion, c
     // Read by the reference at the delays of every sample, it is the reference.
     if (reads[k]?.line === null && choice.updates.every === 1) return new Float64Array(length)
     const read = reads[k]?.line === null ? readExactly(track.line, out) : out
-    const error = read.map((x, j) => x - (track.reference[j] as number))
-    muteLeaps(error, track.leaps, choice.updates.every)
-    return error
+    for (let j = 0; j < length; j++) read[j] = (read[j] as number) - (track.reference[j] as number)
+    muteLeaps(read, track.leaps, choice.updates.every)
+    return read
   })
 }
 

@@ -50,13 +50,13 @@ export interface ArtefactStage {
 }
 
 /**
- * Stretches of 85 ms at 48 kHz, 12 over the cycle and 12 at its steepest; 8 each from three voices on, of which each adds its own. `material`: one period
+ * Stretches of 85 ms at 48 kHz, 12 over the cycle and 12 at its steepest; 8 or 6 each where there are more voices, of which each adds its own. `material`: one period
  * of what is in the line instead of the noise, {@link NOISE_PERIOD} samples.
  */
 export function* artefactStage(set: ParameterSet, sampleRate: number, material?: Float64Array): Generator<number, ArtefactStage> {
   const length = sampleRate <= 64000 || set.voices.count > 4 ? 4096 : 8192
   const loops = set.loop.feedback !== 0 && set.loop.delay === 'moving'
-  const count = length * set.voices.count > 8192 ? 8 : 12
+  const count = length * set.voices.count <= 8192 ? 12 : set.voices.count <= 4 ? 8 : 6
   const { cycle, steepest } = artefactPlaces(set, count)
   const places = [...cycle.map((phase) => ['cycle', phase] as const), ...steepest.map((phase) => ['steepest', phase] as const)]
   // D at every sample, exactly: what updates and interpolators are to come near.
