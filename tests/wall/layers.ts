@@ -32,6 +32,7 @@ const SERVICES = [
   'app/shell/fileAccess.ts',
   'app/shell/layout.ts',
   'app/shell/usePopup.ts',
+  'app/shell/fetched.tsx',
 ]
 const AREA = [...SERVICES, 'app/plots', 'app/fields', 'app/midi', 'app/audio', 'app/state', 'app/styles', ...CLIENTS, ...PURE]
 
@@ -66,11 +67,11 @@ export const LAYERS: readonly Layer[] = [
   { folder: 'app/workers', may: [...PURE, 'app/plots/columns.ts'], types: ['app/state'] },
   {
     folder: 'app/plots',
-    may: ['app/state', 'app/styles', ...CLIENTS, 'app/workers/analysisJobs/powerDb.ts', ...PURE],
+    may: ['app/state', 'app/styles', 'app/shell/fileAccess.ts', ...CLIENTS, 'app/workers/analysisJobs/powerDb.ts', ...PURE],
     types: ['app/workers'],
     packages: ['uplot', ...VIEW],
   },
-  { folder: 'app/fields', may: ['app/state', 'app/styles', ...PURE], packages: VIEW },
+  { folder: 'app/fields', may: ['app/state', 'app/styles', 'app/shell/usePopup.ts', ...PURE], packages: VIEW },
   { folder: 'app/midi', may: ['app/state', 'app/fields', ...PURE], packages: VIEW },
   {
     folder: 'app/audio',
@@ -83,7 +84,7 @@ export const LAYERS: readonly Layer[] = [
     may: ['src/set', 'src/signal', 'src/dsp', 'src/firmware', 'src/material/tone.ts', 'app/audio/buildId.ts'],
     types: ['app/state/session.ts'],
   },
-  { folder: 'app/areas/shape', may: AREA, packages: VIEW },
+  { folder: 'app/areas/shape', may: AREA, types: ['app/workers'], packages: VIEW },
   { folder: 'app/areas/ship', may: AREA, packages: VIEW },
   { folder: 'app/areas/bench', may: AREA, packages: VIEW },
   ...SERVICES.map((folder) => ({ folder, may: ['app/state', ...SERVICES], packages: VIEW })),
