@@ -79,7 +79,7 @@ export function loopGains(set: ParameterSet, sampleRate = set.sampleRate): LoopG
 
 /**
  * The strongest word for a valid set at `sampleRate` (Hz). Closed form but for `computed`, which factors the read operator over the sweep, and only where nothing
- * stronger holds and it could help. `norm` is certified even where it does not help, for what a weaker word says and offers.
+ * stronger holds and it could help. `norm` is also certified where it only makes what a weaker word says and offers more exact.
  */
 export function stability(set: ParameterSet, sampleRate = set.sampleRate): Stability {
   return withNorm(set, sampleRate, stabilityWord(set, sampleRate))
@@ -100,11 +100,11 @@ export function stabilityWord(set: ParameterSet, sampleRate = set.sampleRate): S
 /** |g| σ max|F|: the energy gain of a loop whose read is passive. */
 const energyGain = ({ feedback, sector, toneMax: max }: LoopGains): number => feedback * sector.bound * max
 
-/** Adds the certified norm to a word weaker than `computed`. */
+/** Adds the certified norm to a word weaker than `computed`, where it says more than γ∞ and γ2 do. */
 export function withNorm(set: ParameterSet, sampleRate: number, word: Stability): Stability {
   const gain = energyGain(word)
   if (word.word === 'proven' || word.norm !== null || !word.movement.moves || !(gain < 1)) return word
-  const norm = certifiedNorm(set, sampleRate)
+  const norm = certifiedNorm(set, sampleRate, { below: Math.min(word.gammaInfinity, word.gamma2 ?? Number.POSITIVE_INFINITY) / gain })
   return { ...word, norm, gammaN: norm && gain * norm.norm }
 }
 
