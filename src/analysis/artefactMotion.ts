@@ -40,7 +40,7 @@ export function createMotion(set: ParameterSet, sampleRate: number, updates: Upd
 /** A multiple of every update interval: stretches begin there, in the time of their own sweep. */
 const ORIGIN = 4096
 
-/** Puts the sweep where voice 0 has phase `phase`, cycles, at sample 0 of what is planned next; `first`: where planning begins, ≥ −ORIGIN. */
+/** Puts the sweep where voice 0 of channel 0 has phase `phase`, cycles, at sample 0 of a stretch. What runs next may begin up to ORIGIN samples sooner. */
 export function startMotion(motion: Motion, phase: number): void {
   const { trajectory, settings, ahead } = motion
   trajectory.since = ORIGIN
