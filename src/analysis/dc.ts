@@ -7,6 +7,7 @@ import { createEngine, outputChannels, processEngine } from '../dsp/engine.ts'
 import { delayRange } from '../set/delayRange.ts'
 import type { ParameterSet, Shaper } from '../set/types.ts'
 import { lineAsOutput, sweepStands } from './levelsSet.ts'
+import { partOf } from './levelsSteps.ts'
 import { sectorOf } from './sector.ts'
 
 export interface DcFigures {
@@ -56,8 +57,8 @@ export function* dcSteps(set: ParameterSet, sampleRate = set.sampleRate): Genera
   const plan = { sampleRate, period, settle, frames }
   const lineToo = uneven.some((path) => path !== 'mix.shaper')
   const parts = lineToo ? 2 : 1
-  const output = yield* scaled(largestMean(run, plan), 0, parts)
-  const line = lineToo ? yield* scaled(largestMean(lineAsOutput(run), plan), 1, parts) : 0
+  const output = yield* partOf(largestMean(run, plan), 0, 1 / parts)
+  const line = lineToo ? yield* partOf(largestMean(lineAsOutput(run), plan), 1 / parts, 1 / parts) : 0
   return {
     line,
     output,
@@ -66,13 +67,6 @@ export function* dcSteps(set: ParameterSet, sampleRate = set.sampleRate): Genera
     windowSeconds: frames / sampleRate,
     cycles,
     rateHz,
-  }
-}
-
-function* scaled<T>(steps: Generator<number, T>, part: number, parts: number): Generator<number, T> {
-  for (let step = steps.next(); ; step = steps.next()) {
-    if (step.done) return step.value
-    yield (part + step.value) / parts
   }
 }
 

@@ -2,6 +2,7 @@
 import { createEngine, inputChannels, outputChannels, processEngine } from '../dsp/engine.ts'
 import type { ParameterSet } from '../set/types.ts'
 import { integratedLoudnessSteps } from '../signal/loudness.ts'
+import { partOf } from './levelsSteps.ts'
 
 export interface LoudnessFigures {
   /** LUFS; null where nothing passes the gate (below −70 LUFS). */
@@ -23,22 +24,15 @@ export function* loudnessSteps(
 ): Generator<number, LoudnessFigures> {
   const frames = material[0]?.length ?? 0
   if (!(frames >= 0.4 * sampleRate)) throw new RangeError(`material must be 0.4 s or longer, got ${frames} samples at ${sampleRate} Hz`)
-  const output = yield* share(rendered(set, material, sampleRate), 0, 0.6)
+  const output = yield* partOf(rendered(set, material, sampleRate), 0, 0.6)
   const straight = bypassed(set, material)
   const diverged = output === null
-  const effect = output === null ? null : finite(yield* share(integratedLoudnessSteps(output, sampleRate), 0.6, 0.2))
-  const bypass = finite(yield* share(integratedLoudnessSteps(straight, sampleRate), 0.8, 0.2))
+  const effect = output === null ? null : finite(yield* partOf(integratedLoudnessSteps(output, sampleRate), 0.6, 0.2))
+  const bypass = finite(yield* partOf(integratedLoudnessSteps(straight, sampleRate), 0.8, 0.2))
   return { effect, bypass, differenceLu: effect === null || bypass === null ? null : effect - bypass, diverged }
 }
 
 const finite = (lufs: number): number | null => (Number.isFinite(lufs) ? lufs : null)
-
-function* share<T>(steps: Generator<number, T>, from: number, part: number): Generator<number, T> {
-  for (let step = steps.next(); ; step = steps.next()) {
-    if (step.done) return step.value
-    yield from + part * step.value
-  }
-}
 
 /** The set's output, or null where it is not finite. */
 function* rendered(set: ParameterSet, material: readonly Float64Array[], sampleRate: number): Generator<number, Float64Array[] | null> {

@@ -1,5 +1,6 @@
 // level.loudness: how much louder the effect is than its bypass, on plucked chords or the material given.
 import { type LoudnessFigures, loudnessSteps } from '../analysis/levelsLoudness.ts'
+import { partOf } from '../analysis/levelsSteps.ts'
 import { pluckedChordsPhraseSteps } from '../material/phrases.ts'
 import { resampleTo } from '../signal/resample.ts'
 import { labelOf } from './limits.ts'
@@ -19,10 +20,8 @@ export function* levelLoudness(input: CheckInput): CheckSteps {
     const step = { formula: 'at least one block of 0.4 s', numbers, result: 'not measured', source: 'ITU-R BS.1770-5, gating blocks' }
     return { ...base, status: 'note', value: null, text, working: [step] }
   }
-  const figures = loudnessSteps(set, channels, sampleRate)
-  let step = figures.next()
-  for (; !step.done; step = figures.next()) yield MATERIAL_PART + (1 - MATERIAL_PART) * step.value
-  const { effect, bypass, differenceLu, diverged } = step.value
+  const figures = yield* partOf(loudnessSteps(set, channels, sampleRate), MATERIAL_PART, 1 - MATERIAL_PART)
+  const { effect, bypass, differenceLu, diverged } = figures
   const seconds = quantity((channels[0] as Float64Array).length / sampleRate, 's')
   const material = `${name}, ${seconds}${resampled}, routed as the layout asks`
   const source = 'ITU-R BS.1770-5: K-weighting, blocks of 400 ms, gates at −70 LUFS and −10 LU'
@@ -30,7 +29,7 @@ export function* levelLoudness(input: CheckInput): CheckSteps {
     ...base,
     status: statusOf(differenceLu),
     value: differenceLu,
-    text: textOf(name, step.value),
+    text: textOf(name, figures),
     working: [
       { formula: '−0.691 + 10 log₁₀ Σ z of the bypass', numbers: material, result: lufs(bypass), source },
       {
@@ -71,10 +70,7 @@ function* materialOf({ material, sampleRate }: CheckInput): Generator<number, Ma
     }
   }
   if (chords?.sampleRate !== sampleRate) {
-    const steps = pluckedChordsPhraseSteps(sampleRate)
-    let step = steps.next()
-    for (; !step.done; step = steps.next()) yield MATERIAL_PART * step.value
-    chords = { sampleRate, samples: step.value }
+    chords = { sampleRate, samples: yield* partOf(pluckedChordsPhraseSteps(sampleRate), 0, MATERIAL_PART) }
   }
   return { name: 'The built-in plucked chords', channels: [chords.samples], resampled: '' }
 }
