@@ -197,6 +197,15 @@ const LOOP_GAIN: Directions = {
   'loop.shaper.ceiling': 'rises',
 }
 
+type ShaperPath = 'input.shaper' | 'loop.shaper' | 'mix.shaper'
+
+/** What a curve puts out at most, P k(v/P), against its limits: curves that only flatten rise with P, a dead zone widens with it, a drawn one may do anything. */
+function limitDirections({ set }: PanelBox, path: ShaperPath): Directions {
+  const shaper = path === 'loop.shaper' ? set.loop.shaper : path === 'input.shaper' ? set.input.shaper : set.mix.shaper
+  const limit: Direction = shaper?.curve === 'drawn' ? 'any' : shaper?.curve === 'deadZone' ? 'falls' : 'rises'
+  return { [`${path}.positive`]: limit, [`${path}.negative`]: limit, [`${path}.deadZone`]: 'falls' }
+}
+
 /** 0 where a level holds the line or its gain is below 1, 1 where neither: a bound of what can diverge. The level follows all that raises what comes back. */
 export const unboundedOf: PanelFigure = {
   listed: [...loopKind, 'sweep.law', 'sweep.shape'],
@@ -205,9 +214,7 @@ export const unboundedOf: PanelFigure = {
       ? {}
       : {
           ...LOOP_GAIN,
-          'loop.shaper.positive': 'rises',
-          'loop.shaper.negative': 'rises',
-          'loop.shaper.deadZone': 'falls',
+          ...limitDirections(box, 'loop.shaper'),
         },
   worse: (set, sampleRate) => {
     const { gain, level } = loopBounds(set, sampleRate)
@@ -246,26 +253,24 @@ export const poleCover: PanelFigure = {
  */
 export const gainCover = (place: 'peak' | 'line'): PanelFigure => ({
   listed: [...loopKind, 'line.interpolation', 'input.shaper.curve', 'mix.shaper.curve', 'mix.dryTap'],
-  directions: () => ({
+  directions: (box) => ({
     'input.gainDb': 'rises',
     'loop.feedback': 'ends',
     'loop.dampingHz': 'rises',
     'loop.lowCutHz': 'falls',
-    ...shaperDirections('input.shaper'),
-    ...shaperDirections('loop.shaper'),
-    ...(place === 'peak' ? OUTPUT : {}),
+    ...shaperDirections(box, 'input.shaper'),
+    ...shaperDirections(box, 'loop.shaper'),
+    ...(place === 'peak' ? { ...OUTPUT, ...shaperDirections(box, 'mix.shaper') } : {}),
   }),
   convex: () => ['mix.dry', 'mix.wet'],
   near: 0.02,
   worse: (set, sampleRate) => gainBound(set, sampleRate, place),
 })
 
-const shaperDirections = (path: string): Directions => ({
+const shaperDirections = (box: PanelBox, path: ShaperPath): Directions => ({
   [`${path}.drive`]: 'rises',
   [`${path}.ceiling`]: 'rises',
-  [`${path}.positive`]: 'rises',
-  [`${path}.negative`]: 'rises',
-  [`${path}.deadZone`]: 'falls',
+  ...limitDirections(box, path),
 })
 
 const OUTPUT: Directions = {
@@ -275,5 +280,4 @@ const OUTPUT: Directions = {
   'mix.wetHighCutHz': 'rises',
   'mix.wetLowCutHz': 'falls',
   'voices.count': 'rises',
-  ...shaperDirections('mix.shaper'),
 }

@@ -11,7 +11,7 @@ import { panelMargin, panelPoles, panelRing, panelStability } from '../../src/ch
 import { panelDetune, panelFusion, panelRange } from '../../src/checks/panelBoxSweep.ts'
 import { CHECKS } from '../../src/checks/registry.ts'
 import type { CheckEntry, CheckValue, Figure } from '../../src/checks/types.ts'
-import { delayRange } from '../../src/set/delayRange.ts'
+import { delayRange, MAX_DELAY_MS } from '../../src/set/delayRange.ts'
 import type { Knob, ParameterSet } from '../../src/set/types.ts'
 import { createRandom } from '../../src/signal/random.ts'
 import { loopSet, shaper } from '../analysis/loopSets.ts'
@@ -55,14 +55,17 @@ describe('no position is worse than what is stated', () => {
         const fusion = stated(set, panelFusion, 'sweep.fusion')
         if (range.finding.by === 'samples' || fusion.finding.by === 'samples') return
         known++
-        const room = (range.limit as { roomSamples: number }).roomSamples
+        // Too long is judged with too close: the lesser room of both.
+        const roomOf = ({ value }: Figure): number => {
+          const { roomSamples, largestMs } = value as { roomSamples: number; largestMs: number }
+          return Math.min(roomSamples, ((MAX_DELAY_MS - largestMs) * set.sampleRate) / 1000)
+        }
+        const room = range.finding.bound ? (range.limit as { roomSamples: number }).roomSamples : roomOf(range.figure)
         for (let i = 0; i < 40; i++) {
           const there = turned(set, positionsOf(set.panel, next))
           const figure = figureAt(there, 'sweep.range')
-          const here = (figure.value as { roomSamples: number }).roomSamples
-          // Too long is judged with too close: the status of both must not be worse.
+          expect(roomOf(figure)).toBeGreaterThanOrEqual(room - slack(room))
           expect(rankOf(figure.status)).toBeLessThanOrEqual(rankOf(range.status))
-          if (range.status === 'holds') expect(here).toBeGreaterThanOrEqual(Math.min(room, here) - slack(room))
           expect(delayRange(there, 1000).voices.maxSamples).toBeLessThanOrEqual((fusion.limit as number) + slack(fusion.limit as number))
         }
       }),
