@@ -1,14 +1,14 @@
 import { describe, expect, it } from 'vitest'
-import { runChecks } from '../../src/checks/registry.ts'
-import type { Check } from '../../src/checks/types.ts'
+import { CHECKS, checkInput, runChecks } from '../../src/checks/registry.ts'
+import type { Check, CheckFunction } from '../../src/checks/types.ts'
 import { withAt } from '../../src/set/path.ts'
 import type { ParameterSet } from '../../src/set/types.ts'
 import { loopSet, shaper } from '../analysis/loopSets.ts'
 
 function checkOf(set: ParameterSet, id: Check['id']): Check {
-  const found = runChecks(set).find((check) => check.id === id)
-  if (!found) throw new Error(`${id} did not run`)
-  return found
+  const entry = CHECKS.find((check) => check.id === id)
+  if (!entry) throw new Error(`there is no ${id}`)
+  return (entry.run as CheckFunction)(checkInput(set))
 }
 
 describe('loop.stability', () => {
@@ -158,7 +158,7 @@ describe('loop.poles and loop.ring', () => {
 })
 
 it('without feedback all four hold and say so', () => {
-  for (const check of runChecks(loopSet({})).filter(({ id }) => id.startsWith('loop.'))) {
+  for (const check of runChecks(loopSet({}), { kinds: ['closed'] }).filter(({ id }) => id.startsWith('loop.'))) {
     expect(check.status).toBe('holds')
     expect(check.text).toContain('No loop')
     if (check.id !== 'loop.stability') expect(check.value).toBeNull()
