@@ -12,17 +12,17 @@ export function gainBound(set: ParameterSet, sampleRate: number, place: 'peak' |
   // Channels differ in sign and delays, which do not count.
   const gain = largestBound(frequencyBound(frozen, 0, false)).value
   const bends = judged.input.shaper !== null || judged.mix.shaper !== null || (judged.loop.shaper !== null && judged.loop.feedback !== 0)
-  const ceiling = bends
-    ? (peakBounds({ ...judged, sweep: MOVING(judged) }, sampleRate).output ?? Number.POSITIVE_INFINITY)
-    : Number.POSITIVE_INFINITY
-  const least = Math.min(gain, ceiling)
+  const ceiling = bends ? peakBounds(anyDelays(judged), sampleRate).output : null
+  const least = Math.min(gain, ceiling ?? Number.POSITIVE_INFINITY)
   return least === Number.POSITIVE_INFINITY ? least : levelDb(least)
 }
 
-/** A sweep that moves: where one stands, its reads are counted as they stand there. */
-const MOVING = ({ sweep }: ParameterSet): ParameterSet['sweep'] => ({
-  ...sweep,
-  rateHz: sweep.rateHz || 1,
-  depthMs: sweep.depthMs || 1,
-  depthOctaves: sweep.depthOctaves || 1,
-})
+/** With reads that move apart from each other: standing or together they are counted as they stand, which depends on their delays. */
+function anyDelays(set: ParameterSet): ParameterSet {
+  return {
+    ...set,
+    sweep: { ...set.sweep, shape: 'sine', rateHz: 1, depthMs: 1, depthOctaves: 1 },
+    loop: { ...set.loop, delay: 'moving' },
+    mix: { ...set.mix, dryDelayMs: 20 },
+  }
+}
