@@ -25,7 +25,7 @@ export interface CertifiedNorm {
 
 /** Rows of R that one cycle may cost, and all cycles but the first together: 30 to 60 ns each. */
 const BUDGET = 1_500_000
-const MORE_CYCLES = 500_000
+const MORE_CYCLES = 300_000
 const MARGIN = 0.01
 const BLOCK = 4096
 /** Rows past a cycle's end, so that what its first rows share with the cycle before is seen too. */
@@ -62,8 +62,8 @@ export function certifiedNorm(
   { budget = BUDGET, below = Number.POSITIVE_INFINITY }: NormOptions = {},
 ): CertifiedNorm | null {
   if (!loopMovement(set, sampleRate).moves) return { norm: 1, measured: 1, margin: 0, method: 'cycles', alignments: 1, repeats: true }
-  const limits = { budget, below }
-  if (set.sweep.shape !== 'drift') return normOfSweep(set, sampleRate, limits)
+  if (set.sweep.shape !== 'drift') return normOfSweep(set, sampleRate, { budget, below })
+  const limits = { budget: budget / 2, below }
   // A cosine from −1 to 1 in one cycle is a sine of half the rate.
   const steepest = normOfSweep({ ...set, sweep: { ...set.sweep, shape: 'sine', rateHz: set.sweep.rateHz / 2 } }, sampleRate, limits)
   const drawn = steepest && normOfSweep(set, sampleRate, limits, steepest.measured)
