@@ -28,12 +28,13 @@ function sureText({ by, bound, looks }: PanelFinding, { unit }: Check): string {
   if (by === 'rendered corners') return ''
   if (bound === undefined) return ''
   if (bound === null) return ` The worst of ${looks} places tried.`
+  if (bound.value === null) return ' What other positions reach has no bound.'
   return ` No position passes ${valueText(bound.value, unit)}.`
 }
 
 export function valueText(value: CheckValue, unit: string): string {
   if (typeof value === 'number') return quantity(value, unit)
-  if (value === null) return 'no limit'
+  if (value === null) return 'no figure'
   if (typeof value === 'object')
     return Object.entries(value)
       .map(([key, part]) => `${key} ${typeof part === 'number' ? quantity(part) : String(part)}`)
