@@ -1,7 +1,7 @@
 // Entry: what was kept is read before the first paint, then the frame is drawn. Stores are made once, outside React.
 import { CSPProvider } from '@base-ui/react/csp-provider'
 import { StrictMode } from 'react'
-import { createRoot } from 'react-dom/client'
+import { createRoot, type Root } from 'react-dom/client'
 import './styles/tokens.css'
 import './styles/base.css'
 import './styles/dialog.css'
@@ -15,20 +15,24 @@ import { keptTheme, watchTheme } from './shell/theme.ts'
 import { restoreState, watchState } from './state/storage.ts'
 import { useView } from './state/view.ts'
 
-for (const notice of restoreState()) say('note', notice)
-useView.setState({ theme: keptTheme() })
-watchTheme()
-watchLayout()
-watchState()
-watchKeys(mute)
-watchDrops()
-
 const root = document.getElementById('root')
 if (!root) throw new TypeError('index.html has no #root')
-createRoot(root).render(
-  <StrictMode>
-    <CSPProvider disableStyleElements>
-      <App />
-    </CSPProvider>
-  </StrictMode>,
-)
+// No await at the top: a part fetched meanwhile may import from this very file's chunk, which would wait for itself.
+void start(createRoot(root))
+
+async function start(page: Root): Promise<void> {
+  for (const notice of await restoreState()) say('note', notice)
+  useView.setState({ theme: keptTheme() })
+  watchTheme()
+  watchLayout()
+  watchState()
+  watchKeys(mute)
+  watchDrops()
+  page.render(
+    <StrictMode>
+      <CSPProvider disableStyleElements>
+        <App />
+      </CSPProvider>
+    </StrictMode>,
+  )
+}

@@ -4,7 +4,7 @@ import { currentSet } from '../state/current.ts'
 import { type Source, useSession } from '../state/session.ts'
 import { askMaterial } from '../workers/materialClient.ts'
 import type { Material, MaterialReply } from '../workers/materialProtocol.ts'
-import { decodeInBrowser } from './browserDecode.ts'
+import type { Decoded } from './browserDecode.ts'
 import { currentGraph } from './currentGraph.ts'
 import { post } from './graph.ts'
 import type { SourceMessage } from './worklet/messages.ts'
@@ -117,6 +117,12 @@ async function readFile(file: File, rate: number): Promise<MaterialReply> {
   }
   const decoded = await decodeInBrowser(file, rate)
   return decoded.ok ? byBrowser(decoded.channels, rate) : { ok: false, code: 'foreign', reason: decoded.reason, hint: decoded.hint }
+}
+
+/** Its code comes with the first file that needs it. */
+async function decodeInBrowser(file: File, rate: number): Promise<Decoded> {
+  const part = await loadOrSay(() => import('./browserDecode.ts'))
+  return part ? part.decodeInBrowser(file, rate) : { ok: false, reason: 'a part of the page could not be fetched', hint: 'try again' }
 }
 
 async function byBrowser(channels: readonly Float32Array[], rate: number): Promise<MaterialReply> {

@@ -1,7 +1,8 @@
 // The working state across reloads: written to localStorage at each commit and when the page is hidden, under the tab's own id, and
-// read before the first paint. A new tab starts from the state written last. Nothing read here is trusted.
+// read before the first paint. A new tab starts from the state written last. Nothing read here is trusted: what judges a set is fetched when
+// there is one to judge, so a first visit does without.
 import { create } from 'zustand'
-import { parseSet } from '../../src/set/parse.ts'
+import type { Result } from '../../src/set/result.ts'
 import type { ParameterSet } from '../../src/set/types.ts'
 import { type DocumentState, restoreDocument, type SlotId, useDocument } from './document.ts'
 import { accepted, KEEP_DOCUMENT, KEEP_SESSION, KEEP_VIEW, pick } from './keep.ts'
@@ -21,14 +22,14 @@ export const useSaved = create<{ readonly problem: string | null }>()(() => ({ p
 let tabId = ''
 
 /** Reads what was kept into the stores. Returns what the user must be told, empty when all is well. */
-export function restoreState(): readonly string[] {
+export async function restoreState(): Promise<readonly string[]> {
   try {
     tabId = sessionStorage.getItem(LAST_KEY) ?? ''
     const own = tabId === '' ? null : localStorage.getItem(TAB_PREFIX + tabId)
     const text = own ?? localStorage.getItem(TAB_PREFIX + (localStorage.getItem(LAST_KEY) ?? ''))
     if (tabId === '') takeTabId(newId())
     restoreBrowser()
-    return text === null ? [] : restoreTab(text)
+    return text === null ? [] : await restoreTab(text)
   } catch {
     useSaved.setState({ problem: 'this browser keeps nothing for this page' })
     return ['This browser keeps nothing for this page: what you change is gone when it closes. Save your sets as files.']
@@ -41,7 +42,7 @@ function restoreBrowser(): void {
   useSession.setState(accepted(read, KEEP_SESSION, 'browser'))
 }
 
-function restoreTab(text: string): readonly string[] {
+async function restoreTab(text: string): Promise<readonly string[]> {
   const read = parsed(text)
   if (read === undefined) return unreadable(text, 'it is not whole')
   const { document, view, session } = read as Record<string, unknown>
@@ -49,6 +50,8 @@ function restoreTab(text: string): readonly string[] {
   useSession.setState(accepted(session, KEEP_SESSION, 'tab'))
   const { slots, slot } = accepted<DocumentState>(document, KEEP_DOCUMENT, 'tab')
   const sets: Partial<Record<SlotId, ParameterSet>> = {}
+  const parseSet = await loadParser()
+  if (parseSet === null) return unreadable(text, 'a part of the page could not be fetched')
   for (const [id, value] of Object.entries(slots ?? {})) {
     const result = parseSet(value)
     if (!result.ok) return unreadable(text, result.problems[0]?.message ?? 'a set is not valid')
@@ -58,6 +61,9 @@ function restoreTab(text: string): readonly string[] {
   restoreDocument({ slots: sets, slot })
   return []
 }
+
+const loadParser = (): Promise<((json: unknown) => Result<ParameterSet>) | null> =>
+  import('../../src/set/parse.ts').then(({ parseSet }) => parseSet).catch(() => null)
 
 function unreadable(text: string, reason: string): readonly string[] {
   localStorage.setItem(UNREADABLE_KEY, text)

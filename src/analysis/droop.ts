@@ -26,6 +26,9 @@ export interface Droop {
 
 export const droopFrequencyHz = (sampleRate: number): number => Math.min(10000, 0.4 * sampleRate)
 
+/** A whole delay loses nothing; rounding says otherwise by about this. */
+const ROUNDING_DB = 1e-12
+
 /**
  * −20 log10 |A(e^{jω})|, dB, of one read of `delay` samples by `kind`: 0 where it loses nothing. linear at half a sample: |A| = cos(ω/2) (J. O. Smith,
  * PASP, "Linear Interpolation"); nearest reads a sample as it is, allpass1 has |A| = 1.
@@ -37,7 +40,8 @@ export function readLossDb(kind: Interpolation, delay: number, omega: number): n
     re += tap * Math.cos(k * omega)
     im -= tap * Math.sin(k * omega)
   }
-  return 0 - toDb(Math.hypot(re, im))
+  const loss = 0 - toDb(Math.hypot(re, im))
+  return Math.abs(loss) < ROUNDING_DB ? 0 : loss
 }
 
 /**

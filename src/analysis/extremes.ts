@@ -34,6 +34,8 @@ const ROOT_HZ = 0.002
 const SAME_LEVEL = 2.3e-7
 /** Power this far below the largest is rounding. */
 const ROUNDING = 1e-24
+/** Power this far below what dry and wet would give side by side is what is left when they cancel everywhere. */
+const CANCELLED = 1e-27
 /** Power this far below the largest, at 0 Hz or fs/2, is a null. */
 const NULL_POWER = 1e-20
 
@@ -59,7 +61,7 @@ export function frozenExtremes(frozen: Frozen, options: ExtremeOptions = {}): Ex
   const transfer = transferOf(frozen)
   const trails = frozen.channels.map((_, channel): Trail => {
     const search: Search = { transfer, channel, tolerance, out: new Float64Array(4 * transfer.channels), found: [] }
-    return { search, a: null, b: null, bentBefore: false, largest: 0 }
+    return { search, floor: CANCELLED * sideBySide(frozen, channel), a: null, b: null, bentBefore: false, largest: 0 }
   })
   // What stands at maxHz itself turns within the tolerance of it.
   walkGrid(transferOf(frozen), Math.min(Math.PI, perHz * maxHz + tolerance), lowestCorner(frozen), trails)
@@ -76,6 +78,8 @@ export function frozenExtremes(frozen: Frozen, options: ExtremeOptions = {}): Ex
 /** One channel on its way up the grid: its last two samples, and what was found below them. */
 interface Trail {
   readonly search: Search
+  /** Where two neighbours lie below it there is nothing between them. */
+  readonly floor: number
   a: PowerSample | null
   b: PowerSample | null
   /** The cubic through the neighbours of a did not meet a. */
@@ -87,6 +91,12 @@ interface Trail {
 function lowestCorner({ loop, wetTone }: Frozen): number {
   const poles = [loop.tone.lowPass, loop.tone.highPass, wetTone.lowPass, wetTone.highPass]
   return Math.min(1, ...poles.map((pole) => (pole === null ? 1 : -Math.log(pole))))
+}
+
+/** Power of dry and wet where nothing cancels, loop apart. */
+function sideBySide({ inputGain, outputGain, dry, channels }: Frozen, channel: number): number {
+  const { wet, voices } = channels[channel] as Frozen['channels'][number]
+  return (inputGain * outputGain * (Math.abs(dry) + Math.abs(wet) * voices.length)) ** 2
 }
 
 /** Every grid point of (0, maxOmega] in rising order to every trail. */
@@ -125,7 +135,8 @@ function advance(trail: Trail, next: PowerSample): void {
 /** Looks into the cell from a to b, where `bent` says how the cubic met b. */
 function settle(trail: Trail, a: PowerSample, b: PowerSample, bent: boolean): void {
   const halve = bent || trail.bentBefore
-  if (!isFlat(a, b) && (halve || turns(a, b) || hidesPair(a, b))) searchCell(trail.search, a, b, halve)
+  const silent = a.power < trail.floor && b.power < trail.floor
+  if (!silent && !isFlat(a, b) && (halve || turns(a, b) || hidesPair(a, b))) searchCell(trail.search, a, b, halve)
   trail.bentBefore = bent
 }
 

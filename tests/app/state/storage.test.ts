@@ -31,73 +31,73 @@ function newTab() {
   useSession.setState({ toneHz: 440, cautionRead: false, playing: false, source: { kind: 'phrase', id: 'plucked' } })
 }
 
-beforeEach(() => {
+beforeEach(async () => {
   local = new MemoryStorage()
   vi.stubGlobal('localStorage', local)
   newTab()
-  restoreState()
+  await restoreState()
 })
 
 const onlyTab = () => [...local.map.keys()].find((key) => key.startsWith('combwright.tab.')) as string
 
 describe('the working state', () => {
-  it('comes back: set, view, listening settings', () => {
+  it('comes back: set, view, listening settings', async () => {
     commitField('sweep.rateHz', 1.25)
     useView.setState({ block: 'mix', tempoBpm: 96 })
     useSession.setState({ toneHz: 880, cautionRead: true })
     expect(keepState()).toBe(true)
     newTab()
-    expect(restoreState()).toEqual([])
+    expect(await restoreState()).toEqual([])
     expect(committedSet().sweep.rateHz).toBe(1.25)
     expect(useView.getState()).toMatchObject({ block: 'mix', tempoBpm: 96 })
     expect(useSession.getState()).toMatchObject({ toneHz: 880, cautionRead: true })
   })
 
-  it('a page never starts playing, nor with a file or a device it no longer has', () => {
+  it('a page never starts playing, nor with a file or a device it no longer has', async () => {
     useSession.setState({ playing: true, source: { kind: 'live', deviceId: 'x', label: 'x' } })
     keepState()
     newTab()
-    restoreState()
+    await restoreState()
     expect(useSession.getState().playing).toBe(false)
     expect(useSession.getState().source.kind).toBe('phrase')
   })
 
-  it('two tabs keep their own; a third starts from the one written last', () => {
+  it('two tabs keep their own; a third starts from the one written last', async () => {
     commitField('sweep.rateHz', 1)
     keepState()
     newTab()
-    restoreState()
+    await restoreState()
     commitField('sweep.rateHz', 2)
     keepState()
     expect([...local.map.keys()].filter((key) => key.startsWith('combwright.tab.'))).toHaveLength(2)
     newTab()
-    restoreState()
+    await restoreState()
     expect(committedSet().sweep.rateHz).toBe(2)
   })
 
-  it('broken text is put aside, said, and never shown', () => {
+  it('broken text is put aside, said, and never shown', async () => {
     keepState()
     const key = onlyTab()
     local.map.set(key, '{"document":')
     newTab()
-    const [notice] = restoreState()
+    const [notice] = await restoreState()
     expect(notice).toContain('could not be read')
     expect(local.map.get('combwright.unreadable')).toBe('{"document":')
     expect(committedSet()).toEqual(defaultSet())
   })
 
-  it('an invalid set is refused as a file’s would be', () => {
+  it('an invalid set is refused as a file’s would be', async () => {
     commitField('sweep.rateHz', 1)
     keepState()
     const key = onlyTab()
     local.map.set(key, (local.map.get(key) as string).replace('"rateHz":1', '"rateHz":1e9'))
     newTab()
-    const [notice] = restoreState()
+    const [notice] = await restoreState()
     expect(notice).toContain('sweep.rateHz')
     expect(committedSet()).toEqual(defaultSet())
   })
 
-  it('view values that make no sense keep their defaults', () => {
+  it('view values that make no sense keep their defaults', async () => {
     useView.setState({ tempoBpm: 96 })
     keepState()
     const key = onlyTab()
@@ -106,7 +106,7 @@ describe('the working state', () => {
       (local.map.get(key) as string).replace('"tempoBpm":96', '"tempoBpm":"fast"').replace('"block":"line"', '"block":"moon"'),
     )
     newTab()
-    restoreState()
+    await restoreState()
     expect(useView.getState()).toMatchObject({ tempoBpm: 110, block: 'line' })
   })
 
