@@ -1,4 +1,5 @@
 // Every kind of analysis job with the function that does it, or with the way to fetch it where the page's first load can do without.
+import { movesAnything } from '../../src/checks/panelBoxScope.ts'
 import { checksJob } from './analysisJobs/checks.ts'
 import { loopJob, loopReachJob } from './analysisJobs/loop.ts'
 import { reachJob } from './analysisJobs/reach.ts'
@@ -15,6 +16,12 @@ export const ANALYSIS_JOBS: { readonly [K in JobKind]: Job<K> } = {
   loopReach: loopReachJob,
   map: { fetch: async () => (await import('./analysisJobs/map.ts')).mapJob },
   checks: checksJob,
-  longChecks: { fetch: async () => (await import('./analysisJobs/longChecks.ts')).longChecksJob },
+  longChecks: {
+    part: ({ set }) => (movesAnything(set) ? 'panel' : ''),
+    fetch: async ({ set }) =>
+      movesAnything(set)
+        ? (await import('./analysisJobs/panelChecks.ts')).longChecksJob
+        : (await import('./analysisJobs/longChecks.ts')).noPanelJob,
+  },
   rates: { fetch: async () => (await import('./analysisJobs/rates.ts')).ratesJob },
 }

@@ -6,7 +6,9 @@ export type SlicedJob<Request, Reply, Progress = never> = (request: Request) => 
 
 /** A job whose code is fetched when it is first asked for. */
 export interface FetchedJob<Request, Reply, Progress = never> {
-  fetch(): Promise<SlicedJob<Request, Reply, Progress>>
+  fetch(request: Request): Promise<SlicedJob<Request, Reply, Progress>>
+  /** Where not every request needs the same code: a name for what this one needs. */
+  part?(request: Request): string
 }
 
 export type ToWorker =
@@ -34,6 +36,8 @@ const TELL_MS = 100
 interface Running {
   readonly id: number
   readonly kind: string
+  /** Under which its code is kept once it is fetched. */
+  readonly part: string
   readonly request: unknown
   steps: Iterator<unknown, unknown> | null
   toldMs: number
@@ -68,7 +72,7 @@ export function createRunner({ jobs, post, later, now }: RunnerParts): (message:
 
   function advance(job: Running): { readonly value: unknown } | null {
     if (job.steps === null) {
-      const begun = jobOf(job.kind)(job.request)
+      const begun = jobOf(job)(job.request)
       if (!isSteps(begun)) return { value: begun }
       job.steps = begun
       job.toldMs = now()
@@ -87,9 +91,9 @@ export function createRunner({ jobs, post, later, now }: RunnerParts): (message:
     return null
   }
 
-  function jobOf(kind: string): SlicedJob<unknown, unknown, unknown> {
+  function jobOf({ kind, part }: Running): SlicedJob<unknown, unknown, unknown> {
     const known = jobs[kind]
-    const job = fetched[kind] ?? (typeof known === 'function' ? (known as SlicedJob<unknown, unknown, unknown>) : undefined)
+    const job = fetched[part] ?? (typeof known === 'function' ? (known as SlicedJob<unknown, unknown, unknown>) : undefined)
     if (!job) throw new RangeError(`no job is called ${kind}`)
     return job
   }
@@ -101,7 +105,7 @@ export function createRunner({ jobs, post, later, now }: RunnerParts): (message:
   async function fetchFirst(job: Running, from: FetchedJob<never, unknown, unknown>) {
     fetching.add(job.id)
     try {
-      fetched[job.kind] ??= (await from.fetch()) as SlicedJob<unknown, unknown, unknown>
+      fetched[job.part] ??= (await from.fetch(job.request as never)) as SlicedJob<unknown, unknown, unknown>
       if (fetching.delete(job.id)) queue.push(job)
       schedule()
     } catch (error) {
@@ -116,9 +120,12 @@ export function createRunner({ jobs, post, later, now }: RunnerParts): (message:
       if (at >= 0) queue.splice(at, 1)
       return
     }
-    const job: Running = { id: message.id, kind: message.kind, request: message.request, steps: null, toldMs: 0 }
-    const known = jobs[job.kind]
-    if (known && typeof known !== 'function' && !fetched[job.kind]) {
+    const { id, kind, request } = message
+    const known = jobs[kind]
+    const isFetched = known !== undefined && typeof known !== 'function'
+    const part = isFetched && known.part ? `${kind} ${known.part(request as never)}` : kind
+    const job: Running = { id, kind, part, request, steps: null, toldMs: 0 }
+    if (isFetched && !fetched[part]) {
       void fetchFirst(job, known)
       return
     }

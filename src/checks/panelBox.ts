@@ -10,6 +10,7 @@ import { type PanelJudge, type PanelLook, panelLook, rankOf } from './panelBoxLo
 import { panelMargin, panelPoles, panelRing, panelStability } from './panelBoxLoop.ts'
 import { endsThatHold } from './panelBoxMends.ts'
 import { panelRendered } from './panelBoxRendered.ts'
+import { movesAnything, noPanel, SCOPE, VALUES } from './panelBoxScope.ts'
 import { panelDetune, panelFusion, panelRange } from './panelBoxSweep.ts'
 import { knownText, valueText } from './panelBoxText.ts'
 import { panelTried } from './panelBoxTried.ts'
@@ -28,9 +29,6 @@ const JUDGES: Partial<Record<CheckId, PanelJudge>> = {
   'level.line': panelLine,
 }
 
-/** Figures that know no worse and no better: there is no worst place of them. */
-const VALUES: readonly CheckId[] = ['response.extremes', 'shaper.harmonics']
-
 /** Checks for which ends are worked out: a page shows a few. */
 const MOST_MENDED = 3
 
@@ -40,7 +38,7 @@ const MOST_MENDED = 3
  */
 export function* panelBoxSteps(set: ParameterSet, options: CheckOptions = {}): Generator<CheckProgress, Check> {
   const { sampleRate, material } = checkInput(set, options)
-  if (set.panel.every(({ moves }) => moves.length === 0)) return noPanel(set)
+  if (!movesAnything(set)) return noPanel(set)
   const entries = CHECKS.filter(({ id, kind }) => !VALUES.includes(id) && (options.kinds?.includes(kind) ?? true))
   const look = panelLook(panelSpace(set, sampleRate), material)
   const judged: Judged[] = []
@@ -102,33 +100,11 @@ function allHold(worst: readonly PanelWorst[]): string {
   return `Every check holds: ${worst.length - tried} at all knob positions${tried > 0 ? `, ${tried} where ${tried === 1 ? 'it was' : 'they were'} tried` : ''}.`
 }
 
-const SCOPE: WorkingStep = {
-  formula: 'worst figure over all knob positions, each knob anywhere from 0 to 1 by itself',
-  numbers: 'steps count as continuous: a smoothed turn passes what lies between them',
-  result: `what a delay change does while it glides is not judged; ${VALUES.join(' and ')} know no worse and no better`,
-  source: 'this project’s choice',
-}
-
 function stepOf({ worst, finding, unit }: Judged): WorkingStep {
   return {
     formula: `${worst.id}: ${finding.formula}`,
     numbers: `${finding.knobs.length === 0 ? 'no knob' : finding.knobs.length === 1 ? '1 knob' : `${finding.knobs.length} knobs`}, ${finding.looks} sets looked at`,
     result: `${worst.status}, ${valueText(worst.value, unit)}; ${knownText(worst.by)}`,
     source: finding.source,
-  }
-}
-
-function noPanel(set: ParameterSet): Check {
-  const reason = set.panel.length === 0 ? 'The set has no panel' : 'No knob of the panel moves anything'
-  return {
-    id: 'panel.box',
-    status: 'holds',
-    value: null,
-    limit: null,
-    unit: '',
-    label: labelOf('panel.box'),
-    text: `${reason}: there are no other positions to judge.`,
-    working: [{ ...SCOPE, numbers: '0 knobs that move anything', result: 'nothing to judge' }],
-    worst: [],
   }
 }

@@ -49,7 +49,8 @@ export function runChecks(set: ParameterSet, options: CheckOptions = {}): Check[
   return step.value
 }
 
-const isSteps = (begun: Check | CheckSteps): begun is CheckSteps => 'next' in begun
+/** Whether a check that was begun goes on in steps. */
+export const isSteps = (begun: Check | CheckSteps): begun is CheckSteps => 'next' in begun
 
 /** The worst status of all checks; a note weighs nothing. */
 export function verdictOf(checks: readonly Pick<Check, 'status'>[]): Verdict {

@@ -1,7 +1,8 @@
 // The checks of a set that take rendering, and its panel's worst places: seconds, not milliseconds. Every one is handed over as soon as it is done.
+// What judges a panel is given by panelChecks.ts: a set without one does not need its code.
 import { labelOf } from '../../../src/checks/limits.ts'
-import { panelBoxSteps } from '../../../src/checks/panelBox.ts'
-import { CHECKS, checkInput } from '../../../src/checks/registry.ts'
+import { noPanel } from '../../../src/checks/panelBoxScope.ts'
+import { CHECKS, checkInput, isSteps } from '../../../src/checks/registry.ts'
 import type { Check, CheckEntry, CheckInput, CheckSteps } from '../../../src/checks/types.ts'
 import type { ParameterSet } from '../../../src/set/types.ts'
 
@@ -22,25 +23,28 @@ export interface LongChecksProgress extends LongChecksReply {
 
 const RENDERED: readonly CheckEntry[] = CHECKS.filter(({ kind }) => kind === 'rendered')
 
-export function* longChecksJob({ set }: LongChecksRequest): Generator<LongChecksProgress, LongChecksReply> {
-  const input = checkInput(set)
-  const runs = [...RENDERED, { id: 'panel.box', run: panelBox } as const]
-  const total = runs.length
-  const checks: Check[] = []
-  for (const { id, run } of runs) {
-    const at = { label: labelOf(id), total, checks: [...checks] }
-    yield { ...at, part: 0 }
-    const steps = run(input) as CheckSteps
-    let step = steps.next()
-    for (; !step.done; step = steps.next()) yield { ...at, part: step.value }
-    checks.push(step.value)
-  }
-  return { checks }
-}
+type LongChecksJob = (request: LongChecksRequest) => Generator<LongChecksProgress, LongChecksReply>
 
-function* panelBox({ set }: CheckInput): CheckSteps {
-  const steps = panelBoxSteps(set)
-  let step = steps.next()
-  for (; !step.done; step = steps.next()) yield (step.value.done + step.value.part) / step.value.total
-  return step.value
-}
+export const longChecksWith = (panelBox: (input: CheckInput) => Check | CheckSteps): LongChecksJob =>
+  function* ({ set }) {
+    const input = checkInput(set)
+    const runs = [...RENDERED, { id: 'panel.box', run: panelBox } as const]
+    const total = runs.length
+    const checks: Check[] = []
+    for (const { id, run } of runs) {
+      const at = { label: labelOf(id), total, checks: [...checks] }
+      yield { ...at, part: 0 }
+      const begun = run(input)
+      if (!isSteps(begun)) {
+        checks.push(begun)
+        continue
+      }
+      let step = begun.next()
+      for (; !step.done; step = begun.next()) yield { ...at, part: step.value }
+      checks.push(step.value)
+    }
+    return { checks }
+  }
+
+/** For sets whose panel moves nothing: done in one step. */
+export const noPanelJob = longChecksWith(({ set }) => noPanel(set))

@@ -151,6 +151,27 @@ describe('the runner of analysis jobs', () => {
     expect(fetches).toBe(1)
   })
 
+  it('fetches for each request only the part it needs', async () => {
+    const fetches: string[] = []
+    const part = (x: number) => (x < 0 ? 'negative' : 'positive')
+    const { hear, posted, turn, waiting } = byHand({
+      far: {
+        part,
+        fetch: async (x: number) => {
+          fetches.push(part(x))
+          return (y: number) => `${part(x)} ${y}`
+        },
+      },
+    })
+    for (const [i, x] of [1, 2, -3, -4].entries()) {
+      hear(run(i, 'far', x))
+      await new Promise((done) => setTimeout(done))
+      while (waiting() > 0) turn()
+    }
+    expect(fetches).toEqual(['positive', 'negative'])
+    expect(posted.map((message) => 'value' in message && message.value)).toEqual(['positive 1', 'positive 2', 'negative -3', 'negative -4'])
+  })
+
   it('does not begin a job that was cancelled while its code was fetched', async () => {
     const { hear, posted, turn, waiting } = byHand({ far: { fetch: async () => () => 'done' } })
     hear(run(1, 'far'))

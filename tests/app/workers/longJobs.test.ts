@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { checksJob } from '../../../app/workers/analysisJobs/checks.ts'
-import { longChecksJob } from '../../../app/workers/analysisJobs/longChecks.ts'
+import { longChecksJob } from '../../../app/workers/analysisJobs/panelChecks.ts'
 import { ratesJob } from '../../../app/workers/analysisJobs/rates.ts'
 import { ANALYSIS_JOBS } from '../../../app/workers/analysisJobs.ts'
 import { LANE } from '../../../app/workers/analysisProtocol.ts'
