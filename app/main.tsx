@@ -11,6 +11,7 @@ import { watchDrops } from './shell/drop.ts'
 import { watchKeys } from './shell/keys.ts'
 import { watchLayout } from './shell/layout.ts'
 import { say } from './shell/messages.ts'
+import { prepareSaving } from './shell/setFiles.ts'
 import { keptTheme, watchTheme } from './shell/theme.ts'
 import { restoreState, watchState } from './state/storage.ts'
 import { useView } from './state/view.ts'
@@ -26,6 +27,7 @@ async function start(page: Root): Promise<void> {
   watchTheme()
   watchLayout()
   watchState()
+  prepareSaving()
   watchKeys(mute)
   watchDrops()
   page.render(

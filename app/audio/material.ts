@@ -1,5 +1,6 @@
 // Recorded material: which sound is loaded, at which rate, and handing it to the processor.
 import { say } from '../shell/messages.ts'
+import { loadOrSay } from '../shell/usePopup.ts'
 import { currentSet } from '../state/current.ts'
 import { type Source, useSession } from '../state/session.ts'
 import { askMaterial } from '../workers/materialClient.ts'

@@ -1,6 +1,7 @@
 // What the set's menu holds: New, Open, Save, Save as, Demo sets.
 import { Menu } from '@base-ui/react/menu'
 import { DEMO_SETS } from '../../src/set/demoSets.ts'
+import { startingSet } from '../../src/set/intents.ts'
 import { parameter } from '../../src/set/parameters.ts'
 import type { Intent } from '../../src/set/types.ts'
 import { useView } from '../state/view.ts'
@@ -43,7 +44,7 @@ function NewMenu() {
     <Submenu label="New">
       {intents.kind === 'choice' &&
         intents.options.map(({ value, label }) => (
-          <Item key={value} onClick={() => newSet(value as Intent)}>
+          <Item key={value} onClick={() => newSet(startingSet(value as Intent))}>
             {label}
           </Item>
         ))}

@@ -1,14 +1,13 @@
 // Opening, starting and saving sets. A file that cannot be read is refused with every reason; what was open stays.
 import type { DemoSet } from '../../src/set/demoSets.ts'
-import { startingSet } from '../../src/set/intents.ts'
 import type { Problem } from '../../src/set/result.ts'
-import type { Intent, ParameterSet } from '../../src/set/types.ts'
-import { writeSet } from '../../src/set/write.ts'
-import { commit, committedSet } from '../state/document.ts'
+import type { ParameterSet } from '../../src/set/types.ts'
+import { commit, committedSet, useDocument } from '../state/document.ts'
 import { endGesture } from '../state/draft.ts'
 import { announce } from './announce.ts'
 import { canPickPlace, chooseFile, download, type PickedPlace, pickPlace, writeTo } from './fileAccess.ts'
 import { dismissRefusals, say } from './messages.ts'
+import { loadOrSay } from './usePopup.ts'
 
 /** Nothing this long is a set: it is refused before it is read. */
 const LARGEST_FILE_BYTES = 1024 * 1024
@@ -56,9 +55,9 @@ async function openText(name: string, text: string): Promise<void> {
   else refuse(name, result.problems.map(problemLine))
 }
 
-/** Starts a new set of an intent, as one step of history. */
-export function newSet(intent: Intent): void {
-  open(`New ${intent}`, startingSet(intent))
+/** Starts a new set, as one step of history. */
+export function newSet(set: ParameterSet): void {
+  open(`New ${set.intent}`, set)
 }
 
 function open(step: string, set: ParameterSet): void {
@@ -69,9 +68,21 @@ function open(step: string, set: ParameterSet): void {
   announce(`${step}: done`)
 }
 
+const loadWriter = () => import('../../src/set/write.ts').then(({ writeSet }) => writeSet)
+
+/** The writer comes with the first change: saving must not need the server the page came from. */
+export function prepareSaving(): void {
+  const stop = useDocument.subscribe(() => {
+    stop()
+    void loadWriter().catch(() => {})
+  })
+}
+
 /** Writes to the file chosen before, else downloads. */
 export async function saveSet(): Promise<void> {
   endGesture()
+  const writeSet = await loadOrSay(loadWriter)
+  if (writeSet === null) return
   const set = committedSet()
   if (place === null) {
     download(fileName(set), new Blob([writeSet(set)], { type: 'application/json' }))

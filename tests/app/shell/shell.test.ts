@@ -62,7 +62,7 @@ describe('opening a set file', () => {
 
 describe('a new set', () => {
   it.each(['chorus', 'flanger', 'vibrato', 'doubler', 'comb', 'other'] as const)('for %s is one step', (intent) => {
-    newSet(intent)
+    newSet(startingSet(intent))
     expect(committedSet()).toEqual(startingSet(intent))
     expect(undo()).toBe(`New ${intent}`)
   })
