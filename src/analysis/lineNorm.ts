@@ -11,7 +11,7 @@ import { type Frozen, freeze } from './frozen.ts'
 import type { FrozenRead } from './frozenRead.ts'
 import { readsTogether, sweepStands } from './levelsSet.ts'
 import { READ_PEAK, toneL1 } from './norms.ts'
-import { shaperPeak } from './sector.ts'
+import { heldLevel, shaperPeak } from './sector.ts'
 
 export interface PeakBounds {
   /** U. */
@@ -86,14 +86,7 @@ function lineBound(set: ParameterSet, input: number, passed: number): number | n
   const { shaper } = set.loop
   if (g === 0) return input
   if (shaper === null) return g * passed < 1 ? input / (1 - g * passed) : null
-  let level = input
-  for (let i = 0; i < 20000; i++) {
-    const raised = input + g * shaperPeak(shaper, passed * level)
-    if (!(raised <= UNBOUNDED)) return null
-    if (raised <= level * (1 + 1e-12)) return raised
-    level = raised
-  }
-  return null
+  return heldLevel(shaper, input, g, passed)
 }
 
 /** A bend that ends bounds what even a line without bounds brings to it. */

@@ -57,6 +57,16 @@ describe('bounded level A', () => {
     expect(Math.abs(1 + 1.2 * Math.tanh(level) - level)).toBeLessThan(1e-9)
   })
 
+  // Beyond its zone a dead zone is a straight line: 1 + g (A − 0.1) = A.
+  it('of a dead zone of 0.1 is (1 − 0.1 g)/(1 − g), however near g comes to 1, and from 1 on there is none', () => {
+    const zone = shaper('deadZone', { deadZone: 0.1 })
+    for (const feedback of [0.5, 0.9, 0.9999]) {
+      const expected = (1 - 0.1 * feedback) / (1 - feedback)
+      expect(boundedLevel(zone, { feedback, readPeak: 1, toneL1: 1 })! / expected).toBeCloseTo(1, 8)
+    }
+    for (const feedback of [1, 1.1]) expect(boundedLevel(zone, { feedback, readPeak: 1, toneL1: 1 })).toBeNull()
+  })
+
   it('counts the read and the filters: hard clip, cubic read', () => {
     expect(boundedLevel(shaper('hardClip'), { feedback: 1.5, readPeak: 1.25, toneL1: 2 })).toBeCloseTo(1 + 1.5 * 1.25, 12)
   })
