@@ -1,5 +1,5 @@
 // panel.box: the worst of every check over all positions of the panel's knobs. Closed-form checks by monotone corners, interval bounds or, where nothing is known, places
-// tried; rendered ones at the worst corner of the check they follow. Knobs count as continuous: while a turn is smoothed it passes what lies between its steps.
+// tried; rendered ones where what causes them is worst, and where the knobs stand. Knobs count as continuous: while a turn is smoothed it passes what lies between its steps.
 // What a delay change does while it glides is not judged here.
 import { panelSpace } from '../analysis/panelSpace.ts'
 import type { ParameterSet } from '../set/types.ts'

@@ -12,8 +12,9 @@ import type { Mend, PanelWorst } from './types.ts'
 
 /** Halvings of the way between the end that is too far and the other one, in which the taper's own steps are even. */
 const HALVINGS = 14
-/** Moves tried for one check. */
+/** Moves tried for one check, and steps of their searches: where one knob moves against itself a single try takes hundreds. */
 const MOST_TRIED = 6
+const MOST_STEPS = 1500
 
 interface End {
   readonly k: number
@@ -24,9 +25,12 @@ interface End {
 /** Ends that make one check hold at every position; none where nothing sure can be said of it, or no single end serves. */
 export function* endsThatHold(set: ParameterSet, sampleRate: number, worst: PanelWorst, knobs: readonly number[]): Generator<void, Mend[]> {
   const found: Mend[] = []
+  let left = MOST_STEPS
   for (const end of candidates(set, worst, knobs).slice(0, MOST_TRIED)) {
-    const mend = yield* drawnIn(set, sampleRate, worst.id, end)
-    if (mend) found.push(mend)
+    const steps = drawnIn(set, sampleRate, worst.id, end)
+    let step = steps.next()
+    for (; !step.done && left > 0; step = steps.next(), left--) yield
+    if (step.done && step.value) found.push(step.value)
   }
   return found
 }

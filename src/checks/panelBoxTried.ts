@@ -1,5 +1,6 @@
 // Checks of which nothing is known but what they depend on: places are tried, and said to be no more than that.
-import type { ParameterSet } from '../set/types.ts'
+import { isListed, knotsIn, listedSpans } from '../analysis/panelKnobs.ts'
+import type { Knob, Move, ParameterSet } from '../set/types.ts'
 import type { CheckId } from './limits.ts'
 import { limitOf } from './limits.ts'
 import { type PanelFinding, type PanelJudge, type PanelLook, type Positions, rankOf } from './panelBoxLook.ts'
@@ -29,18 +30,26 @@ export function concernedKnobs(set: ParameterSet, id: CheckId): number[] {
   return [...set.panel.keys()].filter((k) => set.panel[k]?.moves.some(({ parameter }) => concerns(set, id, parameter)))
 }
 
-/** Where every knob stands; each knob at its ends and middle; all ends together, for few knobs every combination of them. In this order, the last ones dropped. */
-export function triedPlaces(own: Positions, knobs: readonly number[]): Positions[] {
+/**
+ * Where every knob stands; for few knobs every combination of their ends, all ends together; each knob at its ends, in the middle, at every value of a choice that it
+ * moves and at every point of a drawn taper. In this order, the last ones dropped.
+ */
+export function triedPlaces(panel: readonly Knob[], own: Positions, knobs: readonly number[]): Positions[] {
   const at = (turned: ReadonlyMap<number, number>): Positions => own.map((position, k) => turned.get(k) ?? position)
   const together = [0, 1].map((end) => at(new Map(knobs.map((k) => [k, end]))))
   const count = knobs.length <= MOST_COMBINED ? 2 ** knobs.length : 0
   const combined = Array.from({ length: count }, (_, i) => at(new Map(knobs.map((k, bit) => [k, (i >> bit) & 1]))))
   const single = [0, 1, 0.5].flatMap((end) => knobs.map((k) => at(new Map([[k, end]]))))
+  const between = knobs.flatMap((k) => (panel[k]?.moves ?? []).flatMap(placesOf).map((place) => at(new Map([[k, place]]))))
   const seen = new Set<string>()
-  return [own, ...combined, ...together, ...single]
+  return [own, ...combined, ...together, ...single, ...between]
     .filter((place) => !seen.has(place.join()) && seen.add(place.join()))
     .slice(0, MOST_TRIED)
 }
+
+/** Places of a turn between its ends where a move does something of its own. */
+const placesOf = (move: Move): number[] =>
+  isListed(move.parameter) ? listedSpans(move).map(({ from, to }) => (from + to) / 2) : knotsIn(move, { from: 0, to: 1 })
 
 /** Worse first by status, then by how far the figure lies on the wrong side. */
 function badness({ space }: PanelLook, { id }: CheckEntry, { status, value }: Figure): number {
@@ -52,7 +61,7 @@ function badness({ space }: PanelLook, { id }: CheckEntry, { status, value }: Fi
 export const panelTried: PanelJudge = function* (look, entry): Generator<void, PanelFinding> {
   const { space } = look
   const knobs = concernedKnobs(space.set, entry.id)
-  const places = triedPlaces(space.own, knobs)
+  const places = triedPlaces(space.knobs, space.own, knobs)
   let worst = { positions: space.own, badness: Number.NEGATIVE_INFINITY }
   for (const positions of places) {
     const here = badness(look, entry, look.figureAt(entry, positions))
@@ -66,7 +75,7 @@ export const panelTried: PanelJudge = function* (look, entry): Generator<void, P
     ...found,
     by: 'samples',
     bound: null,
-    formula: 'tried where the knobs stand, at their ends and in the middle',
+    formula: 'tried where the knobs stand, at their ends, in the middle, at every choice and where tapers bend',
     source: 'no argument: nothing is shown of the places between',
   }
 }
