@@ -6,8 +6,9 @@
 // Like outputs lose nothing, outputs that have nothing to do with each other 3 dB, opposite ones everything. Over the whole band and not at single
 // frequencies: a comb has notches in its sum as in each output, and one that has them elsewhere has lost nothing. By octaves the same, to show where.
 import type { ParameterSet } from '../set/types.ts'
-import { freeze } from './frozen.ts'
+import { freeze, frozenVoiceDelay } from './frozen.ts'
 import { sweepStands } from './levelsSet.ts'
+import { goldenMaximum, localMaxima } from './loopSearch.ts'
 import { DB_LIMIT } from './response.ts'
 import { transferAt, transferOf } from './transfer.ts'
 
@@ -25,7 +26,9 @@ export interface MonoLoss {
   /** Power averaged over the sweep as well; null where nothing comes out. */
   readonly averageDb: number | null
   readonly octaves: readonly MonoOctave[]
+  /** Even steps of the cycle, and, with a channel turned over, places between them where both channels' delays come closest. */
   readonly positions: number
+  readonly meetings: number
   readonly frequencies: number
 }
 
@@ -39,7 +42,9 @@ const POSITIONS = 8
 export function monoLoss(set: ParameterSet, sampleRate = set.sampleRate): MonoLoss {
   if (set.layout === 'mono') throw new RangeError('layout must have two outputs, got mono')
   const stands = sweepStands(set)
-  const places = stands ? [set.sweep.startPhase] : Array.from({ length: POSITIONS }, (_, i) => i / POSITIONS)
+  const even = stands ? [set.sweep.startPhase] : Array.from({ length: POSITIONS }, (_, i) => i / POSITIONS)
+  const meetings = stands || !set.mix.invertRight ? [] : meetingPlaces(set, sampleRate)
+  const places = [...even, ...meetings]
   const powers = places.map((position) => powersAt(set, position, sampleRate))
   const losses = powers.map((octaves) => ratioDb(total(octaves)))
   let worst = 0
@@ -49,14 +54,34 @@ export function monoLoss(set: ParameterSet, sampleRate = set.sampleRate): MonoLo
   return {
     lossDb: losses[worst] ?? null,
     position: places[worst] as number,
-    averageDb: ratioDb(total(powers.map(total))),
+    averageDb: ratioDb(total(powers.slice(0, even.length).map(total))),
     octaves: (powers[worst] as Power[]).flatMap((power, i) => {
       const lossDb = ratioDb(power)
       return lossDb === null ? [] : [{ lowHz: LOWEST_HZ * 2 ** i, lossDb }]
     }),
-    positions: places.length,
+    positions: even.length,
+    meetings: meetings.length,
     frequencies: OCTAVES * PER_OCTAVE,
   }
+}
+
+/** Positions at which the delays of both channels are compared, and the closest of which the loss is worked out. */
+const COMPARED = 256
+const MOST_MEETINGS = 4
+
+/** Where the delays of both channels, voice by voice, come closest: an instant, between even steps as a rule, at which a wet sound turned over cancels most. */
+function meetingPlaces(set: ParameterSet, sampleRate: number): number[] {
+  const delay = (position: number, channel: number, voice: number) => frozenVoiceDelay(set, position, { channel, voice }, sampleRate)
+  const closeness = (position: number): number => {
+    let apart = 0
+    for (let v = 0; v < set.voices.count; v++) apart += Math.abs(delay(position, 0, v) - delay(position, 1, v))
+    return -apart
+  }
+  const compared = Array.from({ length: COMPARED }, (_, i) => closeness(i / COMPARED))
+  return localMaxima(compared)
+    .slice(0, MOST_MEETINGS)
+    .map((i) => goldenMaximum(closeness, (i - 1) / COMPARED, (i + 1) / COMPARED, 1e-15).at)
+    .map((position) => position - Math.floor(position))
 }
 
 interface Power {
@@ -70,8 +95,8 @@ const total = (powers: readonly Power[]): Power => ({
   sum: powers.reduce((all, power) => all + power.sum, 0),
 })
 
-/** Rounding of two opposite outputs leaves no more than this of them. */
-const NOTHING = 1e-26
+/** Rounding of two opposite outputs, and of the place where they are, leaves no more than this of them. */
+const NOTHING = 1e-20
 
 function ratioDb({ outputs, sum }: Power): number | null {
   if (outputs === 0) return null

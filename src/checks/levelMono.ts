@@ -51,8 +51,11 @@ const lostText = (lossDb: number): string => (lossDb > ALL_DB ? 'everything' : q
 const oneDecimal = (db: number): string => (Math.abs(db) < 0.05 ? '0.0' : db.toFixed(1).replace('-', '−'))
 
 function workingOf({ set }: CheckInput, loss: MonoLoss, limit: Limit): WorkingStep[] {
-  const { lossDb, averageDb, position, positions, octaves, frequencies } = loss
-  const places = positions === 1 ? 'where the sweep stands' : `the worst of ${positions} sweep positions, ${quantity(position)}`
+  const { lossDb, averageDb, position, positions, meetings, octaves, frequencies } = loss
+  const places =
+    positions === 1
+      ? 'where the sweep stands'
+      : `the worst of ${positions} sweep positions${meetings > 0 ? ' and those where both delays come closest' : ''}, ${quantity(position)}`
   const sides = set.mix.invertRight ? ', wet of channel 2 turned over' : ''
   const none = 'nothing comes out'
   return [

@@ -59,6 +59,23 @@ describe('loss of the mono sum', () => {
     }
   })
 
+  // sin φ = sin(φ + p) at φ = (180° − p)/2: both channels read one delay there, whatever the phase between them.
+  it('opposite outputs whose sweeps only meet lose everything there, at any stereo phase', () => {
+    for (const stereoPhase of [30, 77, 90, 100, 170]) {
+      const set = changedSet((s) => {
+        s.layout = 'monoToStereo'
+        s.sweep.stereoPhase = stereoPhase
+        s.voices.count = 1
+        s.mix.dry = 0
+        s.mix.invertRight = true
+      })
+      const { lossDb, position, averageDb } = monoLoss(set)
+      expect(lossDb).toBe(400)
+      expect(((position * 360) % 180) - (180 - stereoPhase) / 2).toBeCloseTo(0, 6)
+      expect(averageDb).toBeLessThan(400)
+    }
+  })
+
   it('one output has no sum', () => {
     expect(() => monoLoss({ ...changedSet(() => {}), layout: 'mono' })).toThrow(RangeError)
   })
