@@ -99,8 +99,8 @@ function drawNumbers(surface: MapSurface, lines: readonly Line[]): void {
   const half = { x: (NUMBER_PX.width / 2) * ratio, y: (NUMBER_PX.height / 2) * ratio }
   const taken: { readonly x: number; readonly y: number }[] = []
   for (const { track, xs, ys } of lines)
-    for (const end of [lowestOf(track), highestOf(track)]) {
-      if (end === null || Number.isNaN(ys[end.j])) continue
+    for (const end of turnsOf(track)) {
+      if (Number.isNaN(ys[end.j])) continue
       const x = Math.max(box.left + half.x, Math.min(box.left + box.width - half.x, xs[end.j] as number))
       const y = (ys[end.j] as number) + (end.isLowest ? 1 : -1) * (half.y + 2 * ratio)
       const isFree = taken.every((other) => Math.abs(other.x - x) >= 2 * half.x || Math.abs(other.y - y) >= 2 * half.y)
@@ -116,6 +116,13 @@ export interface TrackEnd {
   readonly j: number
   readonly hz: number
   readonly isLowest: boolean
+}
+
+/** Both ends of a track, one where they read the same. */
+function turnsOf(track: Track): TrackEnd[] {
+  const [low, high] = [lowestOf(track), highestOf(track)]
+  if (low === null || high === null) return []
+  return hertz(low.hz) === hertz(high.hz) ? [low] : [low, high]
 }
 
 export const lowestOf = (track: Track): TrackEnd | null => endOf(track, true)

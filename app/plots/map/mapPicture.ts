@@ -9,15 +9,39 @@ const STEP_DB = 3
 const SPAN_DB = 36
 const LEAST_DB = 12
 
-/** The range of the shades: whole steps around all cells, notches cut off 36 dB below the top. */
+/** A peak of few cells may stand this much above the rest: one far above it would leave the rest without shades. */
+const FEW = 0.005
+const ABOVE_DB = 12
+
+/** The range of the shades: whole steps around all cells, notches cut off 36 dB below the top, and peaks of few cells far above all others. */
 export function shadeLevels({ channels }: Pick<SweepMap, 'channels'>): Levels {
-  const { low, high } = cellSpan(channels)
+  const { low, high: highest } = cellSpan(channels)
+  const high = Math.min(highest, highOfMost(channels, highest) + ABOVE_DB)
   // What rounding adds to a level does not ask for another step.
   const maxDb = Math.ceil(high / STEP_DB - 1e-3) * STEP_DB
   const minDb = Math.max(Math.floor(low / STEP_DB + 1e-3) * STEP_DB, maxDb - SPAN_DB)
   // A level response stands in the middle of the shades.
   const missing = Math.ceil(Math.max(0, LEAST_DB - maxDb + minDb) / (2 * STEP_DB)) * STEP_DB
   return { minDb: Math.min(minDb, maxDb + missing - LEAST_DB), maxDb: maxDb + missing }
+}
+
+/** The level that all but few cells stay under, found to a decibel, looking no further down than the shades reach. */
+function highOfMost(channels: SweepMap['channels'], highest: number): number {
+  const counts = new Uint32Array(2 * SPAN_DB)
+  let total = 0
+  for (const cells of channels) {
+    total += cells.length
+    for (const db of cells) {
+      const below = Math.floor(highest - db)
+      if (below < counts.length) counts[below] = (counts[below] as number) + 1
+    }
+  }
+  let seen = 0
+  const at = counts.findIndex((count) => {
+    seen += count
+    return seen > FEW * total
+  })
+  return highest - (at < 0 ? counts.length : at)
 }
 
 /** Least and most of all cells, dB. */

@@ -90,6 +90,14 @@ describe('the range of the shades', () => {
     expect(of(-20, 6.0000002)).toEqual({ minDb: -21, maxDb: 6 })
   })
 
+  it('leaves out peaks of few cells that stand far above all others', () => {
+    const rest = Array.from({ length: 999 }, (_, i) => -i / 100)
+    expect(of(40, ...rest).maxDb).toBe(12)
+    expect(of(10, ...rest).maxDb).toBe(12)
+    // One cell in a hundred is not few.
+    expect(of(...Array.from({ length: 10 }, () => 40), ...rest).maxDb).toBe(42)
+  })
+
   it('maps levels to shades, held at both ends', () => {
     const levels = { minDb: -30, maxDb: 6 }
     expect([-400, -30, -12, 6, 40].map((db) => shadeOf(db, levels))).toEqual([0, 0, 128, 255, 255])
