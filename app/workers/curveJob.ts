@@ -148,7 +148,8 @@ function atDrives({ shaper, amplitude, sampleRate, highest }: CurveRequest, driv
     distortion: decibels((i) => totalDistortion(sines[i]!)),
     dcDb: decibels((i) => {
       const dc = Math.abs(sines[i]!.amplitudes[0] as number)
-      return dc > 0 ? 20 * Math.log10(dc) : null
+      // Less is what rounding leaves of a mean that is 0.
+      return dc > 1e-14 ? 20 * Math.log10(dc) : null
     }),
     foldedDb: decibels((i) => {
       const { db } = foldedEnergy({ ...shaper, drive: drives[i] as number }, amplitude, sampleRate)

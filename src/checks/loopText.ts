@@ -22,8 +22,8 @@ export function delaysText(delaysSamples: readonly number[], sampleRate: number)
   return `${[...new Set(texts)].join(' and ')} ms`
 }
 
-/** "1 cycle", "8 cycles". */
-export const counted = (count: number, noun: string): string => `${count} ${noun}${count === 1 ? '' : 's'}`
+/** "1 cycle", "1 763 samples". */
+export const counted = (count: number, noun: string): string => `${quantity(count)} ${noun}${count === 1 ? '' : 's'}`
 
 /** −20 log10 of a gain, dB; null for 0. */
 export const marginDb = (gain: number): number | null => (gain > 0 ? -20 * Math.log10(gain) : null)

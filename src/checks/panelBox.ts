@@ -102,7 +102,7 @@ function allHold(worst: readonly PanelWorst[]): string {
 
 function stepOf({ worst, finding, unit }: Judged): WorkingStep {
   return {
-    formula: `${worst.id}: ${finding.formula}`,
+    formula: `${labelOf(worst.id)}: ${finding.formula}`,
     numbers: `${finding.knobs.length === 0 ? 'no knob' : finding.knobs.length === 1 ? '1 knob' : `${finding.knobs.length} knobs`}, ${finding.looks} sets looked at`,
     result: `${worst.status}, ${valueText(worst.value, unit)}; ${knownText(worst.by)}`,
     source: finding.source,

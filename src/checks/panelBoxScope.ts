@@ -10,7 +10,7 @@ export const VALUES: readonly CheckId[] = ['response.extremes', 'shaper.harmonic
 export const SCOPE: WorkingStep = {
   formula: 'worst figure over all knob positions, each knob anywhere from 0 to 1 by itself',
   numbers: 'steps count as continuous: a smoothed turn passes what lies between them',
-  result: `what a delay change does while it glides is not judged; ${VALUES.join(' and ')} know no worse and no better`,
+  result: `what a delay change does while it glides is not judged; ${VALUES.map((id) => labelOf(id).toLowerCase()).join(', ')} know no worse and no better`,
   source: 'this project’s choice',
 }
 

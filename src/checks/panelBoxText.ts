@@ -16,7 +16,7 @@ export function placeText(panel: readonly Knob[], { positions, knobs }: Pick<Pan
   return words.length === 1 ? (words[0] as string) : `${words.slice(0, -1).join(', ')} and ${words.at(-1)}`
 }
 
-const lowered = (text: string): string => (/^[A-Z][a-z ]/.test(text) ? text.charAt(0).toLowerCase() + text.slice(1) : text)
+const lowered = (text: string): string => (/^([A-Z][a-z]|A )/.test(text) ? text.charAt(0).toLowerCase() + text.slice(1) : text)
 
 /** One sentence or more about the worst place of one check. */
 export function worstText(panel: readonly Knob[], finding: PanelFinding, check: Check): string {

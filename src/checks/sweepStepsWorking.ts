@@ -23,7 +23,7 @@ export function nothingText(set: ParameterSet): { readonly text: string; readonl
   const { sweep } = set
   if (movement === 'stands')
     return {
-      text: 'The delay stands still, so nothing steps; what its interpolator loses is under tone.droop.',
+      text: 'The delay stands still, so nothing steps; what its interpolator loses is under interpolation loss.',
       step: step('D[n] the same for all n', `rate ${quantity(sweep.rateHz, 'Hz')}, ${depthText(set)}`, 'a fixed filter: no artefact'),
     }
   if (movement === 'jumps')
@@ -70,7 +70,7 @@ function referenceStep({ sampleRate, bench: { stage }, found: { own } }: Explain
   return {
     formula: 'e = read − reference; the reference reads D(t), evaluated every sample, by a Kaiser-windowed sinc of 96 taps',
     numbers: `in the line noise of the plucked chords’ spectrum, 1/(1 + (f/600 Hz)²)², up to ${quantity(noiseTopHz(sampleRate) / 1000, 'kHz')}; ${each} stretches of ${quantity((stage.length * 1000) / sampleRate, 'ms')} over the cycle, ${each} where it moves fastest; channel 0`,
-    result: `of e ${quantity(own?.standingDb ?? 0, 'dB')} stands still: a filter, judged under tone.droop`,
+    result: `of e ${quantity(own?.standingDb ?? 0, 'dB')} stands still: a filter, judged under interpolation loss`,
     source: 'J. F. Kaiser 1974 (from memory); the reference is right to −140 dB up to 0.45 fs (computed)',
   }
 }

@@ -9,6 +9,8 @@ type Group = { readonly [key: string]: CheckValue }
 /** Figures that need more than number and unit: by check id. */
 const FIGURES: Readonly<Record<string, (value: CheckValue) => string | null>> = {
   'loop.poles': (value) => (typeof value === 'number' ? radius(value) : null),
+  // As its sentence says it: loudness is measured no closer.
+  'level.loudness': (value) => (typeof value === 'number' ? withUnit(Number(value.toFixed(1)), 'LU') : null),
   'loop.ring': (value) => (typeof value === 'number' ? duration(value) : null),
   'response.extremes': (value) => span(part(value, 'firstNotchHz'), hertz, 'Hz'),
   // As its field writes it: 1.0, not 1.

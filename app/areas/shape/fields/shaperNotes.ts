@@ -58,9 +58,12 @@ function limitNote({ curve, drive, ceiling, points }: Shaper, limit: number): st
   return from === null ? `${out}, approached` : `${out}, from ${number((from * limit) / drive)} in on`
 }
 
+/** What rounding leaves of a mean that is 0. */
+const ROUNDING = 1e-14
+
 function dcNote(sine: DrivenSine): string {
   const dc = Math.abs(sine.amplitudes[0] as number)
-  return `unlike halves: DC ${dc > 0 ? `${level(dc)}FS` : 'none'} of ${MINUS}6 dBFS`
+  return `unlike halves: DC ${dc > ROUNDING ? `${level(dc)}FS` : 'none'} of ${MINUS}6 dBFS`
 }
 
 function zoneNote({ deadZone, drive, positive, negative }: Shaper): string {
