@@ -50,8 +50,11 @@ const LOOKED_AT = 24
 const RUN = 3
 const MOST_SAMPLES = 60_000
 
-/** 20 log10, held at −400. */
-export const levelDb = (gain: number): number => 20 * Math.log10(Math.max(SILENCE, gain))
+/** 20 log10, held at −400; what rounding leaves of a gain of 1 is 0 dB. */
+export function levelDb(gain: number): number {
+  const db = 20 * Math.log10(Math.max(SILENCE, gain))
+  return Math.abs(db) < 1e-12 ? 0 : db
+}
 
 /** Levels at the output and in the line of a valid set run at `sampleRate` Hz. Milliseconds. */
 export function levelFigures(set: ParameterSet, sampleRate = set.sampleRate): LevelFigures {

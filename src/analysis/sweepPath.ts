@@ -5,6 +5,7 @@
 import { delayAtShape, edge, frozenShapeValue, loopDelayAtShape, phaseOffset } from '../dsp/sweep.ts'
 import { delayRange, smallestDelay } from '../set/delayRange.ts'
 import type { ParameterSet } from '../set/types.ts'
+import { sweepStands } from './levelsSet.ts'
 import { shapeCorners } from './sweepSlope.ts'
 
 export interface SweepPath {
@@ -24,10 +25,10 @@ export interface SweepPath {
   readonly offsets: readonly number[] | null
 }
 
-/** The path of a set at `sampleRate`, Hz. At rate 0 it is the start position alone. */
+/** The path of a set at `sampleRate`, Hz. Where nothing moves it is the start position alone. */
 export function sweepPath(set: ParameterSet, sampleRate = set.sampleRate): SweepPath {
   const outputs = set.layout === 'mono' ? 1 : 2
-  const stands = set.sweep.rateHz === 0
+  const stands = sweepStands(set)
   const apart = channelsApart(set)
   const inverted = set.mix.invertRight && set.mix.dry !== 0 && set.mix.wet !== 0
   const walked = outputs === 1 || (apart && !inverted && !stands) ? 1 : 2

@@ -37,6 +37,10 @@ describe('the general comb', () => {
     expect(Math.abs(peak.db!)).toBeLessThan(1e-6)
     expect(peak.worst?.bound).toBeCloseTo(1, 9)
     expect(peak.sampleDb).toBeCloseTo(7.66, 1)
+    // A sweep without depth stands as one without rate does; rounding is no gain.
+    const { peak: flat } = levelFigures({ ...set, sweep: { ...set.sweep, rateHz: 0.3, depthMs: 0 } })
+    expect(flat.worst?.bound).toBeCloseTo(1, 9)
+    expect(flat.db).toBe(0)
   })
 
   // FACTS 2c, D: max(|(BL+FF)/(1+a)|, |(BL−FF)/(1−a)|); l1 |BL| + |FF − BL a|/(1 − |a|).
