@@ -78,7 +78,8 @@ export const panelMargin: PanelJudge = function* (look, entry) {
   const { gain, level } = find
   const common = {
     formula: '−20 log₁₀ of the largest γ over all positions; where none is certified, down to 0 dB beside',
-    source: 'γ∞, γ2 and |g| σ max|F| each go one way with every parameter',
+    source:
+      'γ∞, γ2 and |g| σ max|F| each go one way with every parameter; that ‖f‖₁ does with the filters is tried on random sets, not proven',
     knobs: [...new Set([...gain.knobs, ...level.knobs])].sort((a, b) => a - b),
   }
   const limit = limitOf(space.set, 'loop.margin')

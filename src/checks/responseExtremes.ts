@@ -39,7 +39,7 @@ export const responseExtremes: CheckFunction = (input): Check => {
     unit: 'Hz',
     label: labelOf('response.extremes'),
     text: none
-      ? 'There are no notches and no peaks.'
+      ? nothingThere(set)
       : `${sentence([firstText('notch', first.notch), firstText('peak', first.peak), depthText(notches, peaks)])}.`,
     working: places.map(({ position, delayMs, extremes }) => ({
       formula: 'd|H|²/dω = 0, of the first channel',
@@ -49,6 +49,10 @@ export const responseExtremes: CheckFunction = (input): Check => {
     })),
   }
 }
+
+/** Only the first output is looked at. */
+const nothingThere = ({ layout }: ParameterSet): string =>
+  layout === 'mono' ? 'There are no notches and no peaks.' : 'There are no notches and no peaks in the first output.'
 
 interface Place {
   readonly position: number
