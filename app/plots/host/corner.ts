@@ -27,15 +27,25 @@ export function cornerText(
   ctx.fillText(text, left ? box.left + gap : box.left + box.width, top ? box.top + gap : box.top + box.height - gap)
 }
 
-/** A sentence in the middle of an empty plot, broken at its line feeds. */
+/** A sentence in the middle of an empty plot, broken at its line feeds, and between words where the plot is narrower. */
 export function middleText(ctx: CanvasRenderingContext2D, box: PlotBox, theme: PlotTheme, text: string): void {
   ctx.font = canvasFont(theme, box.ratio)
   ctx.fillStyle = theme.soft
   ctx.textAlign = 'center'
   ctx.textBaseline = 'middle'
-  const lines = text.split('\n')
+  const lines = text.split('\n').flatMap((line) => brokenLines(ctx, line, box.width))
   const step = theme.textPx * 1.5 * box.ratio
   lines.forEach((line, i) => {
     ctx.fillText(line, box.left + box.width / 2, box.top + box.height / 2 + (i - (lines.length - 1) / 2) * step)
   })
+}
+
+function brokenLines(ctx: CanvasRenderingContext2D, text: string, width: number): string[] {
+  const lines: string[] = []
+  for (const word of text.split(' ')) {
+    const longer = lines.length === 0 ? word : `${lines.at(-1)} ${word}`
+    if (lines.length > 0 && ctx.measureText(longer).width <= width) lines[lines.length - 1] = longer
+    else lines.push(word)
+  }
+  return lines
 }
