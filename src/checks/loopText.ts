@@ -1,9 +1,12 @@
 // How the loop's figures are written.
 import { formatQuantity } from '../set/units.ts'
 
+/** Less of a level than anyone hears, measures or computes. */
+const NOTHING_DB = 1e-4
+
 /** "14.5 ms", "0.97": four significant digits. */
 export function quantity(value: number, unit = ''): string {
-  const { number } = formatQuantity(value, unit)
+  const { number } = formatQuantity(unit === 'dB' && Math.abs(value) < NOTHING_DB ? 0 : value, unit)
   return unit === '' ? number : `${number} ${unit}`
 }
 

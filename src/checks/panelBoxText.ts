@@ -29,6 +29,7 @@ function sureText({ by, bound, looks }: PanelFinding, { unit }: Check): string {
   if (bound === undefined) return ''
   if (bound === null) return ` The worst of ${looks} places tried.`
   if (bound.value === null) return ' What other positions reach has no bound.'
+  if (typeof bound.value === 'string') return ` No position is weaker than ${bound.value}.`
   return ` No position passes ${valueText(bound.value, unit)}.`
 }
 

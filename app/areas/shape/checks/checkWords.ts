@@ -1,6 +1,6 @@
 // A check's figure and limit as they stand in its row.
+import { quantity } from '../../../../src/checks/loopText.ts'
 import type { Check, CheckValue } from '../../../../src/checks/types.ts'
-import { formatQuantity } from '../../../../src/set/units.ts'
 import { showIn } from '../../../fields/quantity.ts'
 import { duration, hertz, milliseconds, radius } from '../../../plots/words.ts'
 
@@ -10,7 +10,7 @@ type Group = { readonly [key: string]: CheckValue }
 const FIGURES: Readonly<Record<string, (value: CheckValue) => string | null>> = {
   'loop.poles': (value) => (typeof value === 'number' ? radius(value) : null),
   // As its sentence says it: loudness is measured no closer.
-  'level.loudness': (value) => (typeof value === 'number' ? withUnit(Number(value.toFixed(1)), 'LU') : null),
+  'level.loudness': (value) => (typeof value === 'number' ? quantity(Number(value.toFixed(1)), 'LU') : null),
   'loop.ring': (value) => (typeof value === 'number' ? duration(value) : null),
   'response.extremes': (value) => span(part(value, 'firstNotchHz'), hertz, 'Hz'),
   // As its field writes it: 1.0, not 1.
@@ -23,7 +23,7 @@ const FIGURES: Readonly<Record<string, (value: CheckValue) => string | null>> = 
 export function checkFigure({ id, status, value, unit }: Pick<Check, 'id' | 'status' | 'value' | 'unit'>): string {
   const own = FIGURES[id]?.(value)
   if (own) return own
-  if (typeof value === 'number') return withUnit(value, unit)
+  if (typeof value === 'number') return quantity(value, unit)
   if (typeof value === 'string') return value
   // A ring without a figure that does not hold is one that never ends.
   return id === 'loop.ring' && status !== 'holds' ? 'endless' : 'none'
@@ -48,12 +48,7 @@ export function checkLimit({ id, limit, unit }: Pick<Check, 'id' | 'limit' | 'un
   if (limit === null) return WHAT[id] ?? ''
   if (typeof limit === 'string') return `at least ${limit}`
   // A limit that a check has no use for stays where the set has it.
-  return `${own === limit ? 'own limit' : 'limit'} ${unit === 'ms' && limit < 0.1 ? milliseconds(limit) : withUnit(limit, unit)}`
-}
-
-function withUnit(value: number, unit: string): string {
-  const { number } = formatQuantity(value, unit)
-  return unit === '' ? number : `${number} ${unit}`
+  return `${own === limit ? 'own limit' : 'limit'} ${unit === 'ms' && limit < 0.1 ? milliseconds(limit) : quantity(limit, unit)}`
 }
 
 const part = (value: CheckValue, key: string): CheckValue =>
@@ -71,5 +66,5 @@ function strongestHarmonic(value: CheckValue): string | null {
   if (value === null || typeof value !== 'object') return null
   const levels = Object.values(value).flatMap((shaper) => part(shaper as CheckValue, 'harmonicsDb') as readonly (number | null)[])
   const strongest = levels.filter((level) => level !== null).reduce((most, level) => Math.max(most, level), Number.NEGATIVE_INFINITY)
-  return strongest > Number.NEGATIVE_INFINITY ? withUnit(Number(strongest.toFixed(1)), 'dB') : null
+  return strongest > Number.NEGATIVE_INFINITY ? quantity(Number(strongest.toFixed(1)), 'dB') : null
 }
