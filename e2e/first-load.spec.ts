@@ -7,7 +7,7 @@ test('popups, the file reader and the audio wrapper are fetched when they are wa
   await openPage(page)
   await page.waitForTimeout(3000)
   const before = scripts.length
-  expect(scripts.filter((name) => /Popup|Dialog|Menu|module|\/read-|material|processor/.test(name))).toEqual([])
+  expect(scripts.filter((name) => /(?<!use)Popup|Dialog|Menu|module|\/read-|schema|material|processor/.test(name))).toEqual([])
   await page.getByRole('button', { name: 'View' }).click()
   await expect(page.getByRole('menuitem', { name: 'Keys…' })).toBeVisible()
   expect(scripts.length).toBeGreaterThan(before)
