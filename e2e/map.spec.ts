@@ -40,7 +40,9 @@ test('plots that are not shown at first are fetched when they are chosen', async
   expect(fetched()).toEqual([])
   await show(lower(page), 'Map')
   await slowly(reading(lower(page))).toContainText('position')
-  expect(fetched()).toHaveLength(1)
+  // The plot's own code, and its worker's.
+  expect(fetched().filter((name) => !name.includes('/map-'))).toEqual([])
+  expect(fetched().length).toBeGreaterThan(0)
 })
 
 test('the map reads the exact level at position and frequency, and the first notch where nothing is pointed at', async ({ page }) => {

@@ -22,7 +22,7 @@ export const pageSize: Bench = {
       const kb = (keep: (name: string) => boolean) =>
         [...sizes].filter(([name]) => keep(name)).reduce((sum, [, bytes]) => sum + bytes, 0) / 1000
       // The long lane's code is fetched after the first answer, by the worker.
-      const long = (name: string) => /\/(longChecks|registry)-/.test(name)
+      const long = (name: string) => /\/(longChecks|panelChecks|registry)-/.test(name)
       const worker = (name: string) => /worker|processor/.test(name) || long(name)
       const all = kb(() => true)
       return [
