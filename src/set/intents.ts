@@ -38,7 +38,11 @@ const STARTS: Readonly<Record<Intent, Start>> = {
     sweep: { rateHz: 0.2, depthMs: 1.2, stereoPhase: 0 },
     voices: ONE_VOICE,
     loop: { feedback: 0.5, dampingHz: 8000 },
-    knobs: [SPEED, ['Range', 'sweep.depthMs', 0, 1.4, 'linear'], ['Feedback', 'loop.feedback', 0, 0.8, 'linear']],
+    knobs: [
+      ['Speed', 'sweep.rateHz', 0.05, 2, 'log'],
+      ['Range', 'sweep.depthMs', 0, 1.4, 'linear'],
+      ['Feedback', 'loop.feedback', 0, 0.7, 'linear'],
+    ],
   },
   vibrato: {
     name: 'New vibrato',
@@ -72,15 +76,15 @@ const STARTS: Readonly<Record<Intent, Start>> = {
     notes:
       'Stands still: peaks at multiples of 220 Hz, or close to it, which damping rounds off upwards. The input gain keeps them inside the line, the output gain gives it back.',
     layout: 'mono',
-    input: { gainDb: -6 },
+    input: { gainDb: -10 },
     line: { baseMs: 4.54 },
     sweep: { rateHz: 0, depthMs: 0, stereoPhase: 0 },
     voices: ONE_VOICE,
     loop: { feedback: 0.8, delay: 'fixed', interpolation: 'lagrange3', dampingHz: 8000 },
-    mix: { dry: 0.7071, wet: 0.3, outputGainDb: 6 },
+    mix: { dry: 0.7071, wet: 0.3, outputGainDb: 10 },
     knobs: [
       ['Pitch', 'line.baseMs', 20, 1, 'log'],
-      ['Ring', 'loop.feedback', 0, 0.95, 'linear'],
+      ['Ring', 'loop.feedback', 0, 0.9, 'linear'],
     ],
   },
   other: {
