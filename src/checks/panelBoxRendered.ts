@@ -8,7 +8,8 @@ import { type Judged, judgedAt } from './panelBoxJudged.ts'
 import { type PanelFinding, type PanelLook, type Positions, rankOf } from './panelBoxLook.ts'
 import { triedPlaces } from './panelBoxTried.ts'
 import { heardShapers } from './shaperFigures.ts'
-import type { Check, CheckEntry, CheckSteps } from './types.ts'
+import { finished } from './steps.ts'
+import type { Check, CheckEntry } from './types.ts'
 
 interface Likely {
   readonly places: readonly Positions[]
@@ -92,7 +93,7 @@ export function* panelRendered(look: PanelLook, entry: CheckEntry, closed: reado
   const places = likely.places.filter((_, i) => keys.indexOf(keys[i] as string) === i)
   let worst: { positions: Positions; check: Check } | null = null
   for (const [i, positions] of places.entries()) {
-    const check = yield* rendered(entry, look, positions, (part) => (i + part) / places.length)
+    const check = yield* finished(entry.run(look.inputAt(positions)), (part) => (i + part) / places.length)
     if (worst === null || isWorse(check, worst.check)) worst = { positions, check }
   }
   if (worst === null) return null
@@ -105,14 +106,6 @@ export function* panelRendered(look: PanelLook, entry: CheckEntry, closed: reado
     source: 'too costly for a search: nothing is shown of other positions',
   }
   return judgedAt(look, finding, worst.check)
-}
-
-function* rendered(entry: CheckEntry, look: PanelLook, positions: Positions, partOf: (part: number) => number): Generator<number, Check> {
-  const begun = entry.run(look.inputAt(positions)) as CheckSteps | Check
-  if (!('next' in begun)) return begun
-  let step = begun.next()
-  for (; !step.done; step = begun.next()) yield partOf(step.value)
-  return step.value
 }
 
 const isWorse = (a: Check, b: Check): boolean =>

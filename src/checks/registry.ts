@@ -5,8 +5,9 @@ import { type CheckOptions, checkInput } from './input.ts'
 import { levelDc } from './levelDc.ts'
 import { levelLoudness } from './levelLoudness.ts'
 import { LIMITS } from './limits.ts'
+import { finished } from './steps.ts'
 import { sweepSteps } from './sweepSteps.ts'
-import type { Check, CheckEntry, CheckProgress, CheckSteps, Verdict } from './types.ts'
+import type { Check, CheckEntry, CheckProgress, Verdict } from './types.ts'
 
 export { type CheckOptions, checkInput } from './input.ts'
 
@@ -29,14 +30,7 @@ export function* checkSteps(set: ParameterSet, options: CheckOptions = {}): Gene
   for (const { id, run } of entries) {
     const at = { id, done: checks.length, total: entries.length }
     yield { ...at, part: 0 }
-    const begun = run(input)
-    if (!isSteps(begun)) {
-      checks.push(begun)
-      continue
-    }
-    let step = begun.next()
-    for (; !step.done; step = begun.next()) yield { ...at, part: step.value }
-    checks.push(step.value)
+    checks.push(yield* finished(run(input), (part) => ({ ...at, part })))
   }
   return checks
 }
@@ -48,9 +42,6 @@ export function runChecks(set: ParameterSet, options: CheckOptions = {}): Check[
   while (!step.done) step = steps.next()
   return step.value
 }
-
-/** Whether a check that was begun goes on in steps. */
-export const isSteps = (begun: Check | CheckSteps): begun is CheckSteps => 'next' in begun
 
 /** The worst status of all checks; a note weighs nothing. */
 export function verdictOf(checks: readonly Pick<Check, 'status'>[]): Verdict {

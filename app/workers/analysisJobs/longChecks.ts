@@ -2,7 +2,8 @@
 // What judges a panel is given by panelChecks.ts: a set without one does not need its code.
 import { labelOf } from '../../../src/checks/limits.ts'
 import { noPanel } from '../../../src/checks/panelBoxScope.ts'
-import { CHECKS, checkInput, isSteps } from '../../../src/checks/registry.ts'
+import { CHECKS, checkInput } from '../../../src/checks/registry.ts'
+import { finished } from '../../../src/checks/steps.ts'
 import type { Check, CheckEntry, CheckInput, CheckSteps } from '../../../src/checks/types.ts'
 import type { ParameterSet } from '../../../src/set/types.ts'
 
@@ -34,14 +35,7 @@ export const longChecksWith = (panelBox: (input: CheckInput) => Check | CheckSte
     for (const { id, run } of runs) {
       const at = { label: labelOf(id), total, checks: [...checks] }
       yield { ...at, part: 0 }
-      const begun = run(input)
-      if (!isSteps(begun)) {
-        checks.push(begun)
-        continue
-      }
-      let step = begun.next()
-      for (; !step.done; step = begun.next()) yield { ...at, part: step.value }
-      checks.push(step.value)
+      checks.push(yield* finished(run(input), (part) => ({ ...at, part })))
     }
     return { checks }
   }

@@ -1,5 +1,6 @@
 // The same set judged at other sample rates: first, everywhere, what follows from formulas; then what takes rendering, rate by rate.
 import { CHECKS, checkInput } from '../../../src/checks/registry.ts'
+import { finished } from '../../../src/checks/steps.ts'
 import type { Check, CheckEntry, CheckInput, CheckKind } from '../../../src/checks/types.ts'
 import type { ParameterSet } from '../../../src/set/types.ts'
 
@@ -60,11 +61,7 @@ export function* ratesJob({ set, rates }: RatesRequest): Generator<RatesProgress
 /** null where the set cannot run at this rate: it would read ahead of what is written. */
 function* attempt({ run }: CheckEntry, input: CheckInput, at: (part: number) => RatesProgress): Generator<RatesProgress, Check | null> {
   try {
-    const begun = run(input)
-    if (!('next' in begun)) return begun
-    let step = begun.next()
-    for (; !step.done; step = begun.next()) yield at(step.value)
-    return step.value
+    return yield* finished(run(input), at)
   } catch (error) {
     if (error instanceof RangeError) return null
     throw error
