@@ -8,9 +8,8 @@ import { boundAt, hasFilters, largestBound } from './levelsBound.ts'
 import { frozenAt, type Ground, groundOf, type LargestGain, named, type Place } from './levelsPlace.ts'
 import { freezeAtLargestSlope, lineAsOutput } from './levelsSet.ts'
 import { goldenMaximum } from './loopSearch.ts'
-import { type PathTable, pathPositions, pathStretches, pathTable } from './pathTable.ts'
+import { type PathTable, pathPositions, pathReach, pathStretches, pathTable } from './pathTable.ts'
 import { createTuning, pathValues, type Tuning, tune } from './pathValues.ts'
-import { pathDelays } from './sweepPath.ts'
 import { transferAt, transferOf } from './transfer.ts'
 
 /** Found and bound closer than this are one figure: 0.009 dB. */
@@ -103,15 +102,7 @@ const toothOf = (frozen: Frozen): number => (2 * Math.PI) / transferOf(frozen).l
 
 function createSearch({ path, frozen, bounds, delays }: Ground, best: Place): Search {
   const stretches = pathStretches(path)
-  let lowest = Number.POSITIVE_INFINITY
-  let highest = 0
-  for (const t of stretches.length === 0 ? path.stops : stretches.flatMap(({ from, to }) => [from, to])) {
-    pathDelays(path, t, delays)
-    for (const delay of delays) {
-      lowest = Math.min(lowest, delay)
-      highest = Math.max(highest, delay)
-    }
-  }
+  const reach = pathReach(path, stretches, delays)
   // Two positions a sample of travel meet whole delays, where a read loses nothing.
   const table = pathTable(path, pathPositions(path, stretches, 2, MOST_POSITIONS))
   return {
@@ -119,10 +110,10 @@ function createSearch({ path, frozen, bounds, delays }: Ground, best: Place): Se
     frozen,
     table,
     delays,
-    tuning: createTuning(frozen, Math.max(0, Math.floor(lowest) - 3), Math.ceil(highest) + 5),
+    tuning: createTuning(frozen, reach),
     values: new Float64Array(2 * table.ts.length),
     bounds,
-    tooth: (2 * Math.PI) / Math.max(1, highest, frozen.dryDelay),
+    tooth: (2 * Math.PI) / Math.max(1, reach.highest, frozen.dryDelay),
     best,
   }
 }

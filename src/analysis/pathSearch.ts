@@ -1,7 +1,7 @@
 // The ends of |H| along a sweep path at one frequency. H itself, not its size, is followed: a complex curve through three
 // positions is smooth where |H| has a null, and 1/H is smooth where a resonance is sharp.
 import { type Frozen, freeze } from './frozen.ts'
-import { type PathTable, pathStretches, pathTable, type Stretch, setPosition } from './pathTable.ts'
+import { type PathTable, pathReach, pathStretches, pathTable, type Stretch, setPosition } from './pathTable.ts'
 import { createTuning, pathValues, type Tuning } from './pathValues.ts'
 import { pathDelays, pathReads, type SweepPath } from './sweepPath.ts'
 
@@ -27,21 +27,12 @@ export function createPathSearch(path: SweepPath, most: number): PathSearch {
   const frozen = freeze(path.set, 0, path.sampleRate)
   const stretches = pathStretches(path)
   const delays = new Float64Array(pathReads(path))
-  let lowest = Number.POSITIVE_INFINITY
-  let highest = 0
-  for (const t of stretches.length === 0 ? path.stops : stretches.flatMap(({ from, to }) => [from, to])) {
-    pathDelays(path, t, delays)
-    for (const delay of delays) {
-      lowest = Math.min(lowest, delay)
-      highest = Math.max(highest, delay)
-    }
-  }
   return {
     path,
     frozen,
     stretches,
     delays,
-    tuning: createTuning(frozen, Math.max(0, Math.floor(lowest) - 3), Math.ceil(highest) + 5),
+    tuning: createTuning(frozen, pathReach(path, stretches, delays)),
     values: new Float64Array(2 * (most + 3 * stretches.length + 8)),
     probe: pathTable(path, [path.stops[0] as number]),
     probeValue: new Float64Array(2),

@@ -56,6 +56,20 @@ export interface Stretch {
   readonly travel: number
 }
 
+/** Smallest and largest delay of any read along the path, samples. `delays`: scratch, one a read. */
+export function pathReach(path: SweepPath, stretches: readonly Stretch[], delays: Float64Array): { lowest: number; highest: number } {
+  let lowest = Number.POSITIVE_INFINITY
+  let highest = 0
+  for (const t of stretches.length === 0 ? path.stops : stretches.flatMap(({ from, to }) => [from, to])) {
+    pathDelays(path, t, delays)
+    for (const delay of delays) {
+      lowest = Math.min(lowest, delay)
+      highest = Math.max(highest, delay)
+    }
+  }
+  return { lowest, highest }
+}
+
 /** The path cut where its delays turn or bend, finer where they speed up between. */
 export function pathStretches(path: SweepPath): Stretch[] {
   const { shape, law } = path.set.sweep

@@ -22,7 +22,10 @@ export interface Tuning {
   dryIm: number
 }
 
-export function createTuning(frozen: Frozen, lowest: number, highest: number): Tuning {
+/** Memory for every delay between the path's smallest and largest, and the points read around them. */
+export function createTuning(frozen: Frozen, reach: { readonly lowest: number; readonly highest: number }): Tuning {
+  const lowest = Math.max(0, Math.floor(reach.lowest) - 3)
+  const highest = Math.ceil(reach.highest) + 5
   const phasors = () => new Float64Array(highest - lowest + 1)
   const shared = { loop: dual(), wet: dual(), outer: dual(), sum: dual(), loops: dual(), lines: dual() }
   return { frozen, lowest, re: phasors(), im: phasors(), ...shared, dryRe: 1, dryIm: 0 }
