@@ -132,7 +132,14 @@ function* poleFind(look: PanelLook, entry: CheckEntry, size: (figure: Figure) =>
     if (size(figure) > worst.size) worst = { positions, size: size(figure) }
     yield
   }
-  return { cover, worst, looks: cover.looks + places.length }
+  const result = {
+    knobs: cover.knobs,
+    looks: cover.looks + places.length,
+    positions: worst.positions,
+    formula: POLES,
+    source: 'maximum principle; the bound goes one way with every parameter',
+  }
+  return { cover, worst, result }
 }
 
 const POLES = 'no pole lies outside r with |g| σ₀ r^−(D + …) · largest filter gain on that circle = 1'
@@ -142,15 +149,7 @@ const endless = ({ value, status }: Figure): number =>
   typeof value === 'number' ? value : status === 'near' ? Number.POSITIVE_INFINITY : 0
 
 export const panelRing: PanelJudge = function* (look, entry): Generator<void, PanelFinding> {
-  const { cover, worst, looks } = yield* poleFind(look, entry, endless)
-  const { knobs } = cover
-  const result = {
-    knobs,
-    looks,
-    positions: worst.positions,
-    formula: POLES,
-    source: 'maximum principle; the bound goes one way with every parameter',
-  }
+  const { cover, worst, result } = yield* poleFind(look, entry, endless)
   if (cover.bound <= -1e9) return { ...result, by: cover.by }
   const seconds = ringSeconds(cover.bound, look.space.sampleRate)
   const status = seconds === null ? 'near' : judge(limitOf(look.space.set, 'loop.ring'), seconds)
@@ -164,15 +163,7 @@ export const panelRing: PanelJudge = function* (look, entry): Generator<void, Pa
 
 export const panelPoles: PanelJudge = function* (look, entry): Generator<void, PanelFinding> {
   const radius = ({ value }: Figure): number => (Array.isArray(value) ? Number(value[1]) : typeof value === 'number' ? value : 0)
-  const { cover, worst, looks } = yield* poleFind(look, entry, radius)
-  const { knobs } = cover
-  const result = {
-    knobs,
-    looks,
-    positions: worst.positions,
-    formula: POLES,
-    source: 'maximum principle; the bound goes one way with every parameter',
-  }
+  const { cover, result } = yield* poleFind(look, entry, radius)
   if (cover.bound <= -1e9) return { ...result, by: cover.by }
   // At |g| σ₀ ≥ 1 the bound says nothing: a radius past 1 is then looked for at the corners only.
   if (cover.by === 'samples' || cover.bound > 0) return { ...result, by: 'samples', bound: null }
