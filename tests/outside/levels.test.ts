@@ -3,18 +3,10 @@ import { describe, expect, it } from 'vitest'
 import { levelFigures } from '../../src/analysis/levels.ts'
 import { changedSet } from '../dsp/sets.ts'
 import { itIsMadeAgain, reference } from './reference.ts'
+import { type StandingComb, standingComb } from './standingComb.ts'
 
-interface Still {
+interface Still extends StandingComb {
   readonly read: 'linear' | 'lagrange3'
-  readonly samples: number
-  readonly feedback: number
-  readonly dry: number
-  readonly wet: number
-  readonly tap: 'input' | 'line'
-  readonly damping: number | null
-  readonly lowCut: number | null
-  readonly highCut: number | null
-  readonly wetLowCut: number | null
 }
 
 interface Swept extends Pick<Still, 'read' | 'samples' | 'dry' | 'wet' | 'wetLowCut'> {
@@ -31,24 +23,7 @@ interface Made {
 const made = reference<Made>('levels')
 const db = (gain: number) => 20 * Math.log10(gain)
 
-const stillSet = (comb: Still) =>
-  changedSet((s) => {
-    s.layout = 'mono'
-    s.sweep.rateHz = 0
-    s.sweep.depthMs = 0
-    s.voices.count = 1
-    s.line.baseMs = (comb.samples * 1000) / made.sampleRate
-    s.line.interpolation = comb.read
-    s.loop.interpolation = comb.read
-    s.loop.feedback = comb.feedback
-    s.loop.dampingHz = comb.damping
-    s.loop.lowCutHz = comb.lowCut
-    s.mix.dry = comb.dry
-    s.mix.wet = comb.wet
-    s.mix.dryTap = comb.tap
-    s.mix.wetHighCutHz = comb.highCut
-    s.mix.wetLowCutHz = comb.wetLowCut
-  })
+const stillSet = (comb: Still) => standingComb(comb, { voice: comb.read, loop: comb.read }, made.sampleRate)
 
 describe.each(made.still.map((c, i) => [i, c] as const))('still comb %i', (_, { case: comb, peak, line, peakL1, lineL1 }) => {
   const figures = levelFigures(stillSet(comb))

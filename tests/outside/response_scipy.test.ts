@@ -2,24 +2,10 @@
 import { describe, expect, it } from 'vitest'
 import { freeze } from '../../src/analysis/frozen.ts'
 import { frozenResponse } from '../../src/analysis/response.ts'
-import type { DryTap, Interpolation } from '../../src/set/types.ts'
-import { changedSet } from '../dsp/sets.ts'
 import { itIsMadeAgain, reference } from './reference.ts'
+import { type CombReads, type StandingComb, standingComb } from './standingComb.ts'
 
-interface Comb {
-  readonly voice: Interpolation
-  readonly loop: Interpolation
-  readonly samples: number
-  readonly feedback: number
-  readonly dry: number
-  readonly wet: number
-  readonly tap: DryTap
-  readonly dryDelay: number
-  readonly damping: number | null
-  readonly lowCut: number | null
-  readonly highCut: number | null
-  readonly wetLowCut: number | null
-}
+type Comb = StandingComb & Required<CombReads>
 
 interface Made {
   readonly sampleRate: number
@@ -28,26 +14,7 @@ interface Made {
 
 const made = reference<Made>('response_scipy')
 
-const combSet = (comb: Comb) =>
-  changedSet((s) => {
-    s.layout = 'mono'
-    s.sampleRate = made.sampleRate
-    s.sweep.rateHz = 0
-    s.sweep.depthMs = 0
-    s.voices.count = 1
-    s.line.baseMs = (comb.samples * 1000) / made.sampleRate
-    s.line.interpolation = comb.voice
-    s.loop.interpolation = comb.loop
-    s.loop.feedback = comb.feedback
-    s.loop.dampingHz = comb.damping
-    s.loop.lowCutHz = comb.lowCut
-    s.mix.dry = comb.dry
-    s.mix.wet = comb.wet
-    s.mix.dryTap = comb.tap
-    s.mix.dryDelayMs = (comb.dryDelay * 1000) / made.sampleRate
-    s.mix.wetHighCutHz = comb.highCut
-    s.mix.wetLowCutHz = comb.wetLowCut
-  })
+const combSet = (comb: Comb) => standingComb(comb, comb, made.sampleRate)
 
 describe.each(made.cases.map((c, i) => [i, c] as const))('comb %i', (_, { case: comb, hz, re, im, groupDelay }) => {
   const response = frozenResponse(freeze(combSet(comb), 0), hz)[0]!
